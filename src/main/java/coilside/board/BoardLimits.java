@@ -1,0 +1,64 @@
+package coilside.board;
+
+/**
+ * What a board can do and what the operator allows; SI units. The guard holds every shot against
+ * these. "min" and "max" are inclusive; a step of 0 means continuous.
+ */
+public record BoardLimits(
+    Range carrierHertz,
+    Range gainDecibels,
+    Range pulseSeconds,
+    Range amplitude,
+    Range waitSeconds,
+    Range dwellSeconds,
+    int minPoints,
+    int maxPoints,
+    int maxWindows,
+    int maxSteps,
+    int maxRepeats,
+    double maxReceiveSeconds,
+    double maxDutyCycle,
+    double dutyWindowSeconds,
+    boolean arbitraryShots,
+    boolean repeatLoops,
+    boolean settableReceivePhase,
+    boolean reportsTemperature) {
+
+  /**
+   * An inclusive range with a step, in the unit of the field's name.
+   *
+   * @param min smallest allowed value
+   * @param max largest allowed value
+   * @param step distance between allowed values counted from 0; 0 where any value will do
+   */
+  public record Range(double min, double max, double step) {
+    public Range {
+      if (!(min <= max) || !(step >= 0)) {
+        throw new IllegalArgumentException("range " + min + ".." + max + " step " + step);
+      }
+    }
+
+    public boolean contains(double x) {
+      double slack = 1e-9 * Math.max(Math.abs(min), Math.abs(max));
+      return x >= min - slack && x <= max + slack;
+    }
+
+    /** The nearest allowed value. */
+    public double snap(double x) {
+      double y = step > 0 ? Math.rint(x / step) * step : x;
+      if (y < min) {
+        y = step > 0 ? Math.ceil(min / step - 1e-9) * step : min;
+      }
+      if (y > max) {
+        y = step > 0 ? Math.floor(max / step + 1e-9) * step : max;
+      }
+      return y;
+    }
+
+    /** What both ranges allow; the coarser step. Throws when they have nothing in common. */
+    public Range narrowedBy(Range other) {
+      return new Range(
+          Math.max(min, other.min), Math.min(max, other.max), Math.max(step, other.step));
+    }
+  }
+}
