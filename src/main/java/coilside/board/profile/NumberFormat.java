@@ -20,7 +20,7 @@ public record NumberFormat(Kind kind, int digits) {
     INTEGER(true, 0),
     /** "12.50": a fixed number of decimals. */
     DECIMAL(true, 0),
-    /** "8.090000e+06". */
+    /** "8.090000E+06". */
     EXPONENT(true, 0),
     /** "007B71D0". */
     HEX(true, 0),
