@@ -64,6 +64,11 @@ final class Choices {
     return limits.pulseSeconds().snap(seconds);
   }
 
+  /** The 90-degree pulse as the ladder knows it, on the board's grain, s. */
+  static double pulse90(Acquisition a) {
+    return pulse(a.limits(), a.known().need(Rung.NUTATION, "pulse_90"));
+  }
+
   static double amplitude(Acquisition a) {
     return a.limits().amplitude().snap(a.settings().amplitude());
   }
