@@ -124,10 +124,12 @@ public final class LeastSquares {
               MOST_EVALUATIONS,
               MOST_EVALUATIONS));
     } catch (MathIllegalStateException e) {
-      if (rows.best == null) {
-        throw NotDetermined.of(
-            Reason.NO_CONVERGENCE, "the fit did not settle", "start nearer to the answer");
-      }
+      // The budget is spent or the limit of precision reached: the best point seen is the answer.
+      assert rows.least < Double.POSITIVE_INFINITY || rows.best == null : e;
+    }
+    if (rows.best == null) {
+      throw NotDetermined.of(
+          Reason.NO_CONVERGENCE, "the fit did not settle", "start nearer to the answer");
     }
     return rows.solution();
   }
