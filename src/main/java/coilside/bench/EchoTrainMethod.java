@@ -21,7 +21,6 @@ import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Locale;
 import java.util.Map;
-import java.util.Optional;
 
 /**
  * The T2 rung: an echo train with the refocusing pulses a quarter turn out of phase with the first
@@ -91,7 +90,8 @@ final class EchoTrainMethod implements Method {
     double p180 = pulse180(a);
     double t2Star = a.known().value(Rung.T2STAR, "t2_star").orElse(2e-3);
     double seconds = Math.min(0.5e-3, t2Star / 2);
-    double dwell = limits.dwellSeconds().snap(Math.max(1 / Choices.WIDE_HERTZ, seconds / WINDOW_POINTS));
+    double dwell =
+        limits.dwellSeconds().snap(Math.max(1 / Choices.WIDE_HERTZ, seconds / WINDOW_POINTS));
     int points = Choices.points(limits, (int) Math.max(8, Math.rint(seconds / dwell)));
     double window = points * dwell;
     double delay = Choices.delay(a);
@@ -137,8 +137,7 @@ final class EchoTrainMethod implements Method {
 
   @Override
   public Reading read(Capture capture) throws NotMeasurable {
-    Shot shot =
-        capture.shots().stream().filter(s -> !s.receiveOnly()).findFirst().orElseThrow();
+    Shot shot = capture.shots().stream().filter(s -> !s.receiveOnly()).findFirst().orElseThrow();
     List<Averager> sums = new ArrayList<>();
     int scans = 0;
     for (int i = 0; i < capture.shots().size(); i++) {
@@ -156,11 +155,9 @@ final class EchoTrainMethod implements Method {
       }
     }
     List<Fid> echoes = sums.stream().map(Averager::mean).toList();
-    double sigma =
-        Quiet.of(capture.shots(), capture.scans()).sigma() / Math.sqrt(scans);
+    double sigma = Quiet.of(capture.shots(), capture.scans()).sigma() / Math.sqrt(scans);
     double spacing = spacing(shot);
-    MatchedProjection p =
-        MatchedProjection.onShape(echoes, shape(echoes), sigma);
+    MatchedProjection p = MatchedProjection.onShape(echoes, shape(echoes), sigma);
     double[] t = new double[echoes.size()];
     double[] re = new double[t.length];
     double[] im = new double[t.length];
@@ -178,8 +175,7 @@ final class EchoTrainMethod implements Method {
     Map<String, Measured> values = new LinkedHashMap<>();
     values.put("t2", fit.t2());
     values.put(
-        "echo_spacing",
-        Measured.withoutUncertainty(spacing, Unit.SECOND, "a setting of the shot"));
+        "echo_spacing", Measured.withoutUncertainty(spacing, Unit.SECOND, "a setting of the shot"));
     List<String> warnings = new ArrayList<>(fit.warnings());
     warnings.add(
         "diffusion in a field gradient shortens T2 measured this way: a shorter echo spacing that"

@@ -42,8 +42,7 @@ final class RingDownMethod implements Method {
     a.plan(2 * PAIRS + 1);
     BoardLimits limits = a.limits();
     Choices.Window window =
-        new Choices.Window(
-            Choices.points(limits, POINTS), limits.dwellSeconds().snap(DWELL));
+        new Choices.Window(Choices.points(limits, POINTS), limits.dwellSeconds().snap(DWELL));
     double rest = Choices.rest(a, GainMethod.RECOVERED * GainMethod.guessT1(a));
     double earliest = limits.waitSeconds().min();
     double pulse = Choices.pulse(limits, PULSE);
@@ -145,7 +144,9 @@ final class RingDownMethod implements Method {
     return Math.max(0, Math.min(fid.points() - 1, k));
   }
 
-  /** One past the last sample of the first half that stands at the largest level, where it clips. */
+  /**
+   * One past the last sample of the first half that stands at the largest level, where it clips.
+   */
   private static int clippedUntil(Scan scan) {
     if (scan.clippedSamples() == 0) {
       return 0;

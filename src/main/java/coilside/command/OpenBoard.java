@@ -15,8 +15,7 @@ final class OpenBoard {
   record Prepared(BoardAddress address, DeviceProfile profile, CommonOptions options) {
     Board open() throws BoardException {
       boolean simulated = address.simulated();
-      Link link =
-          simulated ? Simulation.link(profile, options) : Links.open(address, profile);
+      Link link = simulated ? Simulation.link(profile, options) : Links.open(address, profile);
       return Boards.open(profile, link, System::nanoTime, Clock.systemUTC(), simulated);
     }
   }

@@ -5,9 +5,9 @@ import java.math.RoundingMode;
 import java.util.Locale;
 
 /**
- * Values in the concise form of JCGM 100 section 7.2.2, the uncertainty in units of the last digits:
- * "8.123 456 7(12) MHz". Two digits of uncertainty are kept; digits are grouped in threes after the
- * point.
+ * Values in the concise form of JCGM 100 section 7.2.2, the uncertainty in units of the last
+ * digits: "8.123 456 7(12) MHz". Two digits of uncertainty are kept; digits are grouped in threes
+ * after the point.
  */
 public final class ConciseFormat {
   private static final String[] PREFIXES = {"p", "n", "\u00b5", "m", "", "k", "M", "G"};
@@ -72,7 +72,9 @@ public final class ConciseFormat {
   static String number(double value, double u) {
     if (!(u > 0) || Double.isInfinite(u)) {
       BigDecimal plain =
-          new BigDecimal(value).round(new java.math.MathContext(DIGITS_WITHOUT)).stripTrailingZeros();
+          new BigDecimal(value)
+              .round(new java.math.MathContext(DIGITS_WITHOUT))
+              .stripTrailingZeros();
       return group(plain.scale() < 0 ? plain.setScale(0) : plain);
     }
     int exponent = (int) Math.floor(Math.log10(u));

@@ -66,12 +66,17 @@ public final class Quantities {
     Double size = spellings.get(name);
     if (size == null) {
       throw new IllegalArgumentException(
-          (name.isEmpty() ? "'" + shown + "' has no unit" : "the unit of '" + shown + "' is unknown")
+          (name.isEmpty()
+                  ? "'" + shown + "' has no unit"
+                  : "the unit of '" + shown + "' is unknown")
               + "; allowed: "
               + allowed(spellings)
               + "; for example "
               + m.group(1)
-              + spellings.keySet().stream().skip(Math.min(1, spellings.size() - 1)).findFirst().get());
+              + spellings.keySet().stream()
+                  .skip(Math.min(1, spellings.size() - 1))
+                  .findFirst()
+                  .get());
     }
     double number = Double.parseDouble(m.group(1));
     double inverse = Math.rint(1 / size);
