@@ -65,14 +65,8 @@ final class OpenBench implements AutoCloseable {
       OpenBoard.Prepared prepared = OpenBoard.prepare(options);
       BenchRecord record = BenchRecord.open(options.captures, clock);
       try {
-        Board board = prepared.open();
-        try {
-          BenchSettings settings = Settings.of(options, prepared.profile(), record);
-          return new Parts(board, record, settings);
-        } catch (KeepException | RuntimeException e) {
-          board.close();
-          throw e;
-        }
+        BenchSettings settings = Settings.of(options, prepared.profile(), record);
+        return new Parts(prepared.open(), record, settings);
       } catch (BoardException | KeepException | RuntimeException e) {
         record.close();
         throw e;
