@@ -393,7 +393,7 @@ public final class Firmware {
   }
 
   private void refuse(FirmwareRefusal e) {
-    if (profile.replies().mode() == Replies.Mode.EACH) {
+    if (profile.replies().mode() != Replies.Mode.ASKED) {
       sayError(e);
     } else if (errors.size() < LONGEST_ERROR_QUEUE) {
       errors.add(e);

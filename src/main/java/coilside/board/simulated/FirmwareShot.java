@@ -99,12 +99,17 @@ final class FirmwareShot {
 
   private Pulse pulse(Map<String, Double> values) throws FirmwareRefusal {
     double width = within("pulse width", values.get("width"), limits.pulseSeconds(), "s");
-    double amplitude =
-        within(
-            "amplitude",
-            values.getOrDefault("amplitude", limits.amplitude().max()),
-            limits.amplitude(),
-            "");
+    double amplitude = values.getOrDefault("amplitude", limits.amplitude().max());
+    // Its grain is that of the code it travels in, not that of the limits.
+    if (!limits.amplitude().contains(amplitude)) {
+      throw FirmwareRefusal.range(
+          "amplitude "
+              + amplitude
+              + " outside "
+              + limits.amplitude().min()
+              + ".."
+              + limits.amplitude().max());
+    }
     return new Pulse(width, values.getOrDefault("phase", 0.0), amplitude);
   }
 
@@ -113,29 +118,48 @@ final class FirmwareShot {
   }
 
   private Receive receive(Map<String, Double> values) throws FirmwareRefusal {
-    double dwell = values.getOrDefault("dwell", limits.dwellSeconds().min());
     double phase = values.getOrDefault("receive_phase", 0.0);
-    double rate = profile.samples().real().map(r -> r.rateHertz()).orElse(0.0);
-    Double real = values.get("samples");
-    long perPoint = rate > 0 ? Math.max(1, Math.round(dwell * rate)) : 1;
-    if (rate <= 0 || values.containsKey("dwell")) {
+    double dwell = values.getOrDefault("dwell", limits.dwellSeconds().min());
+    if (values.containsKey("dwell")) {
       within("dwell", dwell, limits.dwellSeconds(), "s");
     }
-    double points = real != null ? real / perPoint : values.getOrDefault("points", 0.0);
-    boolean enough = points >= limits.minPoints() && points == Math.rint(points) || real != null;
-    if (!enough || points > limits.maxPoints() + (real != null ? limits.maxPoints() : 0)) {
+    if (profile.samples().real().isPresent()) {
+      return realSamples(values, dwell, phase);
+    }
+    int points = points(values.get("points"));
+    receiveTime(points * dwell);
+    return new Receive(points, dwell, phase);
+  }
+
+  /** A window of real samples, one a "point" of the window that is played. */
+  private Receive realSamples(Map<String, Double> values, double dwell, double phase)
+      throws FirmwareRefusal {
+    double rate = profile.samples().real().orElseThrow().rateHertz();
+    double samples =
+        values.containsKey("samples")
+            ? values.get("samples")
+            : points(values.get("points")) * Math.rint(dwell * rate);
+    if (!(samples >= 1) || samples != Math.rint(samples)) {
+      throw FirmwareRefusal.range("samples " + samples + " below 1");
+    }
+    receiveTime(samples / rate);
+    return new Receive((int) samples, 1 / rate, phase);
+  }
+
+  private int points(double points) throws FirmwareRefusal {
+    boolean whole = points == Math.rint(points);
+    if (!whole || points < limits.minPoints() || points > limits.maxPoints()) {
       throw FirmwareRefusal.range(
           "points " + points + " outside " + limits.minPoints() + ".." + limits.maxPoints());
     }
-    if (rate > 0) {
-      int samples = (int) (real != null ? real : points * perPoint);
-      return new Receive(Math.max(1, samples), 1 / rate, phase);
-    }
-    if (points * dwell > limits.maxReceiveSeconds() * (1 + 1e-9)) {
+    return (int) points;
+  }
+
+  private void receiveTime(double seconds) throws FirmwareRefusal {
+    if (seconds > limits.maxReceiveSeconds() * (1 + 1e-9)) {
       throw FirmwareRefusal.range(
-          "receive time " + points * dwell + " s above " + limits.maxReceiveSeconds() + " s");
+          "receive time " + seconds + " s above " + limits.maxReceiveSeconds() + " s");
     }
-    return new Receive((int) points, dwell, phase);
   }
 
   private void repeat(Map<String, Double> values) throws FirmwareRefusal {
