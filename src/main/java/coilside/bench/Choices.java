@@ -18,8 +18,7 @@ final class Choices {
         .snap(
             a.known()
                 .value(Rung.RESONANCE, "larmor_frequency")
-                .orElse(
-                    (a.settings().searchLowHertz() + a.settings().searchHighHertz()) / 2));
+                .orElse((a.settings().searchLowHertz() + a.settings().searchHighHertz()) / 2));
   }
 
   static double gain(Acquisition a) {
@@ -51,7 +50,8 @@ final class Choices {
     int most = Math.min(mostPoints, limits.maxPoints());
     double dwell = limits.dwellSeconds().snap(Math.max(1 / WIDE_HERTZ, seconds / most));
     while (seconds / dwell > most && dwell < limits.dwellSeconds().max()) {
-      dwell = limits.dwellSeconds().snap(dwell + Math.max(limits.dwellSeconds().step(), dwell * 0.05));
+      dwell =
+          limits.dwellSeconds().snap(dwell + Math.max(limits.dwellSeconds().step(), dwell * 0.05));
     }
     int points = points(limits, (int) Math.ceil(seconds / dwell));
     return new Window(points, dwell);

@@ -12,8 +12,8 @@ import java.util.ArrayList;
 import java.util.List;
 
 /**
- * The amplitudes of a run's scans on the decay they share: complex, at the pulse's centre, each with
- * the same standard uncertainty.
+ * The amplitudes of a run's scans on the decay they share: complex, at the pulse's centre, each
+ * with the same standard uncertainty.
  *
  * @param indices which scans of the run they belong to (those with a pulse)
  * @param fids those scans' FIDs without the DC offset
@@ -84,8 +84,7 @@ record CommonShape(
       }
     }
     try {
-      return DecayFit.fit(
-          average.mean(), DecayFit.Options.usual().withScans(average.count()));
+      return DecayFit.fit(average.mean(), DecayFit.Options.usual().withScans(average.count()));
     } catch (NotDetermined e) {
       throw Readings.refused("the decay that the scans share is not determined", e);
     }

@@ -84,12 +84,10 @@ final class DecayMethod implements Method {
   /** The window that T2* advises, from a scan of its own where T2* is not known yet. */
   private static Choices.Window window(Acquisition a) throws BoardException {
     double t2Star = a.known().value(Rung.T2STAR, "t2_star").orElse(Double.NaN);
-    Choices.Window first =
-        Choices.window(a.limits(), BenchShots.FIRST_SECONDS, MOST_POINTS);
+    Choices.Window first = Choices.window(a.limits(), BenchShots.FIRST_SECONDS, MOST_POINTS);
     if (Double.isNaN(t2Star)) {
       Scan scan =
-          a.playAside(
-              shot(a, 0, "", first.points(), first.dwellSeconds(), OptionalDouble.empty()));
+          a.playAside(shot(a, 0, "", first.points(), first.dwellSeconds(), OptionalDouble.empty()));
       try {
         t2Star = DecayFit.fit(scan.fid()).t2Star().value();
       } catch (NotDetermined e) {
@@ -100,7 +98,9 @@ final class DecayMethod implements Method {
     return Choices.window(a.limits(), Math.min(longest, RECORD * t2Star), MOST_POINTS);
   }
 
-  /** Plays an averaged FID as the ladder stands: zero or empty stands for what the ladder advises. */
+  /**
+   * Plays an averaged FID as the ladder stands: zero or empty stands for what the ladder advises.
+   */
   static void play(
       Acquisition a, int scans, int points, double dwell, String cycle, OptionalDouble carrier)
       throws BoardException, NotMeasurable {

@@ -18,7 +18,8 @@ import java.util.Optional;
 
 /**
  * The gain rung: the highest receiver gain at which the largest signal of a few pulse widths leaves
- * headroom at the digitiser. It first guesses T1, so that the signal it looks at is a recovered one.
+ * headroom at the digitiser. It first guesses T1, so that the signal it looks at is a recovered
+ * one.
  */
 final class GainMethod implements Method {
   /** Largest part of full scale that the signal may fill: headroom of 6 dB. */

@@ -35,7 +35,8 @@ final class LogRun {
 
   /** Runs to the end of the plan, or until the bench is stopped. */
   void run() throws BoardException, KeepException, InterruptedException {
-    bench.note("log started", run + ": every " + plan.every() + ", " + plan.scans() + " scans a row");
+    bench.note(
+        "log started", run + ": every " + plan.every() + ", " + plan.scans() + " scans a row");
     long slot = 0;
     long rows = 0;
     while (!bench.stopRequested() && (plan.count() == 0 || slot < plan.count())) {

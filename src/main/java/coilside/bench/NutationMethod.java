@@ -44,8 +44,7 @@ final class NutationMethod implements Method {
     a.note("longest_90", longest90);
     a.note("target", a.settings().pulse90Target());
     NutationFit.Options options = NutationFit.Options.between(shortest90, longest90);
-    NutationPlan plan =
-        new NutationPlan(options, a.settings().pulse90Target(), shortest, longest);
+    NutationPlan plan = new NutationPlan(options, a.settings().pulse90Target(), shortest, longest);
     Quiet.play(a, BenchShots.single(a, gain, longest, 0, 0));
     double width = Choices.pulse(a.limits(), Math.sqrt(shortest90 * longest90) / 2);
     while (a.scansLeft() > 0) {
@@ -87,8 +86,7 @@ final class NutationMethod implements Method {
     return advice;
   }
 
-  private static List<NutationPoint> points(
-      List<Shot> shots, List<Scan> scans, CommonShape shape) {
+  private static List<NutationPoint> points(List<Shot> shots, List<Scan> scans, CommonShape shape) {
     List<NutationPoint> points = new ArrayList<>();
     for (int j = 0; j < shape.indices().size(); j++) {
       int i = shape.indices().get(j);
@@ -106,8 +104,7 @@ final class NutationMethod implements Method {
   }
 
   static Pulse pulse(Shot shot) {
-    return (Pulse)
-        shot.flat().stream().filter(Pulse.class::isInstance).findFirst().orElseThrow();
+    return (Pulse) shot.flat().stream().filter(Pulse.class::isInstance).findFirst().orElseThrow();
   }
 
   /** From the end of the pulse before to the first pulse of scan i, s; infinite for the first. */

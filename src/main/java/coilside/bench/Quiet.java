@@ -9,8 +9,8 @@ import coilside.signal.Scan;
 import java.util.List;
 
 /**
- * What a capture's own receive-only scan says of the receiver at this gain and dwell time: its noise
- * and its DC offset, which is taken off the scans with a pulse.
+ * What a capture's own receive-only scan says of the receiver at this gain and dwell time: its
+ * noise and its DC offset, which is taken off the scans with a pulse.
  *
  * @param sigma noise of one real channel, one sample, V
  * @param offsetRe DC offset, V

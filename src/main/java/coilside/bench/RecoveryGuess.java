@@ -5,9 +5,9 @@ package coilside.bench;
  * the circle between pulse and repetition time openly. Its only use is a repetition time that is
  * surely long enough; the assumption is checked once T1 has been measured.
  *
- * <p>Model: scan k sees A sin(theta) m_k; after the pulse m cos(theta) is left, and during rest r it
- * recovers as m' = 1 + (m cos(theta) - 1) exp(-r/T1). T1 and cos(theta) are searched on a grid, A is
- * linear.
+ * <p>Model: scan k sees A sin(theta) m_k; after the pulse m cos(theta) is left, and during rest r
+ * it recovers as m' = 1 + (m cos(theta) - 1) exp(-r/T1). T1 and cos(theta) are searched on a grid,
+ * A is linear.
  */
 final class RecoveryGuess {
   private static final double SHORTEST = 3e-3;

@@ -40,8 +40,7 @@ final class RecoveryMethod implements Method {
     a.note("inversion", inversion ? 1 : 0);
     a.note("guess", guess);
     a.note("target", a.settings().t1Target());
-    RecoveryPlan plan =
-        new RecoveryPlan(options, a.settings().t1Target(), Double.NaN, REST_IN_T1);
+    RecoveryPlan plan = new RecoveryPlan(options, a.settings().t1Target(), Double.NaN, REST_IN_T1);
     double longRest = Choices.rest(a, GainMethod.RECOVERED * guess);
     Quiet.play(a, single(a, longRest));
     a.play(inversion ? inversion(a, GainMethod.RECOVERED * guess, longRest) : single(a, longRest));
@@ -68,8 +67,7 @@ final class RecoveryMethod implements Method {
       advice
           .result()
           .ifPresent(
-              r ->
-                  a.step("T1", Math.min(0.95, a.settings().t1Target() / r.t1().relative())));
+              r -> a.step("T1", Math.min(0.95, a.settings().t1Target() / r.t1().relative())));
     }
   }
 
@@ -108,16 +106,15 @@ final class RecoveryMethod implements Method {
             new Receive(w.points(), w.dwellSeconds(), 0)));
   }
 
-  private static List<RecoveryPoint> points(
-      List<Shot> shots, List<Scan> scans, boolean inversion) throws NotMeasurable {
+  private static List<RecoveryPoint> points(List<Shot> shots, List<Scan> scans, boolean inversion)
+      throws NotMeasurable {
     CommonShape shape = CommonShape.of(shots, scans);
     int first = 0;
     double phase = Math.atan2(shape.im()[first], shape.re()[first]);
     List<RecoveryPoint> points = new ArrayList<>();
     for (int j = 0; j < shape.indices().size(); j++) {
       int i = shape.indices().get(j);
-      double along =
-          shape.re()[j] * Math.cos(phase) + shape.im()[j] * Math.sin(phase);
+      double along = shape.re()[j] * Math.cos(phase) + shape.im()[j] * Math.sin(phase);
       double since = sinceReading(shots, scans, i);
       if (inversion) {
         points.add(new RecoveryPoint(recovery(shots.get(i)), along, shape.u()[j], since));
@@ -125,10 +122,7 @@ final class RecoveryMethod implements Method {
         double longest = scans.get(i).restSeconds();
         points.add(
             new RecoveryPoint(
-                Double.isInfinite(since) ? Math.max(longest, 1e3) : since,
-                along,
-                shape.u()[j],
-                0));
+                Double.isInfinite(since) ? Math.max(longest, 1e3) : since, along, shape.u()[j], 0));
       }
     }
     return points;
@@ -186,14 +180,12 @@ final class RecoveryMethod implements Method {
               100 * fit.t1().relative(),
               100 * target));
     }
-    return new Reading(
-        values, warnings, picture(points, Optional.of(fit), new double[0]));
+    return new Reading(values, warnings, picture(points, Optional.of(fit), new double[0]));
   }
 
   private static Picture picture(
       List<RecoveryPoint> points, Optional<RecoveryFit.Result> fit, double[] next) {
-    List<RecoveryPoint> shown =
-        points.stream().filter(p -> p.recoverySeconds() < 500).toList();
+    List<RecoveryPoint> shown = points.stream().filter(p -> p.recoverySeconds() < 500).toList();
     int n = shown.size();
     double[] x = new double[n];
     double[] y = new double[n];

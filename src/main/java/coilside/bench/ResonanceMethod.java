@@ -103,8 +103,7 @@ final class ResonanceMethod implements Method {
   public Reading read(Capture capture) throws NotMeasurable {
     Averager average = new Averager();
     for (int i = 0; i < capture.scans().size(); i++) {
-      average.add(
-          capture.scans().get(i).fid(), BenchShots.firstPhase(capture.shots().get(i)));
+      average.add(capture.scans().get(i).fid(), BenchShots.firstPhase(capture.shots().get(i)));
     }
     Fid fid = average.mean();
     return Readings.resonance(fid, capture.scans());
@@ -137,9 +136,7 @@ final class ResonanceMethod implements Method {
               high,
               Math.max(
                   low,
-                  a.known()
-                      .value(Rung.RESONANCE, "larmor_frequency")
-                      .orElse((low + high) / 2)));
+                  a.known().value(Rung.RESONANCE, "larmor_frequency").orElse((low + high) / 2)));
       List<Double> out = new ArrayList<>();
       for (double c = first; c <= high + step / 2; c += step) {
         out.add(Math.min(c, high));
@@ -221,11 +218,9 @@ final class ResonanceMethod implements Method {
 
     private boolean isThereWithoutPulse(Shot shot, Detection d) throws BoardException {
       Receive receive = (Receive) shot.steps().get(shot.steps().size() - 1);
-      Shot quiet =
-          new Shot(shot.carrierHertz(), shot.gainDecibels(), 0, List.of(receive));
+      Shot quiet = new Shot(shot.carrierHertz(), shot.gainDecibels(), 0, List.of(receive));
       Fid fid = a.playAside(quiet).fid();
-      Detection without =
-          Detection.of(fid, sigma(a, fid), List.of(), 1, FALSE_ALARM_PROBABILITY);
+      Detection without = Detection.of(fid, sigma(a, fid), List.of(), 1, FALSE_ALARM_PROBABILITY);
       return without.found()
           && Math.abs(without.offsetHertz() - d.offsetHertz()) < 200
           && without.statisticSigma() > 0.5 * d.statisticSigma();

@@ -24,9 +24,10 @@ final class Captures {
 
   /** The metadata file of a capture. */
   static Path locate(Path folder, String name) {
-    String base = name.endsWith(META) || name.endsWith(DATA)
-        ? name.substring(0, name.length() - META.length())
-        : name;
+    String base =
+        name.endsWith(META) || name.endsWith(DATA)
+            ? name.substring(0, name.length() - META.length())
+            : name;
     Path direct = Path.of(base + META);
     if (Files.exists(direct)) {
       return direct;

@@ -2,7 +2,6 @@ package coilside.command;
 
 import coilside.bench.Bench;
 import coilside.bench.Work;
-import coilside.quantity.Quantities;
 import coilside.quantity.Unit;
 import coilside.record.Json;
 import picocli.CommandLine.Command;

@@ -6,7 +6,6 @@ import java.util.concurrent.atomic.AtomicBoolean;
  * Turns Ctrl-C and TERM into a call that stops the work, instead of the end of the program: the
  * command then ends by itself with what was finished kept. A second signal ends the program.
  */
-
 final class Interrupt implements AutoCloseable {
   private final AtomicBoolean happened = new AtomicBoolean();
   private final sun.misc.SignalHandler handler;

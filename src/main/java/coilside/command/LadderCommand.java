@@ -43,8 +43,7 @@ final class LadderCommand implements CoilsideCommand {
       return;
     }
     for (Finding finding : findings) {
-      output.line(
-          finding.started() + "  sample '" + finding.conditions().sample() + "'");
+      output.line(finding.started() + "  sample '" + finding.conditions().sample() + "'");
       FindingText.of(finding, common.plain).forEach(line -> output.line("  " + line));
     }
     if (findings.isEmpty()) {

@@ -27,9 +27,7 @@ final class Links {
   static Path privateFolder() {
     String cache = System.getenv().getOrDefault("XDG_CACHE_HOME", "");
     Path base =
-        cache.startsWith("/")
-            ? Path.of(cache)
-            : Path.of(System.getProperty("user.home"), ".cache");
+        cache.startsWith("/") ? Path.of(cache) : Path.of(System.getProperty("user.home"), ".cache");
     return base.resolve("coilside");
   }
 

@@ -26,8 +26,7 @@ final class OpenBench implements AutoCloseable {
   }
 
   /** Opens record and board as the options say; nothing is left open when it fails. */
-  static OpenBench open(CommonOptions options, Output output)
-      throws BoardException, KeepException {
+  static OpenBench open(CommonOptions options, Output output) throws BoardException, KeepException {
     Clock clock = Clock.systemUTC();
     Parts parts = Parts.open(options, clock);
     try {

@@ -44,13 +44,15 @@ final class Profiles {
       }
       return ProfileReader.read(file);
     }
-    try (InputStream in = Profiles.class.getResourceAsStream("/device-profiles/" + name + ".toml")) {
+    try (InputStream in =
+        Profiles.class.getResourceAsStream("/device-profiles/" + name + ".toml")) {
       if (in == null) {
         throw new UsageException("the shipped profile '" + name + "' is not in this build");
       }
       return ProfileReader.read(name + ".toml", in.readNBytes(ProfileReader.LONGEST_FILE + 1));
     } catch (IOException e) {
-      throw new UsageException("the shipped profile '" + name + "' cannot be read: " + e.getMessage());
+      throw new UsageException(
+          "the shipped profile '" + name + "' cannot be read: " + e.getMessage());
     }
   }
 

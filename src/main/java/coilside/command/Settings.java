@@ -25,8 +25,7 @@ final class Settings {
     OptionalDouble t1 =
         options.expectedT1 == null
             ? OptionalDouble.empty()
-            : OptionalDouble.of(
-                Values.positive("--expected-t1", options.expectedT1, Unit.SECOND));
+            : OptionalDouble.of(Values.positive("--expected-t1", options.expectedT1, Unit.SECOND));
     if (options.scanBudget < 8) {
       throw new UsageException("--scan-budget " + options.scanBudget + " must be at least 8");
     }
@@ -44,8 +43,8 @@ final class Settings {
         options.scanBudget);
   }
 
-  private static String remembered(
-      BenchRecord record, String name, String given, String otherwise) throws KeepException {
+  private static String remembered(BenchRecord record, String name, String given, String otherwise)
+      throws KeepException {
     if (given != null) {
       String clean = Output.printable(given).strip();
       if (clean.isEmpty() || clean.length() > 200) {
@@ -57,8 +56,8 @@ final class Settings {
     return record.setting(name).orElse(otherwise);
   }
 
-  private static double amplitude(
-      CommonOptions options, DeviceProfile profile, BenchRecord record) throws KeepException {
+  private static double amplitude(CommonOptions options, DeviceProfile profile, BenchRecord record)
+      throws KeepException {
     BoardLimits.Range allowed = profile.limits().amplitude();
     double amplitude = profile.operator().amplitude();
     if (options.amplitude != null) {

@@ -38,8 +38,7 @@ final class ShowCommand implements CoilsideCommand {
       Refusals.print(capture.purpose(), e.refusal(), output);
       return ExitStatus.REFUSED;
     } catch (IllegalArgumentException e) {
-      throw new UsageException(
-          "the capture '" + name + "' cannot be analysed: " + e.getMessage());
+      throw new UsageException("the capture '" + name + "' cannot be analysed: " + e.getMessage());
     }
   }
 }

@@ -108,7 +108,16 @@ class LadderTest {
   @Test
   void anotherSampleMakesWhatDependsOnItStaleAndLeavesTheRest() {
     add(Rung.NOISE, Duration.ZERO, USUAL, "noise_density", 1e-9, Unit.VOLT_PER_ROOT_HERTZ);
-    add(Rung.T1, Duration.ZERO, USUAL, "t1", 0.12, Unit.SECOND, "repetition_time", 0.6, Unit.SECOND);
+    add(
+        Rung.T1,
+        Duration.ZERO,
+        USUAL,
+        "t1",
+        0.12,
+        Unit.SECOND,
+        "repetition_time",
+        0.6,
+        Unit.SECOND);
     Conditions oil =
         new Conditions(
             "board", "digest", 8.09e6, 0.5, 30, "cooking oil", "coil", OptionalDouble.of(25));
@@ -121,7 +130,16 @@ class LadderTest {
   @Test
   void anotherAmplitudeMakesNutationStaleButNotT1() {
     addNutation(Duration.ZERO, 20e-6);
-    add(Rung.T1, Duration.ZERO, USUAL, "t1", 0.12, Unit.SECOND, "repetition_time", 0.6, Unit.SECOND);
+    add(
+        Rung.T1,
+        Duration.ZERO,
+        USUAL,
+        "t1",
+        0.12,
+        Unit.SECOND,
+        "repetition_time",
+        0.6,
+        Unit.SECOND);
     Conditions weaker =
         new Conditions(
             "board", "digest", 8.09e6, 0.25, 30, "doped water", "coil", OptionalDouble.of(25));
@@ -132,7 +150,16 @@ class LadderTest {
 
   @Test
   void warmthMovesRelaxationTimes() {
-    add(Rung.T1, Duration.ZERO, USUAL, "t1", 0.12, Unit.SECOND, "repetition_time", 0.6, Unit.SECOND);
+    add(
+        Rung.T1,
+        Duration.ZERO,
+        USUAL,
+        "t1",
+        0.12,
+        Unit.SECOND,
+        "repetition_time",
+        0.6,
+        Unit.SECOND);
     Conditions warm =
         new Conditions(
             "board", "digest", 8.09e6, 0.5, 30, "doped water", "coil", OptionalDouble.of(28));
