@@ -82,7 +82,10 @@ final class LogRun {
               taken.name()));
     } catch (NotMeasurable e) {
       gap(slot, due, started, e.getMessage());
-    } catch (BoardException.LinkLost | BoardException.Silent | BoardException.BadAnswer e) {
+    } catch (BoardException.LinkLost
+        | BoardException.Silent
+        | BoardException.Unreachable
+        | BoardException.BadAnswer e) {
       gap(slot, due, started, e.getMessage());
     }
   }

@@ -83,7 +83,7 @@ final class ShotCheck {
     if (step instanceof Pulse p) {
       within("pulse width", p.seconds(), limits.pulseSeconds(), 1e6, "us", "choose within it");
       within("pulse amplitude", p.amplitude(), limits.amplitude(), 1, "", "choose within it");
-    } else if (step instanceof Wait w) {
+    } else if (step instanceof Wait w && w.seconds() > limits.waitSeconds().step() / 2) {
       within("wait", w.seconds(), limits.waitSeconds(), 1e6, "us", "choose within it");
     } else if (step instanceof Receive r) {
       within("dwell time", r.dwellSeconds(), limits.dwellSeconds(), 1e6, "us", "choose within it");

@@ -21,10 +21,7 @@ import picocli.CommandLine.Mixin;
       LadderCommand.class,
       ShowCommand.class,
       ExportCommand.class,
-      ReportCommand.class,
-      PortsCommand.class,
-      CheckCommand.class,
-      SimulateCommand.class
+      PortsCommand.class
     },
     footer = {
       "",
@@ -57,6 +54,6 @@ public final class CommandLineInterface implements CoilsideCommand {
 
   @Override
   public int run(Output output) throws Exception {
-    return InterfaceLauncher.run(common, output);
+    throw new UsageException("not yet");
   }
 }

@@ -3,7 +3,6 @@ package coilside.command;
 import coilside.bench.Bench;
 import coilside.bench.Work;
 import coilside.quantity.Unit;
-import coilside.record.Json;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Option;
@@ -69,7 +68,7 @@ final class FidCommand extends BenchCommand {
       Bench.Taken taken =
           open.bench().takeFid(new Work.TakeFid(scans, points, dwellSeconds(), cycle));
       if (common.json) {
-        output.line(Json.reading("fid", taken.capture(), taken.reading(), taken.name()));
+        output.line(ReadingJson.of(taken.capture(), taken.reading(), taken.name()).text());
       } else {
         ReadingText.of(taken.reading(), common.plain).forEach(output::line);
         output.line("capture: " + taken.name());

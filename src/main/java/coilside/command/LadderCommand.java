@@ -29,7 +29,7 @@ final class LadderCommand implements CoilsideCommand {
       if (rung != null) {
         printHistory(known.history(rung), output);
       } else if (common.json) {
-        output.line(Json.ladder(known.ladder()));
+        output.line(Json.ladder(known.ladder()).text());
       } else {
         LadderTable.of(known.ladder(), known.now(), common.plain).forEach(output::line);
       }
@@ -39,7 +39,7 @@ final class LadderCommand implements CoilsideCommand {
 
   private void printHistory(List<Finding> findings, Output output) {
     if (common.json) {
-      output.line(Json.findings(findings));
+      output.line(Json.history(findings).text());
       return;
     }
     for (Finding finding : findings) {

@@ -4,12 +4,16 @@ import coilside.bench.Bench;
 import coilside.bench.BenchDesk;
 import coilside.bench.BenchSettings;
 import coilside.bench.KeepException;
+import coilside.bench.Progress;
 import coilside.bench.Waiter;
 import coilside.board.Board;
 import coilside.board.BoardException;
 import coilside.record.BenchRecord;
 import java.time.Clock;
 import java.time.Instant;
+import java.util.List;
+import java.util.concurrent.CopyOnWriteArrayList;
+import java.util.function.Consumer;
 
 /** A bench opened for a command: board, record and ladder, closed together. */
 final class OpenBench implements AutoCloseable {
@@ -18,7 +22,15 @@ final class OpenBench implements AutoCloseable {
   private final Bench bench;
   private final Clock clock;
 
-  private OpenBench(Board board, BenchRecord record, Bench bench, Clock clock) {
+  private final List<Consumer<Progress>> listeners;
+
+  private OpenBench(
+      Board board,
+      BenchRecord record,
+      Bench bench,
+      Clock clock,
+      List<Consumer<Progress>> listeners) {
+    this.listeners = listeners;
     this.board = board;
     this.record = record;
     this.bench = bench;
@@ -29,6 +41,8 @@ final class OpenBench implements AutoCloseable {
   static OpenBench open(CommonOptions options, Output output) throws BoardException, KeepException {
     Clock clock = Clock.systemUTC();
     Parts parts = Parts.open(options, clock);
+    List<Consumer<Progress>> listeners = new CopyOnWriteArrayList<>();
+    listeners.add(new ProgressLine(output));
     try {
       Bench bench =
           new Bench(
@@ -37,8 +51,8 @@ final class OpenBench implements AutoCloseable {
               parts.settings(),
               clock,
               Waiter.by(clock),
-              new ProgressLine(output));
-      return new OpenBench(parts.board(), parts.record(), bench, clock);
+              event -> listeners.forEach(listener -> listener.accept(event)));
+      return new OpenBench(parts.board(), parts.record(), bench, clock, listeners);
     } catch (KeepException | RuntimeException e) {
       parts.close();
       throw e;
@@ -51,14 +65,8 @@ final class OpenBench implements AutoCloseable {
       OpenBoard.Prepared prepared = OpenBoard.prepare(options);
       BenchRecord record = BenchRecord.open(options.captures, clock);
       try {
-        Board board = prepared.open();
-        try {
-          BenchSettings settings = Settings.of(options, prepared.profile(), record);
-          return new Parts(board, record, settings);
-        } catch (KeepException | RuntimeException e) {
-          board.close();
-          throw e;
-        }
+        BenchSettings settings = Settings.of(options, prepared.profile(), record);
+        return new Parts(prepared.open(), record, settings);
       } catch (BoardException | KeepException | RuntimeException e) {
         record.close();
         throw e;
@@ -92,6 +100,11 @@ final class OpenBench implements AutoCloseable {
           "by the command '" + command + "', user " + System.getProperty("user.name"));
       board.arm();
     }
+  }
+
+  /** Tells a listener every event from now on, on the bench's thread. */
+  void listen(Consumer<Progress> listener) {
+    listeners.add(listener);
   }
 
   void stop() {

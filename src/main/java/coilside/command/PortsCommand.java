@@ -1,12 +1,9 @@
 package coilside.command;
 
 import coilside.board.link.PortInfo;
-import coilside.record.Json;
-import java.util.ArrayList;
-import java.util.LinkedHashMap;
+import coilside.record.JsonDocument;
 import java.util.List;
 import java.util.Locale;
-import java.util.Map;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
 
@@ -22,18 +19,19 @@ final class PortsCommand implements CoilsideCommand {
   public int run(Output output) throws Exception {
     List<PortInfo> ports = Links.ports();
     if (common.json) {
-      List<Map<String, Object>> rows = new ArrayList<>();
-      for (PortInfo port : ports) {
-        Map<String, Object> row = new LinkedHashMap<>();
-        row.put("path", port.path());
-        row.put("description", port.description());
-        row.put("usb", port.usbId());
-        row.put("serial_number", port.serialNumber());
-        row.put("blocked", port.blocked());
-        row.put("profiles", Profiles.fitting(port));
-        rows.add(row);
-      }
-      output.line(Json.document(Map.of("ports", rows)));
+      List<JsonDocument> rows =
+          ports.stream()
+              .map(
+                  port ->
+                      new JsonDocument()
+                          .put("path", port.path())
+                          .put("description", port.description())
+                          .put("usb", port.usbId())
+                          .put("serial_number", port.serialNumber())
+                          .put("blocked", port.blocked())
+                          .putTexts("profiles", Profiles.fitting(port)))
+              .toList();
+      output.line(new JsonDocument().putAll("ports", rows).text());
       return ExitStatus.DONE;
     }
     if (ports.isEmpty()) {

@@ -1,5 +1,6 @@
 package coilside.command;
 
+import coilside.board.link.PortInfo;
 import coilside.board.profile.DeviceProfile;
 import coilside.board.profile.ProfileProblem;
 import coilside.board.profile.ProfileReader;
@@ -64,5 +65,18 @@ final class Profiles {
       text.append("\n  ").append(problem.message());
     }
     return text.toString();
+  }
+
+  /** The shipped profiles that name this port's device. */
+  static List<String> fitting(PortInfo port) {
+    return SHIPPED.stream()
+        .filter(name -> Profiles.class.getResource("/device-profiles/" + name + ".toml") != null)
+        .filter(
+            name ->
+                read(name)
+                    .serial()
+                    .map(a -> !port.usbId().isEmpty() && a.usbIds().contains(port.usbId()))
+                    .orElse(false))
+        .toList();
   }
 }

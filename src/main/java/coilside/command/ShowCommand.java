@@ -3,7 +3,6 @@ package coilside.command;
 import coilside.bench.Analysis;
 import coilside.bench.Capture;
 import coilside.bench.Reading;
-import coilside.record.Json;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Parameters;
@@ -27,7 +26,7 @@ final class ShowCommand implements CoilsideCommand {
     try {
       Reading reading = Analysis.of(capture);
       if (common.json) {
-        output.line(Json.reading(capture.purpose(), capture, reading, Captures.baseName(name)));
+        output.line(ReadingJson.of(capture, reading, Captures.baseName(name)).text());
       } else {
         CaptureText.of(capture).forEach(output::line);
         ReadingText.of(reading, common.plain).forEach(output::line);

@@ -10,7 +10,8 @@ import java.math.RoundingMode;
  *
  * <p>The uncertainty has two digits, the value as many decimals. Digits after the point stand in
  * groups of three. SI prefixes are chosen by the value's size; seconds and tesla take none above
- * one. A value without uncertainty has six significant digits, no trailing zeros.
+ * one; a pure number below 1e-3 is given in ppm. A value without uncertainty has six significant
+ * digits, no trailing zeros.
  */
 public final class ConciseFormat {
   private static final String[] PREFIXES = {"f", "p", "n", "µ", "m", "", "k", "M", "G", "T"};
@@ -43,6 +44,9 @@ public final class ConciseFormat {
       return "unknown" + (symbol.isEmpty() ? "" : " " + symbol);
     }
     boolean withU = m.hasUncertainty() && Double.isFinite(m.u()) && m.u() > 0;
+    if (m.unit() == Unit.ONE && m.value() != 0 && Math.abs(m.value()) < 1e-3) {
+      return (withU ? withUncertainty(m, -6) : bare(m.value(), -6)) + " ppm";
+    }
     int prefix = prefix(m.unit(), Math.abs(m.value()), withU ? m.u() : 0);
     int shift = 3 * (prefix - UNITY);
     String number = withU ? withUncertainty(m, shift) : bare(m.value(), shift);

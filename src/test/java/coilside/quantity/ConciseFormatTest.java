@@ -19,6 +19,7 @@ class ConciseFormatTest {
     "-0.0015, 0.0001, VOLT, -1.50(10) mV",
     "0, 0.01, ONE, 0.000(10)",
     "0.0999, 0.00996, ONE, 0.100(10)",
+    "6.5e-6, 1e-7, ONE, 6.50(10) ppm",
     "25, 0.1, CELSIUS, 25.00(10) degC"
   })
   void ascii(double value, double u, Unit unit, String expected) {
