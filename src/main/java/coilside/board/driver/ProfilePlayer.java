@@ -59,6 +59,7 @@ final class ProfilePlayer implements ShotPlayer {
   private volatile boolean closed;
   private long lastRunNanos;
   private double lastShotSeconds = Double.NaN;
+  private byte[] lastBlock = {};
 
   ProfilePlayer(DeviceProfile profile, Link link, LongSupplier nanoClock, Clock wallClock) {
     this.profile = profile;
@@ -282,6 +283,7 @@ final class ProfilePlayer implements ShotPlayer {
             writer.named(CommandName.FETCH, Map.of(ValueName.WINDOW, (double) i)).bytes());
       }
       WireEvent.SampleBlock block = block(i, blocks, deadline, heard);
+      lastBlock = block.bytes();
       builder.block(block.index(), block.bytes());
     }
     while (profile.blocks().endMark().isPresent()) {
@@ -343,6 +345,72 @@ final class ProfilePlayer implements ShotPlayer {
     return new Silent(
         "the board sent no samples in the time of the shot and its answer; check that it is still"
             + " powered and has not been reset");
+  }
+
+  /** The bytes of the sample block that came last; empty before the first. Do not change. */
+  byte[] lastBlock() {
+    return lastBlock;
+  }
+
+  /** Sends commands that describe, but never run, a shot; whatever the board knew is sent again. */
+  void describe(List<Outgoing> commands) throws BoardException {
+    wire.lock();
+    try {
+      ready();
+      sentSettings = List.of();
+      sentBody = List.of();
+      try {
+        conversation.say(commands);
+      } finally {
+        unsettled = true;
+      }
+    } finally {
+      wire.unlock();
+    }
+  }
+
+  /** Asks once more who is there. */
+  String identifyAgain() throws BoardException {
+    wire.lock();
+    try {
+      ready();
+      Outgoing question =
+          new Outgoing(
+              conversation.encode(profile.identification().ask().orElseThrow(), Map.of()),
+              Optional.of(profile.identification().expect()));
+      String name = nameIn(conversation.ask(question, profile.replies().timeLimitSeconds()));
+      conversation.await(Optional.empty());
+      return name;
+    } finally {
+      wire.unlock();
+    }
+  }
+
+  /** Sends bytes that mean nothing; what comes back is thrown away before the next command. */
+  void babble(byte[] bytes) throws BoardException {
+    wire.lock();
+    try {
+      ready();
+      conversation.send(bytes);
+      unsettled = true;
+    } finally {
+      wire.unlock();
+    }
+  }
+
+  /** Lets a board of mode "asked" tell its errors until it has none left. */
+  void clearErrors() throws BoardException {
+    wire.lock();
+    try {
+      ready();
+      conversation.errors();
+    } finally {
+      wire.unlock();
+    }
+  }
+
+  ShotWriter writer() {
+    return writer;
   }
 
   @Override

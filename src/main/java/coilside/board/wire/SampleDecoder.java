@@ -45,8 +45,12 @@ public final class SampleDecoder {
     int stride = format.layout() == Layout.PLANAR ? size : 2 * size;
     int second = format.layout() == Layout.PLANAR ? samples * size : size;
     boolean swapped = format.layout() == Layout.QI;
-    component(bytes, offset + (swapped ? second : 0), stride, samples, re);
-    component(bytes, offset + (swapped ? 0 : second), stride, samples, im);
+    if (format.type() == SampleFormat.Type.I16 && format.layout() != Layout.PLANAR) {
+      shortPairs(bytes, offset, samples, swapped ? im : re, swapped ? re : im);
+    } else {
+      component(bytes, offset + (swapped ? second : 0), stride, samples, re);
+      component(bytes, offset + (swapped ? 0 : second), stride, samples, im);
+    }
     if (format.conjugated()) {
       for (int k = 0; k < samples; k++) {
         im[k] = -im[k];
@@ -81,6 +85,41 @@ public final class SampleDecoder {
       case I24 -> threes(bytes, base, stride, n, out);
       case I32 -> ints(bytes, base, stride, n, out);
       case F32 -> floats(bytes, base, stride, n, out);
+    }
+  }
+
+  /** The usual case in one pass: a pair is read as one number. */
+  private void shortPairs(byte[] bytes, int offset, int n, double[] first, double[] second) {
+    int flip = format.offsetBinary() ? 0x80008000 : 0;
+    boolean big = format.byteOrder() == ByteOrder.BIG_ENDIAN;
+    int least = 0;
+    int most = 0;
+    if (big) {
+      for (int k = 0, at = offset; k < n; k++, at += 4) {
+        int pair = (int) INT_BIG.get(bytes, at) ^ flip;
+        int a = pair >> 16;
+        int b = (short) pair;
+        first[k] = a;
+        second[k] = b;
+        most = Math.max(most, Math.max(a, b));
+        least = Math.min(least, Math.min(a, b));
+      }
+    } else {
+      for (int k = 0, at = offset; k < n; k++, at += 4) {
+        int pair = (int) INT_LITTLE.get(bytes, at) ^ flip;
+        int a = (short) pair;
+        int b = pair >> 16;
+        first[k] = a;
+        second[k] = b;
+        most = Math.max(most, Math.max(a, b));
+        least = Math.min(least, Math.min(a, b));
+      }
+    }
+    double peak = Math.max(most, -least);
+    largest = Math.max(largest, peak);
+    if (peak >= format.fullScaleCounts()) {
+      countClipped(first, n);
+      countClipped(second, n);
     }
   }
 
@@ -141,15 +180,22 @@ public final class SampleDecoder {
   }
 
   private void level(double[] out, int n) {
-    double rail = format.fullScaleCounts();
-    double most = largest;
-    int over = 0;
+    double most = 0;
     for (int k = 0; k < n; k++) {
-      double a = Math.abs(out[k]);
-      most = Math.max(most, a);
-      over += a >= rail ? 1 : 0;
+      most = Math.max(most, Math.abs(out[k]));
     }
-    largest = most;
-    clipped += over;
+    largest = Math.max(largest, most);
+    if (most >= format.fullScaleCounts()) {
+      countClipped(out, n);
+    }
+  }
+
+  private void countClipped(double[] out, int n) {
+    double rail = format.fullScaleCounts();
+    for (int k = 0; k < n; k++) {
+      if (Math.abs(out[k]) >= rail) {
+        clipped++;
+      }
+    }
   }
 }
