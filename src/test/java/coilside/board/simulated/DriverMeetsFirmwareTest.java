@@ -62,8 +62,7 @@ class DriverMeetsFirmwareTest {
             server);
       }
       default -> {
-        return new Served(
-            SimulatedBoards.inProcess(profile, bench, false, faults, System::nanoTime), () -> {});
+        return new Served(SimulatedBoards.inProcess(firmware), () -> {});
       }
     }
   }
