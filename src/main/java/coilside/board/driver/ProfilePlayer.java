@@ -2,6 +2,7 @@ package coilside.board.driver;
 
 import coilside.board.BoardException;
 import coilside.board.BoardException.BadAnswer;
+import coilside.board.BoardException.Refused;
 import coilside.board.BoardException.Silent;
 import coilside.board.BoardException.Stopped;
 import coilside.board.BoardIdentity;
@@ -359,10 +360,14 @@ final class ProfilePlayer implements ShotPlayer {
       ready();
       sentSettings = List.of();
       sentBody = List.of();
+      unsettled = true;
       try {
         conversation.say(commands);
-      } finally {
-        unsettled = true;
+        unsettled = false;
+      } catch (Refused refused) {
+        // One by one, or asked until there is no error left: nothing more is on its way.
+        unsettled = profile.replies().ahead() > 1;
+        throw refused;
       }
     } finally {
       wire.unlock();
