@@ -23,6 +23,7 @@ final class Acquisition {
   private final Board board;
   private final BenchSettings settings;
   private final Known known;
+  private final Guesses guesses;
   private final Consumer<Progress> out;
   private final InstantSource clock;
   private final BooleanSupplier stopped;
@@ -37,12 +38,14 @@ final class Acquisition {
       Board board,
       BenchSettings settings,
       Known known,
+      Guesses guesses,
       Consumer<Progress> out,
       InstantSource clock,
       BooleanSupplier stopped) {
     this.board = board;
     this.settings = settings;
     this.known = known;
+    this.guesses = guesses;
     this.out = out;
     this.clock = clock;
     this.stopped = stopped;
@@ -51,6 +54,10 @@ final class Acquisition {
 
   Known known() {
     return known;
+  }
+
+  Guesses guesses() {
+    return guesses;
   }
 
   BenchSettings settings() {

@@ -26,6 +26,9 @@ public final class Bench {
   private final Keeper keeper;
   private final InstantSource clock;
   private final Consumer<Progress> out;
+  private final Consumer<Progress> listener;
+  private final Waiter waiter;
+  private final Guesses guesses = new Guesses();
   private final Ladder ladder = new Ladder();
   private final Map<Rung, Picture> pictures = new EnumMap<>(Rung.class);
   private volatile BenchSettings settings;
@@ -38,6 +41,7 @@ public final class Bench {
       Keeper keeper,
       BenchSettings settings,
       InstantSource clock,
+      Waiter waiter,
       Consumer<Progress> out)
       throws KeepException {
     this.board = board;
@@ -46,12 +50,11 @@ public final class Bench {
     this.clock = clock;
     this.out = this::listen;
     this.listener = out;
+    this.waiter = waiter;
     for (Rung rung : Rung.values()) {
       keeper.findings(rung).forEach(ladder::add);
     }
   }
-
-  private final Consumer<Progress> listener;
 
   private void listen(Progress event) {
     if (event instanceof Progress.PictureChanged changed) {
@@ -71,6 +74,9 @@ public final class Bench {
 
   /** Takes these settings over from the next measurement on. */
   public void apply(BenchSettings changed) {
+    if (!changed.sample().equals(settings.sample())) {
+      guesses.forget();
+    }
     settings = changed;
     out.accept(new Progress.LadderChanged(ladder()));
   }
@@ -199,8 +205,7 @@ public final class Bench {
   private Finding measureOne(Rung rung) throws BoardException, KeepException {
     Instant started = clock.instant();
     out.accept(new Progress.RungStarted(rung, started));
-    Acquisition acquisition =
-        new Acquisition(board, settings, new Known(ladder), out, clock, () -> stopped);
+    Acquisition acquisition = acquisition();
     Finding finding;
     Method method = Methods.of(rung);
     try {
@@ -264,5 +269,82 @@ public final class Bench {
       ladder.newestGood(below).ifPresent(f -> ids.put(below, f.id()));
     }
     return ids;
+  }
+
+  private Acquisition acquisition() {
+    return new Acquisition(board, settings, new Known(ladder), guesses, out, clock, () -> stopped);
+  }
+
+  /** An averaged FID that was taken and kept. */
+  public record Taken(Capture capture, String name, Reading reading) {}
+
+  /** Plays and keeps an averaged FID as the ladder stands. */
+  public Taken takeFid(Work.TakeFid request) throws BoardException, KeepException, FidRefused {
+    try {
+      return take(
+          request.scans(),
+          request.points(),
+          request.dwellSeconds(),
+          request.phaseCycle(),
+          OptionalDouble.empty(),
+          "fid");
+    } catch (NotMeasurable e) {
+      throw new FidRefused(e.refusal());
+    }
+  }
+
+  /** An FID was taken, but it cannot be read; or it cannot be taken as the ladder stands. */
+  public static final class FidRefused extends Exception {
+    private static final long serialVersionUID = 1L;
+    private final transient Refusal refusal;
+
+    FidRefused(Refusal refusal) {
+      super(refusal.reason());
+      this.refusal = refusal;
+    }
+
+    public Refusal refusal() {
+      return refusal;
+    }
+  }
+
+  Taken take(
+      int scans, int points, double dwell, String cycle, OptionalDouble carrier, String purpose)
+      throws BoardException, KeepException, NotMeasurable {
+    Acquisition acquisition = acquisition();
+    DecayMethod.play(acquisition, scans, points, dwell, cycle, carrier);
+    Capture capture = acquisition.capture(purpose);
+    String name = keeper.keep(capture);
+    Reading reading = new DecayMethod().read(capture);
+    acquisition.show(reading.picture());
+    return new Taken(capture, name, reading);
+  }
+
+  /** Runs over and over until stopped, keeping nothing. */
+  public void live(Work.Live request) throws BoardException {
+    new LiveRun(acquisition(), request, () -> stopped).run();
+  }
+
+  /** Repeats an acquisition at fixed times until the plan ends or it is stopped. */
+  public void log(Work.Log plan) throws BoardException, KeepException {
+    try {
+      new LogRun(this, plan, waiter).run();
+    } catch (InterruptedException e) {
+      Thread.currentThread().interrupt();
+      throw new BoardException.Stopped("interrupted");
+    }
+  }
+
+  Instant now() {
+    return clock.instant();
+  }
+
+  void note(String kind, String text) throws KeepException {
+    keeper.note(clock.instant(), kind, text);
+  }
+
+  void keepRow(LogRow row) throws KeepException {
+    keeper.keep(row);
+    out.accept(new Progress.LogRowKept(row));
   }
 }

@@ -34,12 +34,13 @@ public final class BenchDesk implements Desk {
             return thread;
           });
 
-  public BenchDesk(Board board, Keeper keeper, BenchSettings settings, InstantSource clock)
+  public BenchDesk(
+      Board board, Keeper keeper, BenchSettings settings, InstantSource clock, Waiter waiter)
       throws KeepException {
     this.board = board;
     this.keeper = keeper;
     this.clock = clock;
-    this.bench = new Bench(board, keeper, settings, clock, this::tell);
+    this.bench = new Bench(board, keeper, settings, clock, waiter, this::tell);
   }
 
   private void tell(Progress event) {

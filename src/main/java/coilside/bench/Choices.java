@@ -18,8 +18,7 @@ final class Choices {
         .snap(
             a.known()
                 .value(Rung.RESONANCE, "larmor_frequency")
-                .orElse(
-                    (a.settings().searchLowHertz() + a.settings().searchHighHertz()) / 2));
+                .orElse((a.settings().searchLowHertz() + a.settings().searchHighHertz()) / 2));
   }
 
   static double gain(Acquisition a) {
@@ -51,7 +50,8 @@ final class Choices {
     int most = Math.min(mostPoints, limits.maxPoints());
     double dwell = limits.dwellSeconds().snap(Math.max(1 / WIDE_HERTZ, seconds / most));
     while (seconds / dwell > most && dwell < limits.dwellSeconds().max()) {
-      dwell = limits.dwellSeconds().snap(dwell + Math.max(limits.dwellSeconds().step(), dwell * 0.05));
+      dwell =
+          limits.dwellSeconds().snap(dwell + Math.max(limits.dwellSeconds().step(), dwell * 0.05));
     }
     int points = points(limits, (int) Math.ceil(seconds / dwell));
     return new Window(points, dwell);
@@ -62,6 +62,11 @@ final class Choices {
 
   static double pulse(BoardLimits limits, double seconds) {
     return limits.pulseSeconds().snap(seconds);
+  }
+
+  /** The 90-degree pulse as the ladder knows it, on the board's grain, s. */
+  static double pulse90(Acquisition a) {
+    return pulse(a.limits(), a.known().need(Rung.NUTATION, "pulse_90"));
   }
 
   static double amplitude(Acquisition a) {

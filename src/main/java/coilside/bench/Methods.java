@@ -27,8 +27,7 @@ final class Methods {
 
   /** Whether the board can serve the rung. */
   static boolean possible(Rung rung, BoardLimits limits) {
-    return rung != Rung.T2
-        || (limits.arbitraryShots() && limits.maxWindows() >= FEWEST_ECHOES);
+    return rung != Rung.T2 || (limits.arbitraryShots() && limits.maxWindows() >= FEWEST_ECHOES);
   }
 
   static Set<Rung> impossible(BoardLimits limits) {
@@ -54,6 +53,7 @@ final class Methods {
                 + limits.maxWindows()
             : "T2 needs echoes, and this board plays only 'pulse then receive'";
     throw new NotMeasurable(
-        reason, List.of("use a board, or a profile of this one, that plays shots of several steps"));
+        reason,
+        List.of("use a board, or a profile of this one, that plays shots of several steps"));
   }
 }

@@ -88,7 +88,8 @@ final class NoiseMethod implements Method {
     values.put("noise_density", noise.density());
     values.put("dc_offset", noise.offset());
     List<String> warnings = new ArrayList<>();
-    for (InterferenceLines.Line line : noise.lines().subList(0, Math.min(3, noise.lines().size()))) {
+    for (InterferenceLines.Line line :
+        noise.lines().subList(0, Math.min(3, noise.lines().size()))) {
       warnings.add(
           String.format(
               Locale.ROOT,

@@ -15,8 +15,12 @@ final class WorkRunner {
       return ended(bench.measure(measure.rung()));
     }
     if (work instanceof Work.TakeFid request) {
-      bench.takeFid(request);
-      return new Progress.WorkEnded(true, Optional.empty());
+      try {
+        bench.takeFid(request);
+        return new Progress.WorkEnded(true, Optional.empty());
+      } catch (Bench.FidRefused e) {
+        return new Progress.WorkEnded(false, Optional.of("FID refused: " + e.getMessage()));
+      }
     }
     if (work instanceof Work.Live live) {
       bench.live(live);

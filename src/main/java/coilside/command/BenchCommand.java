@@ -16,8 +16,9 @@ abstract class BenchCommand implements CoilsideCommand {
   @Override
   public final int run(Output output) throws Exception {
     check();
-    try (OpenBench open = OpenBench.open(common(), output);
-        Interrupt interrupt = Interrupt.calls(open::stop)) {
+    OpenBench open = OpenBench.open(common(), output);
+    try (Interrupt interrupt = Interrupt.calls(open::stop);
+        open) {
       try {
         int status = work(open, output);
         return interrupt.happened() ? ExitStatus.INTERRUPTED : status;

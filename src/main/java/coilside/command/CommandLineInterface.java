@@ -1,11 +1,8 @@
 package coilside.command;
 
-import java.util.concurrent.Callable;
 import picocli.CommandLine;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
-import picocli.CommandLine.Model.CommandSpec;
-import picocli.CommandLine.Spec;
 
 /** The whole command line: the text interface by default, one subcommand for each job. */
 @Command(
@@ -24,10 +21,7 @@ import picocli.CommandLine.Spec;
       LadderCommand.class,
       ShowCommand.class,
       ExportCommand.class,
-      ReportCommand.class,
-      PortsCommand.class,
-      CheckCommand.class,
-      SimulateCommand.class
+      PortsCommand.class
     },
     footer = {
       "",
@@ -36,9 +30,8 @@ import picocli.CommandLine.Spec;
       "Strong magnets, RF and high voltage: read the safety section of the README first.",
       "Never for use on people or animals."
     })
-public final class CommandLineInterface implements Callable<Integer> {
+public final class CommandLineInterface implements CoilsideCommand {
   @Mixin CommonOptions common;
-  @Spec CommandSpec spec;
 
   private CommandLineInterface() {}
 
@@ -60,7 +53,7 @@ public final class CommandLineInterface implements Callable<Integer> {
   }
 
   @Override
-  public Integer call() throws Exception {
-    return InterfaceLauncher.run(common, (Output) spec.commandLine().getParent());
+  public int run(Output output) throws Exception {
+    return InterfaceLauncher.run(common, output);
   }
 }

@@ -80,9 +80,7 @@ final class CommonOptions {
       })
   String scenario;
 
-  @Option(
-      names = "--paced",
-      description = "simulated bench: takes the time a real one would")
+  @Option(names = "--paced", description = "simulated bench: takes the time a real one would")
   boolean paced;
 
   @Option(

@@ -1,41 +1,58 @@
 package coilside.command;
 
-import java.util.concurrent.atomic.AtomicBoolean;
+import java.util.concurrent.CountDownLatch;
+import java.util.concurrent.TimeUnit;
 
 /**
- * Turns Ctrl-C and TERM into a call that stops the work, instead of the end of the program: the
- * command then ends by itself with what was finished kept. A second signal ends the program.
+ * Makes Ctrl-C, TERM and HUP stop the work before the program ends: the end of the program waits a
+ * bounded time until the command has kept what was finished. The exit status is then that of the
+ * signal, 130 for Ctrl-C.
  */
-
 final class Interrupt implements AutoCloseable {
-  private final AtomicBoolean happened = new AtomicBoolean();
-  private final sun.misc.SignalHandler handler;
-  private final sun.misc.SignalHandler oldInterrupt;
-  private final sun.misc.SignalHandler oldTerminate;
+  private static final int LONGEST_SECONDS = 15;
+
+  private final CountDownLatch finished = new CountDownLatch(1);
+  private final Thread hook;
+  private volatile boolean happened;
 
   private Interrupt(Runnable stop) {
-    handler =
-        signal -> {
-          if (!happened.compareAndSet(false, true)) {
-            Runtime.getRuntime().halt(ExitStatus.INTERRUPTED);
-          }
-          new Thread(stop, "stop").start();
-        };
-    oldInterrupt = sun.misc.Signal.handle(new sun.misc.Signal("INT"), handler);
-    oldTerminate = sun.misc.Signal.handle(new sun.misc.Signal("TERM"), handler);
+    hook =
+        new Thread(
+            () -> {
+              happened = true;
+              stop.run();
+              awaitTheCommand();
+            },
+            "interrupt");
+    Runtime.getRuntime().addShutdownHook(hook);
   }
 
+  /** From now on an interrupt calls {@code stop} and waits for {@link #close()}. */
   static Interrupt calls(Runnable stop) {
     return new Interrupt(stop);
   }
 
+  private void awaitTheCommand() {
+    try {
+      finished.await(LONGEST_SECONDS, TimeUnit.SECONDS);
+    } catch (InterruptedException e) {
+      Thread.currentThread().interrupt();
+    }
+  }
+
   boolean happened() {
-    return happened.get();
+    return happened;
   }
 
   @Override
   public void close() {
-    sun.misc.Signal.handle(new sun.misc.Signal("INT"), oldInterrupt);
-    sun.misc.Signal.handle(new sun.misc.Signal("TERM"), oldTerminate);
+    finished.countDown();
+    if (!happened) {
+      try {
+        Runtime.getRuntime().removeShutdownHook(hook);
+      } catch (IllegalStateException e) {
+        // The program is already on its way out: the hook has just begun.
+      }
+    }
   }
 }

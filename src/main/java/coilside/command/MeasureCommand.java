@@ -35,7 +35,7 @@ final class MeasureCommand extends BenchCommand {
     open.armForThisRun("measure " + rung);
     Finding finding = open.bench().measure(rungNamed(rung));
     if (common.json) {
-      output.line(Json.finding(finding));
+      output.line(Json.finding(finding).text());
     } else {
       FindingText.of(finding, common.plain).forEach(output::line);
       if (finding.refused()) {

@@ -27,7 +27,7 @@ final class ReadyCommand extends BenchCommand {
     open.armForThisRun("ready");
     Climb climb = bench.ready();
     if (common.json) {
-      output.line(Json.ready(climb));
+      output.line(Json.ready(climb).text());
     } else {
       LadderTable.of(climb.ladder(), open.now(), common.plain).forEach(output::line);
       for (RungStatus status : climb.ladder()) {

@@ -8,9 +8,12 @@ final class Refusals {
   private Refusals() {}
 
   static void print(Finding finding, Output output) {
-    Refusal refusal = finding.refusal().orElseThrow();
+    print(finding.rung().id(), finding.refusal().orElseThrow(), output);
+  }
+
+  static void print(String what, Refusal refusal, Output output) {
     output.aside("");
-    output.aside(finding.rung().id() + " refused: " + refusal.reason());
+    output.aside(what + " refused: " + refusal.reason());
     if (!refusal.likelyCauses().isEmpty()) {
       output.aside("most likely first:");
       int n = 1;

@@ -16,10 +16,10 @@ import java.util.OptionalDouble;
  * @param fullScaleCounts count at the positive rail, for the level shown and clipping
  * @param conjugated true when the board delivers I - iQ where the convention of the signal package
  *     wants I + iQ
- * @param lostSamples complex points at the start of each window that the board's receive filter
- *     spoils: they are sent, and thrown away
- * @param filterDelaySamples group delay of that filter, complex points: point k shows what was at
- *     the input {@code filterDelaySamples} points earlier
+ * @param lostSamples samples (complex points, or real samples) at the start of each window that the
+ *     board's receive filter spoils: they are sent, and thrown away
+ * @param filterDelaySamples group delay of that filter, in the same samples: sample k shows what
+ *     was at the input {@code filterDelaySamples} samples earlier
  * @param real for real samples: rate and intermediate frequency
  */
 public record SampleFormat(
