@@ -61,6 +61,10 @@ final class Cockpit {
     return actions;
   }
 
+  boolean simulated() {
+    return desk.board().simulated();
+  }
+
   boolean unicode() {
     return glyphs.unicode();
   }

@@ -71,7 +71,9 @@ final class Numbers {
       return "-";
     }
     if (!(u > 0) || Double.isInfinite(u)) {
-      return si(value, unit, 4);
+      return si(value, unit, 6)
+          .replaceFirst("\\.0+( |$)", "$1")
+          .replaceFirst("(\\.\\d*?)0+( |$)", "$1$2");
     }
     int e = exponent(Math.max(Math.abs(value), u), unit);
     double scale = Math.pow(10, e);

@@ -21,6 +21,7 @@ final class PictureView {
   private Source source = Source.RUNG;
   private int focus;
   private Boolean alone;
+  private boolean shownAlone;
   private List<PlotModel> shown = List.of();
 
   PictureView(Look look) {
@@ -50,7 +51,7 @@ final class PictureView {
   }
 
   void toggleAlone() {
-    alone = alone == null || !alone;
+    alone = !shownAlone;
   }
 
   boolean several() {
@@ -107,6 +108,7 @@ final class PictureView {
                     && !shown.get(0).residuals().isEmpty()
                     && look.residuals
                 : alone);
+    shownAlone = one;
     Plot plot = new Plot(canvas, look.style);
     if (one) {
       PlotModel m = shown.get(focus);

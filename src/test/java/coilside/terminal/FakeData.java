@@ -13,6 +13,7 @@ final class FakeData {
   private static final int N = 2048;
   private static final double DWELL = 20e-6;
   private final Random random = new Random(1);
+  private int traces;
 
   double noise() {
     return random.nextGaussian();
@@ -85,7 +86,10 @@ final class FakeData {
     double[] fr = new double[N];
     double[] fi = new double[N];
     double sigma = 4e-7 / Math.sqrt(scans);
-    double t2 = rung == Rung.RINGDOWN ? 8e-6 : 8.3e-3 * (1 + 0.01 * noise());
+    double t2 =
+        rung == Rung.RINGDOWN
+            ? 8e-6
+            : 8.3e-3 * (1 + 0.01 * noise() + 0.05 * Math.sin(0.02 * traces++));
     double a = rung == Rung.NOISE ? 0 : 3e-5;
     double f = 132;
     double start = 60e-6;

@@ -99,6 +99,12 @@ final class FakeDesk implements Desk {
     }
   }
 
+  void playSome(int events) {
+    for (int i = 0; i < events; i++) {
+      advance();
+    }
+  }
+
   void state(Rung rung, RungStatus.State state, List<String> reasons) {
     List<Finding> all = findings.get(rung);
     Optional<Finding> last =
