@@ -1,0 +1,79 @@
+package coilside.fit;
+
+import java.util.List;
+
+/**
+ * The signal after a pulse, per unit of fully recovered magnetisation: rotation about the effective
+ * field (Rabi), damping by the spread of B1, and what recovery left of the magnetisation.
+ *
+ * <p>nu is the nutation rate on resonance, nu_e = sqrt(nu^2 + offset^2), n = (nu, offset)/nu_e,
+ * theta = 2 pi nu_e t. Along the pulse's own phase, extrapolated to the pulse's centre:
+ *
+ * <pre>f = M n_x (D sin theta + i n_z (1 - D cos theta)) exp(-i pi offset t)
+ * M after = M (n_z^2 + n_x^2 D cos theta)</pre>
+ *
+ * <p>Transverse magnetisation is taken to be gone when the next pulse comes.
+ */
+final class NutationModel {
+  private final double[] t;
+  private final double[] recovery;
+  private final double[] offset;
+  private final NutationFit.Recovery history;
+  private final NutationFit.Spread spread;
+
+  NutationModel(
+      List<NutationPoint> points, NutationFit.Recovery history, NutationFit.Spread spread) {
+    int n = points.size();
+    t = new double[n];
+    recovery = new double[n];
+    offset = new double[n];
+    for (int j = 0; j < n; j++) {
+      t[j] = points.get(j).pulseSeconds();
+      recovery[j] = points.get(j).recoverySeconds();
+      offset[j] = points.get(j).offsetHertz();
+    }
+    this.history = history;
+    this.spread = spread;
+  }
+
+  /**
+   * Fills f for all points.
+   *
+   * @param nu nutation rate, Hz
+   * @param damping parameter of the spread: exponent per 90 degrees, or squared relative deviation
+   * @param t1 s; NaN for full recovery before every pulse
+   */
+  void fill(double nu, double damping, double t1, double[] re, double[] im) {
+    double after = 1;
+    for (int j = 0; j < t.length; j++) {
+      double e1 = Double.isNaN(t1) ? 0 : Math.exp(-recovery[j] / t1);
+      double d = offset[j];
+      double effective = d == 0 ? nu : Math.sqrt(nu * nu + d * d);
+      double nx = nu / effective;
+      double nz = d / effective;
+      double theta = 2 * Math.PI * effective * t[j];
+      double nominal = 2 * Math.PI * nu * t[j];
+      double loss = damping == 0 ? 1 : spread.factor(damping, nominal);
+      double sine = loss * Math.sin(theta);
+      double cosine = loss * Math.cos(theta);
+      double left = nz * nz + nx * nx * cosine;
+      double m =
+          history == NutationFit.Recovery.STEADY_STATE
+              ? (1 - e1) / (1 - e1 * left)
+              : 1 - e1 * (1 - after);
+      after = m * left;
+      double a = m * nx * sine;
+      double b = m * nx * nz * (1 - cosine);
+      if (d == 0) {
+        re[j] = a;
+        im[j] = b;
+      } else {
+        double turn = Math.PI * d * t[j];
+        double c = Math.cos(turn);
+        double s = Math.sin(turn);
+        re[j] = a * c + b * s;
+        im[j] = b * c - a * s;
+      }
+    }
+  }
+}
