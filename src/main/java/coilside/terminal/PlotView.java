@@ -36,7 +36,7 @@ final class PlotView {
   }
 
   boolean zoomed() {
-    return from > 0 || to < 1;
+    return touched && (from > 0 || to < 1);
   }
 
   boolean logarithmic() {
