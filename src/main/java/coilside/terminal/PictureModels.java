@@ -18,7 +18,7 @@ final class PictureModels {
     if (picture instanceof Picture.Curve curve) {
       return List.of(curve(curve, prefix));
     }
-    Picture.Trace trace = (Picture.Trace) picture;
+    Picture.Trace trace = Phased.of((Picture.Trace) picture);
     List<PlotModel> out = new ArrayList<>();
     out.add(fid(trace, part, prefix));
     trace.spectrum().ifPresent(s -> out.add(spectrum(s, trace.rung(), part, prefix)));
@@ -126,7 +126,7 @@ final class PictureModels {
             });
     return new PlotModel(
         prefix + t.rung().id() + ".fid",
-        "FID, " + part.words,
+        "FID, " + part.words + (Phased.applies(t) ? ", phased" : ""),
         "time",
         "s",
         "amplitude",

@@ -200,18 +200,18 @@ final class PictureView {
     for (Headline h : Headline.values()) {
       HeadlineHistory history = state.headlines().get(h);
       if (h != look.headline && history.latest().isPresent()) {
+        boolean named = h == Headline.T2STAR || h == Headline.SNR || area.width() >= 70;
         String text =
-            (h == Headline.FREQUENCY || h == Headline.T2STAR || h == Headline.LINEWIDTH
-                    ? ""
-                    : h.words + " ")
-                + (h == Headline.T2STAR ? "T2* " : "")
+            (named ? h.words + " " : "")
                 + Numbers.si(
                     history.latest().get().value(),
                     history.latest().get().unit().pretty(),
                     h == Headline.FREQUENCY ? 7 : 3)
-                + g.arrow(history.trend()).substring(0, 1);
+                + g.arrow(history.trend()).charAt(0);
         if (x + text.length() <= area.right()) {
-          x = canvas.put(x, area.y() + 1, text, Ink.PLAIN, area.right()) + 2;
+          x =
+              canvas.put(x, area.y() + 1, text, Ink.PLAIN, area.right())
+                  + (area.width() >= 70 ? 2 : 1);
         }
       }
     }

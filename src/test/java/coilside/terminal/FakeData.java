@@ -118,7 +118,7 @@ final class FakeData {
     String caption =
         rung == Rung.NOISE
             ? "noise 1.23(2) nV/Hz^0.5; no line above 5 sigma"
-            : "T2* " + Numbers.concise(t2, 1e-4, "s") + ", linewidth 38.3(5) Hz";
+            : "T2* " + Numbers.si(t2, "s", 3) + ", linewidth 38.3(5) Hz";
     return new Picture.Trace(
         rung, fid, fit, 4, Optional.of(new Spectrum(sr, si, step, carrier)), List.of(), caption);
   }

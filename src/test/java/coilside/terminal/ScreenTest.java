@@ -39,7 +39,7 @@ class ScreenTest {
     assertShows(s, "● fresh", "all rungs fresh");
     s.now = s.now.plusSeconds(7200);
     s.turn();
-    assertShows(s, "2 h");
+    assertShows(s, "2.0 h");
   }
 
   @Test
@@ -115,7 +115,7 @@ class ScreenTest {
       s.desk.advance();
     }
     s.turn();
-    assertShows(s, "linewidth 3", "best", "T2* 8.", "amplitude 30.0 µV", "SNR");
+    assertShows(s, "linewidth 3", "best", "T2* 8.", "30.1 µV", "SNR 7", "8.089532 MHz");
     s.press("g");
     assertShows(s, "linewidth in Hz", "████");
     s.press("n");
