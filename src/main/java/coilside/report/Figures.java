@@ -68,15 +68,14 @@ final class Figures {
     }
     Axis x = Axis.around("time after the pulse", "s", 0, times);
     Axis y = Axis.around("signal", "V", AIR, fid.re(), fid.im());
-    Plot decay =
-        new Plot(TALL, x, y).curve("imaginary", times, fid.im()).curve("data", times, fid.re());
+    Plot decay = new Plot(TALL, x, y).curve("imaginary", times, fid.im());
     StringBuilder out = new StringBuilder();
     if (t.fit().isPresent()) {
       Fid fit = t.fit().get();
       int from = Math.max(0, Math.min(t.usedFrom(), fid.points()));
       double[] used = java.util.Arrays.copyOfRange(times, from, times.length);
       double[] fitRe = part(fit.re(), from);
-      decay.curve("fit", used, fitRe);
+      decay.curve("fit", used, fitRe).curve("data", times, fid.re());
       out.append(decay.svg("FID, real and imaginary part, with fit: " + t.caption()));
       double[] residual = minus(part(fid.re(), from), fitRe);
       double[] residualIm = minus(part(fid.im(), from), part(fit.im(), from));
@@ -87,6 +86,7 @@ final class Figures {
               .curve("data", used, residual)
               .svg("what the fit leaves of the FID"));
     } else {
+      decay.curve("data", times, fid.re());
       out.append(decay.svg("FID, real and imaginary part: " + t.caption()));
     }
     t.spectrum().ifPresent(s -> out.append(spectrum(s)));
@@ -156,7 +156,7 @@ final class Figures {
     double zero = difference ? middle : 0;
     Axis y =
         Axis.around(
-            difference ? words + " - " + (float) middle + " " + unit : words,
+            difference ? words + " - " + plain(middle) + " " + unit : words,
             difference || !unit.equals("1") ? unit : "",
             AIR,
             less(values, zero),
@@ -167,6 +167,10 @@ final class Figures {
         .curve("band", hours, less(bars.get(1), zero))
         .curve("data", hours, less(values, zero))
         .svg(words + " through the log, with its standard uncertainty");
+  }
+
+  private static String plain(double x) {
+    return new java.math.BigDecimal(Double.toString(x)).stripTrailingZeros().toPlainString();
   }
 
   private static double[] less(double[] values, double zero) {

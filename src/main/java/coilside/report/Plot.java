@@ -7,9 +7,9 @@ import java.util.List;
  */
 final class Plot {
   private static final int WIDTH = 640;
-  private static final int LEFT = 74;
+  private static final int LEFT = 60;
   private static final int RIGHT = 14;
-  private static final int TOP = 12;
+  private static final int TOP = 26;
   private static final int BOTTOM = 44;
   private static final int MOST_POINTS = 1200;
   private static final double DOT = 3;
@@ -51,10 +51,7 @@ final class Plot {
     body.append("\" width=\"").append(WIDTH - LEFT - RIGHT).append("\" height=\"");
     body.append(height - TOP - BOTTOM).append("\"/>");
     text("label", (LEFT + WIDTH - RIGHT) / 2.0, height - 8, "middle", x.label());
-    double middle = (TOP + height - BOTTOM) / 2.0;
-    body.append("<text class=\"label\" text-anchor=\"middle\" transform=\"translate(14 ");
-    body.append(Markup.number(middle)).append(") rotate(-90)\">");
-    body.append(Markup.text(y.label())).append("</text>");
+    text("label", LEFT, TOP - 8, "start", y.label());
   }
 
   private void line(String css, double x1, double y1, double x2, double y2) {

@@ -31,7 +31,7 @@ public final class ReportPage {
       .value{font-variant-numeric:tabular-nums;white-space:nowrap}.soft,.note{color:var(--soft)}.caution{border:2px solid var(--orange);padding:.4rem .8rem}
       figure{margin:1rem 0}figcaption{color:var(--soft)}svg{width:100%;height:auto;display:block}
       svg text{fill:var(--ink);font:12px system-ui,sans-serif}svg .grid{stroke:var(--faint)}svg .frame{fill:none;stroke:var(--soft)}
-      svg path{fill:none;stroke-width:1.4}svg path.data{stroke:var(--blue)}svg path.imaginary{stroke:var(--grey)}svg path.fit{stroke:var(--orange);stroke-width:2}
+      svg path{fill:none;stroke-width:1.4}svg path.data{stroke:var(--blue)}svg path.imaginary{stroke:var(--grey)}svg path.fit{stroke:var(--orange);stroke-width:3}
       svg path.band{stroke:var(--grey);stroke-dasharray:3 3}svg circle.data{fill:var(--blue)}svg .bar{stroke:var(--blue)}
       """;
 
