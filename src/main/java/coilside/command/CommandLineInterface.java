@@ -54,6 +54,6 @@ public final class CommandLineInterface implements CoilsideCommand {
 
   @Override
   public int run(Output output) throws Exception {
-    throw new UsageException("not yet");
+    return InterfaceLauncher.run(common, output);
   }
 }
