@@ -118,11 +118,11 @@ final class PictureModels {
               series.add(Series.line("fit", Ink.FIT, ft, Arrays.copyOfRange(fy, from, n)));
               double[] r = new double[n - from];
               Arrays.setAll(r, k -> y[from + k] - fy[from + k]);
-              residuals.add(Series.line("", Ink.SECOND, ft, r));
               double[] u = new double[2];
               Arrays.fill(u, rms(r));
               residuals.add(
                   Series.band("", new double[] {ft[0], ft[ft.length - 1]}, new double[2], u));
+              residuals.add(Series.line("", Ink.SECOND, ft, r));
             });
     return new PlotModel(
         prefix + t.rung().id() + ".fid",
@@ -162,7 +162,7 @@ final class PictureModels {
     double noise = Peak.baseline(magnitude);
     double[] ends = {f[0], f[n - 1]};
     double[] half = {noise, noise};
-    series.add(Series.band("noise level", ends, new double[2], half));
+    series.add(0, Series.band("noise level", ends, new double[2], half));
     Optional<Peak> peak = Peak.of(s, magnitude, noise);
     double[] near = peak.map(Peak::around).orElse(new double[] {Double.NaN, Double.NaN});
     return new PlotModel(
