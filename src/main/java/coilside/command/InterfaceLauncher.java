@@ -18,11 +18,8 @@ final class InterfaceLauncher {
     Clock clock = Clock.systemUTC();
     TerminalOptions look = look(options, clock, SettingsStore.none());
     Optional<String> unusable = TextInterface.unusable(look, System.console() != null);
-    if (unusable.isPresent()) {
-      throw new UsageException(
-          unusable.get()
-              + " Without a terminal, 'coilside ready' climbs the ladder and prints it as a table;"
-              + " 'coilside --help' lists every command.");
+    if (!options.plain && unusable.isPresent()) {
+      throw new UsageException(unusable.get());
     }
     OpenBench.Parts parts = OpenBench.Parts.open(options, clock);
     try (BenchDesk desk = parts.desk(clock)) {

@@ -68,11 +68,11 @@ final class Plot {
       low = 0;
       high = 1;
     }
-    boolean line = model.series().stream().anyMatch(s -> s.form() == Series.Form.LINE);
-    boolean dense = line && model.series().get(0).form() == Series.Form.LINE;
+    boolean dense = model.series().stream().noneMatch(s -> s.form() == Series.Form.POINTS);
     if (dense) {
       // A trace fills the width exactly; only point plots get round ends.
       double span = high - low;
+      view.prefer((model.shownFrom() - low) / span, (model.shownTo() - low) / span);
       return new Axis(low + view.from() * span, low + view.to() * span, model.xUnit());
     }
     view.xScale.update(low, high);
@@ -171,7 +171,11 @@ final class Plot {
     for (int row = plot.y(); row < plot.bottom(); row++) {
       canvas.put(plot.x() - 1, row, glyphs.vertical(), Ink.AXIS);
     }
-    int atMost = Math.max(1, plot.height() / 3 + 1);
+    int wanted = Math.max(1, plot.height() / 2);
+    while (!log && wanted < 2 * plot.height() && y.ticks(wanted).size() < 2) {
+      wanted++;
+    }
+    int atMost = wanted;
     List<Double> ticks = log ? decades(y, atMost) : y.ticks(atMost);
     int last = Integer.MAX_VALUE;
     for (double t : ticks) {
@@ -208,7 +212,7 @@ final class Plot {
     String yUnit =
         view.logarithmic() ? "" : new Axis(viewLow(), viewHigh(), model.yUnit()).unitText();
     canvas.put(area.x(), row, yUnit, Ink.AXIS, plot.x() - 1);
-    int atMost = Math.max(2, plot.width() / 10);
+    int atMost = Math.max(2, plot.width() / 8);
     int free = area.x();
     for (double t : x.ticks(atMost)) {
       int column = plot.x() + (int) Math.round(x.fraction(t) * (plot.width() - 1));

@@ -397,6 +397,9 @@ public final class Firmware {
       sayError(e);
     } else if (errors.size() < LONGEST_ERROR_QUEUE) {
       errors.add(e);
+    } else {
+      errors.removeLast();
+      errors.add(FirmwareRefusal.queueOverflow());
     }
   }
 

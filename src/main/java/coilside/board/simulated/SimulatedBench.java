@@ -44,6 +44,7 @@ public final class SimulatedBench implements FirmwareReceiver {
       // The ringing is long over when a synthesiser has moved.
       ringRe = 0;
       ringIm = 0;
+      magnet.retune(carrierHertz, shot.carrierHertz());
       carrierHertz = shot.carrierHertz();
     }
     pass(shot.restSeconds());
