@@ -13,8 +13,9 @@ import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 
 /**
- * Fills a real small file system where this user may mount one; elsewhere a limit in the file writer
- * and in SQLite stand in for it (see {@code CaptureTest} and {@code BenchRecordTest}), which is said.
+ * Fills a real small file system where this user may mount one; elsewhere a limit in the file
+ * writer and in SQLite stand in for it (see {@code CaptureTest} and {@code BenchRecordTest}), which
+ * is said.
  */
 class FullDiskTest {
   @TempDir Path folder;
