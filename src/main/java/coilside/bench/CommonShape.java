@@ -1,0 +1,92 @@
+package coilside.bench;
+
+import coilside.fit.DecayFit;
+import coilside.fit.DecayResult;
+import coilside.fit.NotDetermined;
+import coilside.shot.Shot;
+import coilside.signal.Averager;
+import coilside.signal.Fid;
+import coilside.signal.MatchedProjection;
+import coilside.signal.Scan;
+import java.util.ArrayList;
+import java.util.List;
+
+/**
+ * The amplitudes of a run's scans on the decay they share: complex, at the pulse's centre, each
+ * with the same standard uncertainty.
+ *
+ * @param indices which scans of the run they belong to (those with a pulse)
+ * @param fids those scans' FIDs without the DC offset
+ * @param re real parts, V
+ * @param im imaginary parts, V
+ * @param u standard uncertainty of each part, V
+ * @param decay the shared decay
+ * @param quiet what the receive-only scan said
+ */
+record CommonShape(
+    List<Integer> indices,
+    List<Fid> fids,
+    double[] re,
+    double[] im,
+    double[] u,
+    DecayResult decay,
+    Quiet quiet) {
+
+  /** From the scans of a run, the receive-only one among them. */
+  static CommonShape of(List<Shot> shots, List<Scan> scans) throws NotMeasurable {
+    Quiet quiet = Quiet.of(shots, scans);
+    List<Integer> indices = new ArrayList<>();
+    List<Fid> fids = new ArrayList<>();
+    for (int i = 0; i < shots.size(); i++) {
+      if (!shots.get(i).receiveOnly()) {
+        indices.add(i);
+        fids.add(quiet.strip(scans.get(i).fid()));
+      }
+    }
+    DecayResult decay = sharedDecay(fids, quiet.sigma());
+    int n = fids.size();
+    double[] re = new double[n];
+    double[] im = new double[n];
+    double[] u = new double[n];
+    for (int j = 0; j < n; j++) {
+      Fid fid = fids.get(j);
+      MatchedProjection p =
+          MatchedProjection.onShape(List.of(fid), decay.shape(fid), quiet.sigma());
+      re[j] = p.re(0);
+      im[j] = p.im(0);
+      u[j] = p.uncertainty();
+    }
+    return new CommonShape(indices, fids, re, im, u, decay, quiet);
+  }
+
+  /** The decay of the strong scans, each turned so that it adds up. */
+  private static DecayResult sharedDecay(List<Fid> fids, double sigma) throws NotMeasurable {
+    MatchedProjection first = MatchedProjection.bySingularVector(fids, sigma);
+    double top = 0;
+    for (int j = 0; j < fids.size(); j++) {
+      top = Math.max(top, Math.abs(first.amplitude(j).value()));
+    }
+    if (top < 4 * first.uncertainty()) {
+      throw new NotMeasurable(
+          String.format(
+              java.util.Locale.ROOT,
+              "no scan stands out of the noise: the largest amplitude is %.1f of its uncertainty",
+              top / first.uncertainty()),
+          List.of(
+              "the resonance has moved away: measure the resonance rung again",
+              "the pulse does not reach the coil, or the sample is gone"));
+    }
+    Averager average = new Averager();
+    for (int j = 0; j < fids.size(); j++) {
+      double a = first.amplitude(j).value();
+      if (Math.abs(a) > 0.4 * top) {
+        average.add(fids.get(j), a > 0 ? 0 : Math.PI);
+      }
+    }
+    try {
+      return DecayFit.fit(average.mean(), DecayFit.Options.usual().withScans(average.count()));
+    } catch (NotDetermined e) {
+      throw Readings.refused("the decay that the scans share is not determined", e);
+    }
+  }
+}

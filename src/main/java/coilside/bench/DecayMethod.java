@@ -1,0 +1,176 @@
+package coilside.bench;
+
+import coilside.board.BoardException;
+import coilside.fit.DecayBound;
+import coilside.fit.DecayFit;
+import coilside.fit.DecayResult;
+import coilside.fit.NotDetermined;
+import coilside.quantity.Measured;
+import coilside.shot.Pulse;
+import coilside.shot.Receive;
+import coilside.shot.Shot;
+import coilside.shot.Wait;
+import coilside.signal.Averager;
+import coilside.signal.Fid;
+import coilside.signal.Scan;
+import java.util.List;
+import java.util.OptionalDouble;
+
+/**
+ * The T2* rung, and every averaged FID: 90-degree pulses with the four-step quadrature phase cycle,
+ * averaged until the decay time is known well enough, fitted in the time domain.
+ */
+final class DecayMethod implements Method {
+  private static final int MOST_POINTS = 8192;
+
+  /** Record length in T2*: longer adds no information, only noise (bound within 0.1 %). */
+  private static final double RECORD = 5;
+
+  private static final int CYCLE = 4;
+
+  @Override
+  public Rung rung() {
+    return Rung.T2STAR;
+  }
+
+  @Override
+  public void acquire(Acquisition a) throws BoardException, NotMeasurable {
+    double target = a.settings().t2Target();
+    Choices.Window window = window(a);
+    int wanted = CYCLE;
+    while (a.scans().size() < wanted) {
+      int left = Math.min(wanted - a.scans().size(), a.scansLeft());
+      a.plan(a.scansPlayed() + left);
+      for (int i = 0; i < left; i++) {
+        a.play(
+            shot(
+                a,
+                a.scans().size(),
+                "",
+                window.points(),
+                window.dwellSeconds(),
+                OptionalDouble.empty()));
+        a.step("T2*", a.scans().size() / (double) wanted);
+        show(a);
+      }
+      if (a.scansLeft() < CYCLE) {
+        break;
+      }
+      try {
+        DecayResult fit = DecayFit.fit(mean(a.scans()));
+        double miss = fit.t2Star().relative() / target;
+        if (miss > 1) {
+          double more = a.scans().size() * miss * miss;
+          wanted = (int) Math.min(1e6, CYCLE * Math.ceil(more / CYCLE));
+        }
+      } catch (NotDetermined e) {
+        wanted = 2 * a.scans().size();
+      }
+      if (wanted > a.scans().size() + a.scansLeft()) {
+        wanted = CYCLE * ((a.scans().size() + a.scansLeft()) / CYCLE);
+      }
+    }
+    a.note("target", target);
+  }
+
+  private static void show(Acquisition a) {
+    try {
+      a.show(Readings.decay(mean(a.scans()), a.scans(), Double.NaN).picture());
+    } catch (NotMeasurable e) {
+      a.say(e.getMessage());
+    }
+  }
+
+  /** The window that T2* advises, from a scan of its own where T2* is not known yet. */
+  private static Choices.Window window(Acquisition a) throws BoardException {
+    double t2Star = a.known().value(Rung.T2STAR, "t2_star").orElse(Double.NaN);
+    Choices.Window first = Choices.window(a.limits(), BenchShots.FIRST_SECONDS, MOST_POINTS);
+    if (Double.isNaN(t2Star)) {
+      Scan scan =
+          a.playAside(shot(a, 0, "", first.points(), first.dwellSeconds(), OptionalDouble.empty()));
+      try {
+        t2Star = DecayFit.fit(scan.fid()).t2Star().value();
+      } catch (NotDetermined e) {
+        return first;
+      }
+    }
+    double longest = 0.9 * a.limits().maxReceiveSeconds();
+    return Choices.window(a.limits(), Math.min(longest, RECORD * t2Star), MOST_POINTS);
+  }
+
+  /**
+   * Plays an averaged FID as the ladder stands: zero or empty stands for what the ladder advises.
+   */
+  static void play(
+      Acquisition a, int scans, int points, double dwell, String cycle, OptionalDouble carrier)
+      throws BoardException, NotMeasurable {
+    if (a.known().value(Rung.NUTATION, "pulse_90").isEmpty()) {
+      throw new NotMeasurable(
+          "the 90-degree pulse is not known yet, so an FID would be of an unknown flip angle",
+          List.of("climb the ladder first: coilside ready"));
+    }
+    int n = points;
+    double d = dwell;
+    if (n == 0 || d == 0) {
+      Choices.Window advised = window(a);
+      n = n == 0 ? advised.points() : n;
+      d = d == 0 ? advised.dwellSeconds() : d;
+    }
+    a.plan(a.scansPlayed() + scans);
+    for (int i = 0; i < scans; i++) {
+      a.play(shot(a, i, cycle, n, d, carrier));
+      a.step("FID", (i + 1) / (double) scans);
+      if ((i & (i + 1)) == 0) {
+        show(a);
+      }
+    }
+  }
+
+  /** Scan {@code number} of an FID: its phases follow from its place in the phase cycle. */
+  static Shot shot(
+      Acquisition a, int number, String cycle, int points, double dwell, OptionalDouble carrier) {
+    double phase = cycle.equals("none") ? 0 : number % CYCLE * Math.PI / 2;
+    Choices.Window w =
+        points > 0 && dwell > 0
+            ? new Choices.Window(points, dwell)
+            : Choices.window(a.limits(), BenchShots.FIRST_SECONDS, MOST_POINTS);
+    double f =
+        carrier.isPresent()
+            ? a.limits().carrierHertz().snap(carrier.getAsDouble())
+            : Choices.carrier(a);
+    return new Shot(
+        f,
+        Choices.gain(a),
+        Choices.rest(a, repetition(a)),
+        List.of(
+            new Pulse(Choices.pulse90(a), phase, Choices.amplitude(a)),
+            new Wait(Choices.delay(a)),
+            new Receive(w.points(), w.dwellSeconds(), phase)));
+  }
+
+  private static double repetition(Acquisition a) {
+    return a.known()
+        .value(Rung.T1, "repetition_time")
+        .orElse(GainMethod.RECOVERED * a.guesses().t1Seconds().orElse(0.3));
+  }
+
+  static Fid mean(List<Scan> scans) {
+    Averager average = new Averager();
+    scans.forEach(s -> average.add(s.fid()));
+    return average.mean();
+  }
+
+  @Override
+  public Reading read(Capture capture) throws NotMeasurable {
+    return Readings.decay(
+        mean(capture.scans()), capture.scans(), Notes.number(capture, "target", Double.NaN));
+  }
+
+  /** The uncertainty of T2* that this many scans would bring, relative. */
+  static double bound(DecayResult fit, Fid fid, double scansRatio) {
+    Measured t = fit.t2Star();
+    return DecayBound.relativeT2Star(
+            fit.snr().value(), t.value(), fid.dwellSeconds(), fid.points() * fid.dwellSeconds())
+        / Math.sqrt(scansRatio);
+  }
+}

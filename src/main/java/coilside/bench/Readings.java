@@ -1,0 +1,136 @@
+package coilside.bench;
+
+import coilside.fit.DecayFit;
+import coilside.fit.DecayResult;
+import coilside.fit.NotDetermined;
+import coilside.quantity.Measured;
+import coilside.quantity.Nucleus;
+import coilside.quantity.Unit;
+import coilside.signal.Fid;
+import coilside.signal.Fourier;
+import coilside.signal.Scan;
+import java.util.ArrayList;
+import java.util.LinkedHashMap;
+import java.util.List;
+import java.util.Locale;
+import java.util.Map;
+import java.util.Optional;
+
+/** What a fitted decay says, under the value names of the ladder. */
+final class Readings {
+  private Readings() {}
+
+  /** The values of the resonance rung. */
+  static Reading resonance(Fid fid, List<Scan> scans) throws NotMeasurable {
+    DecayResult fit = fit(fid, scans.size());
+    Measured larmor = larmor(fid, fit);
+    Map<String, Measured> values = new LinkedHashMap<>();
+    values.put("larmor_frequency", larmor);
+    values.put("field", field(larmor));
+    values.put("snr", fit.snr());
+    String caption =
+        String.format(
+            Locale.ROOT,
+            "resonance at %.6f MHz, offset %+.1f Hz",
+            larmor.value() * 1e-6,
+            fit.offsetHertz().value());
+    return new Reading(values, warnings(fit, scans), trace(Rung.RESONANCE, fid, fit, caption));
+  }
+
+  /**
+   * The values of the T2* rung.
+   *
+   * @param target wanted relative uncertainty of T2*; NaN where none is
+   */
+  static Reading decay(Fid fid, List<Scan> scans, double target) throws NotMeasurable {
+    DecayResult fit = fit(fid, scans.size());
+    Measured larmor = larmor(fid, fit);
+    Map<String, Measured> values = new LinkedHashMap<>();
+    values.put("t2_star", fit.t2Star());
+    values.put("linewidth", fit.linewidthHertz());
+    values.put("amplitude", fit.amplitude());
+    values.put("snr", fit.snr());
+    values.put("larmor_frequency", larmor);
+    values.put("field_spread", fit.fieldSpread(larmor.value()));
+    values.put("field", field(larmor));
+    List<String> warnings = warnings(fit, scans);
+    double reached = fit.t2Star().relative();
+    if (reached > target) {
+      warnings.add(
+          String.format(
+              Locale.ROOT,
+              "T2* is known to %.1f %%, not to the wanted %.1f %%: about %.0f scans would do",
+              100 * reached,
+              100 * target,
+              scans.size() * Math.pow(reached / target, 2)));
+    }
+    String caption =
+        String.format(
+            Locale.ROOT,
+            "T2* %.4g ms, linewidth %.4g Hz, SNR %.3g (%s)",
+            fit.t2Star().value() * 1e3,
+            fit.linewidthHertz().value(),
+            fit.snr().value(),
+            fit.envelope().name().toLowerCase(Locale.ROOT).replace('_', ' '));
+    return new Reading(values, warnings, trace(Rung.T2STAR, fid, fit, caption));
+  }
+
+  private static DecayResult fit(Fid fid, int scans) throws NotMeasurable {
+    try {
+      return DecayFit.fit(fid, DecayFit.Options.usual().withScans(scans));
+    } catch (NotDetermined e) {
+      throw refused("the decay is not determined", e);
+    }
+  }
+
+  /** A refusal that passes on why an estimate is not determined and what it would take. */
+  static NotMeasurable refused(String what, NotDetermined e) {
+    String scans =
+        e.scansNeeded().isPresent()
+            ? "; about " + e.scansNeeded().getAsLong() + " scans would do"
+            : "";
+    return new NotMeasurable(what + ": " + e.getMessage() + scans, List.of(e.remedy()));
+  }
+
+  static Measured larmor(Fid fid, DecayResult fit) {
+    return Measured.of(
+        fid.carrierHertz() + fit.offsetHertz().value(), fit.offsetHertz().u(), Unit.HERTZ);
+  }
+
+  /** The field that the Larmor frequency of the proton in water stands for, T. */
+  static Measured field(Measured larmor) {
+    Nucleus nucleus = Nucleus.HYDROGEN_1;
+    double field = larmor.value() / nucleus.larmorHertzPerTesla();
+    double relative =
+        Math.hypot(
+            larmor.relative(), nucleus.standardUncertainty() / nucleus.larmorHertzPerTesla());
+    return Measured.of(field, field * relative, Unit.TESLA);
+  }
+
+  private static List<String> warnings(DecayResult fit, List<Scan> scans) {
+    List<String> out = new ArrayList<>(fit.warnings());
+    int clipped = scans.stream().mapToInt(Scan::clippedSamples).sum();
+    if (clipped > 0) {
+      out.add(
+          clipped
+              + " samples clip at the digitiser, which bends amplitude and decay: measure the gain"
+              + " again");
+    }
+    int retries = scans.stream().mapToInt(Scan::retries).sum();
+    if (retries > 0) {
+      out.add(retries + " damaged answers were asked for again; none was averaged in");
+    }
+    return out;
+  }
+
+  private static Picture trace(Rung rung, Fid fid, DecayResult fit, String caption) {
+    return new Picture.Trace(
+        rung,
+        fid,
+        Optional.of(fit.model(fid)),
+        0,
+        Optional.of(Fourier.spectrum(fid)),
+        List.of(),
+        caption);
+  }
+}

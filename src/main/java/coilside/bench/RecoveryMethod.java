@@ -1,0 +1,217 @@
+package coilside.bench;
+
+import coilside.board.BoardException;
+import coilside.fit.NotDetermined;
+import coilside.fit.RecoveryFit;
+import coilside.fit.RecoveryPlan;
+import coilside.fit.RecoveryPoint;
+import coilside.quantity.Measured;
+import coilside.quantity.Unit;
+import coilside.shot.Pulse;
+import coilside.shot.Receive;
+import coilside.shot.Shot;
+import coilside.shot.Wait;
+import coilside.signal.Scan;
+import java.util.ArrayList;
+import java.util.LinkedHashMap;
+import java.util.List;
+import java.util.Locale;
+import java.util.Map;
+import java.util.Optional;
+
+/**
+ * The T1 rung: inversion recovery, or on boards that play only "pulse then receive" saturation
+ * recovery by 90-degree pulses with different rests; recovery times chosen by what they would tell.
+ */
+final class RecoveryMethod implements Method {
+  private static final double REST_IN_T1 = 3;
+  private static final double SHORTEST_T1 = 1e-3;
+
+  @Override
+  public Rung rung() {
+    return Rung.T1;
+  }
+
+  @Override
+  public void acquire(Acquisition a) throws BoardException, NotMeasurable {
+    boolean inversion = a.limits().arbitraryShots();
+    double guess = GainMethod.guessT1(a);
+    RecoveryFit.Options options = options(inversion, guess);
+    a.note("inversion", inversion ? 1 : 0);
+    a.note("guess", guess);
+    a.note("target", a.settings().t1Target());
+    RecoveryPlan plan = new RecoveryPlan(options, a.settings().t1Target(), Double.NaN, REST_IN_T1);
+    double longRest = Choices.rest(a, GainMethod.RECOVERED * guess);
+    Quiet.play(a, single(a, longRest));
+    a.play(inversion ? inversion(a, GainMethod.RECOVERED * guess, longRest) : single(a, longRest));
+    double time = (inversion ? 0.02 : 0.2) * guess;
+    double rest = longRest;
+    int fewest = 3;
+    while (a.scansLeft() > 0) {
+      a.play(
+          inversion
+              ? inversion(a, time, rest)
+              : single(a, Choices.rest(a, Math.max(0, time - BenchShots.FIRST_SECONDS))));
+      if (a.scans().size() < fewest + 1) {
+        time = 0.4 * guess;
+        continue;
+      }
+      List<RecoveryPoint> points = points(a.shots(), a.scans(), inversion);
+      RecoveryPlan.Advice advice = plan.next(points);
+      a.show(picture(points, advice.result(), new double[] {advice.recoverySeconds()}));
+      if (advice.enough()) {
+        break;
+      }
+      time = Math.max(advice.recoverySeconds(), shortest(a));
+      rest = Choices.rest(a, inversion ? advice.restSeconds() : 0);
+      advice
+          .result()
+          .ifPresent(
+              r -> a.step("T1", Math.min(0.95, a.settings().t1Target() / r.t1().relative())));
+    }
+  }
+
+  private static double shortest(Acquisition a) {
+    return 3 * Choices.pulse90(a) + a.limits().waitSeconds().min();
+  }
+
+  private static RecoveryFit.Options options(boolean inversion, double guess) {
+    return RecoveryFit.Options.of(
+        inversion ? RecoveryFit.Kind.INVERSION : RecoveryFit.Kind.SATURATION,
+        Math.min(SHORTEST_T1, guess / 10),
+        3 * guess);
+  }
+
+  private static Shot single(Acquisition a, double rest) {
+    return BenchShots.single(a, Choices.gain(a), Choices.pulse90(a), 0, rest);
+  }
+
+  /** 180 degrees, the recovery time from centre to centre, 90 degrees, receive. */
+  private static Shot inversion(Acquisition a, double recovery, double rest) {
+    double p90 = Choices.pulse90(a);
+    double p180 = Choices.pulse(a.limits(), a.known().need(Rung.NUTATION, "pulse_180"));
+    double wait = Choices.rest(a, Math.max(0, recovery - (p90 + p180) / 2));
+    Choices.Window w =
+        Choices.window(a.limits(), BenchShots.FIRST_SECONDS, BenchShots.FIRST_POINTS);
+    double amplitude = Choices.amplitude(a);
+    return new Shot(
+        Choices.carrier(a),
+        Choices.gain(a),
+        rest,
+        List.of(
+            new Pulse(p180, 0, amplitude),
+            new Wait(wait),
+            new Pulse(p90, 0, amplitude),
+            new Wait(Choices.delay(a)),
+            new Receive(w.points(), w.dwellSeconds(), 0)));
+  }
+
+  private static List<RecoveryPoint> points(List<Shot> shots, List<Scan> scans, boolean inversion)
+      throws NotMeasurable {
+    CommonShape shape = CommonShape.of(shots, scans);
+    int first = 0;
+    double phase = Math.atan2(shape.im()[first], shape.re()[first]);
+    List<RecoveryPoint> points = new ArrayList<>();
+    for (int j = 0; j < shape.indices().size(); j++) {
+      int i = shape.indices().get(j);
+      double along = shape.re()[j] * Math.cos(phase) + shape.im()[j] * Math.sin(phase);
+      double since = sinceReading(shots, scans, i);
+      if (inversion) {
+        points.add(new RecoveryPoint(recovery(shots.get(i)), along, shape.u()[j], since));
+      } else {
+        double longest = scans.get(i).restSeconds();
+        points.add(
+            new RecoveryPoint(
+                Double.isInfinite(since) ? Math.max(longest, 1e3) : since, along, shape.u()[j], 0));
+      }
+    }
+    return points;
+  }
+
+  /** From the centre of the first pulse to that of the second, s. */
+  private static double recovery(Shot shot) {
+    List<coilside.shot.Step> steps = shot.flat();
+    return steps.get(0).seconds() / 2 + steps.get(1).seconds() + steps.get(2).seconds() / 2;
+  }
+
+  /** From the last pulse before scan i to its first pulse, s; infinite for the first scan. */
+  private static double sinceReading(List<Shot> shots, List<Scan> scans, int i) {
+    double passed = scans.get(i).restSeconds();
+    for (int k = i - 1; k >= 0; k--) {
+      List<coilside.shot.Step> steps = shots.get(k).flat();
+      if (shots.get(k).receiveOnly()) {
+        passed += scans.get(k).restSeconds() + shots.get(k).playedSeconds();
+        continue;
+      }
+      for (int s = steps.size() - 1; !(steps.get(s) instanceof Pulse); s--) {
+        passed += steps.get(s).seconds();
+      }
+      return passed;
+    }
+    return Double.POSITIVE_INFINITY;
+  }
+
+  @Override
+  public Reading read(Capture capture) throws NotMeasurable {
+    boolean inversion = Notes.number(capture, "inversion") != 0;
+    double guess = Notes.number(capture, "guess");
+    List<RecoveryPoint> points = points(capture.shots(), capture.scans(), inversion);
+    RecoveryFit.Result fit;
+    try {
+      fit = RecoveryFit.fit(points, options(inversion, guess));
+    } catch (NotDetermined e) {
+      throw Readings.refused("T1 is not determined", e);
+    }
+    Map<String, Measured> values = new LinkedHashMap<>();
+    values.put("t1", fit.t1());
+    values.put(
+        "repetition_time",
+        Measured.of(
+            GainMethod.RECOVERED * fit.t1().value(),
+            GainMethod.RECOVERED * fit.t1().u(),
+            Unit.SECOND));
+    List<String> warnings = new ArrayList<>(fit.warnings());
+    double target = Notes.number(capture, "target");
+    if (fit.t1().relative() > target) {
+      warnings.add(
+          String.format(
+              Locale.ROOT,
+              "T1 is known to %.1f %%, not to the wanted %.1f %%",
+              100 * fit.t1().relative(),
+              100 * target));
+    }
+    return new Reading(values, warnings, picture(points, Optional.of(fit), new double[0]));
+  }
+
+  private static Picture picture(
+      List<RecoveryPoint> points, Optional<RecoveryFit.Result> fit, double[] next) {
+    List<RecoveryPoint> shown = points.stream().filter(p -> p.recoverySeconds() < 500).toList();
+    int n = shown.size();
+    double[] x = new double[n];
+    double[] y = new double[n];
+    double[] u = new double[n];
+    double longest = 0;
+    for (int j = 0; j < n; j++) {
+      x[j] = shown.get(j).recoverySeconds();
+      y[j] = shown.get(j).amplitude();
+      u[j] = shown.get(j).u();
+      longest = Math.max(longest, x[j]);
+    }
+    double[] fitX = new double[fit.isPresent() ? 160 : 0];
+    for (int i = 0; i < fitX.length; i++) {
+      fitX[i] = longest * 1.05 * i / (fitX.length - 1.0);
+    }
+    double[] fitY = fit.isPresent() ? fit.get().curve(fitX) : new double[0];
+    String caption =
+        fit.map(
+                f ->
+                    String.format(
+                        Locale.ROOT,
+                        "T1 %.4g ms by %s recovery",
+                        f.t1().value() * 1e3,
+                        f.kind() == RecoveryFit.Kind.INVERSION ? "inversion" : "saturation"))
+            .orElse("looking for T1");
+    return new Picture.Curve(
+        Rung.T1, "recovery time", "s", "signal", "V", x, y, u, fitX, fitY, next, caption);
+  }
+}

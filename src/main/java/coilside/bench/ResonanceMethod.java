@@ -1,0 +1,254 @@
+package coilside.bench;
+
+import coilside.board.BoardException;
+import coilside.shot.Receive;
+import coilside.shot.Shot;
+import coilside.signal.Averager;
+import coilside.signal.Detection;
+import coilside.signal.Fid;
+import coilside.signal.Scan;
+import java.util.ArrayList;
+import java.util.Comparator;
+import java.util.List;
+import java.util.Locale;
+import java.util.Optional;
+
+/**
+ * The resonance rung: a search over the range, coarse to fine, then a decay fitted on resonance.
+ *
+ * <p>Each carrier is a question of its own; the threshold is set so that the whole search raises a
+ * false alarm with the stated probability. A candidate counts only when a receive-only record at
+ * the same carrier does not show it.
+ */
+final class ResonanceMethod implements Method {
+  static final double FALSE_ALARM_PROBABILITY = 1e-4;
+
+  /** A pulse that is a useful flip for any 90-degree pulse from 6 us to 80 us. */
+  private static final double SEARCH_PULSE = 10e-6;
+
+  /** How far beside the line the carrier is set to look at it, Hz. */
+  private static final double BESIDE = 3000;
+
+  private static final double SEARCH_REST = 0.15;
+  private static final int FINAL_SCANS = 2;
+
+  /** The part of the spectral width, each side of the carrier, that a step of the search covers. */
+  private static final double COVERED = 0.3;
+
+  @Override
+  public Rung rung() {
+    return Rung.RESONANCE;
+  }
+
+  @Override
+  public void acquire(Acquisition a) throws BoardException, NotMeasurable {
+    Search search = new Search(a);
+    double found = search.find();
+    settle(a, found);
+  }
+
+  /**
+   * Looks at the line from a little beside it, clear of the receiver's DC offset, then plays the
+   * scans that count with the carrier on it and the pulse's phase alternating.
+   */
+  private static void settle(Acquisition a, double lineHertz) throws BoardException, NotMeasurable {
+    a.startAgain();
+    double beside = a.limits().carrierHertz().snap(lineHertz - BESIDE);
+    Scan scan = a.playAside(shot(a, beside, Choices.gain(a), SEARCH_PULSE, 0, SEARCH_REST));
+    Fid fid = scan.fid();
+    Detection d =
+        Detection.of(
+            fid,
+            sigma(a, fid),
+            List.of(new Detection.Excluded(0, BESIDE / 2)),
+            1,
+            FALSE_ALARM_PROBABILITY);
+    if (!d.found() || Math.abs(d.offsetHertz() - BESIDE) > BESIDE) {
+      throw new NotMeasurable(
+          String.format(
+              Locale.ROOT,
+              "a line was seen at %.6f MHz, but with the carrier moved there it was gone: %.1f sigma"
+                  + " at %.6f MHz against a threshold of %.1f",
+              lineHertz * 1e-6,
+              d.statisticSigma(),
+              (beside + d.offsetHertz()) * 1e-6,
+              d.thresholdSigma()),
+          List.of(
+              "interference that is not there all the time: look at the live noise picture",
+              "the field moves faster than the search: let the magnet settle"));
+    }
+    double carrier = a.limits().carrierHertz().snap(beside + d.offsetHertz());
+    double gain = Choices.gain(a);
+    while (scan.clippedSamples() > 0 && a.limits().gainDecibels().snap(gain - 10) < gain) {
+      gain = a.limits().gainDecibels().snap(gain - 10);
+      scan = a.playAside(shot(a, carrier, gain, SEARCH_PULSE, 0, SEARCH_REST));
+    }
+    for (int i = 0; i < FINAL_SCANS; i++) {
+      a.play(shot(a, carrier, gain, SEARCH_PULSE, i % 2 * Math.PI, SEARCH_REST));
+    }
+  }
+
+  private static Shot shot(
+      Acquisition a, double carrier, double gain, double pulse, double phase, double rest) {
+    return BenchShots.single(
+        a, carrier, gain, Choices.pulse(a.limits(), pulse), phase, Choices.rest(a, rest));
+  }
+
+  /** The noise of one sample as the noise rung found it, for this dwell time, V. */
+  static double sigma(Acquisition a, Fid fid) {
+    return a.known().need(Rung.NOISE, "noise_density") / Math.sqrt(fid.dwellSeconds());
+  }
+
+  @Override
+  public Reading read(Capture capture) throws NotMeasurable {
+    Averager average = new Averager();
+    for (int i = 0; i < capture.scans().size(); i++) {
+      average.add(capture.scans().get(i).fid(), BenchShots.firstPhase(capture.shots().get(i)));
+    }
+    Fid fid = average.mean();
+    return Readings.resonance(fid, capture.scans());
+  }
+
+  /** The coarse search. */
+  private static final class Search {
+    private final Acquisition a;
+    private final double step;
+    private final List<Double> carriers;
+    private final List<Double> seenAt = new ArrayList<>();
+    private final List<Double> seen = new ArrayList<>();
+    private final List<Double> interference = new ArrayList<>();
+    private double largest;
+    private double largestAt;
+    private double threshold;
+
+    Search(Acquisition a) {
+      this.a = a;
+      double width = 1 / Choices.window(a.limits(), BenchShots.FIRST_SECONDS, 4096).dwellSeconds();
+      this.step = Math.min(2 * COVERED * width, 0.6 / SEARCH_PULSE);
+      this.carriers = carriers();
+    }
+
+    private List<Double> carriers() {
+      double low = a.settings().searchLowHertz();
+      double high = a.settings().searchHighHertz();
+      double first =
+          Math.min(
+              high,
+              Math.max(
+                  low,
+                  a.known().value(Rung.RESONANCE, "larmor_frequency").orElse((low + high) / 2)));
+      List<Double> out = new ArrayList<>();
+      for (double c = first; c <= high + step / 2; c += step) {
+        out.add(Math.min(c, high));
+      }
+      for (double c = first - step; c >= low - step / 2; c -= step) {
+        out.add(Math.max(c, low));
+      }
+      out.sort(Comparator.comparingDouble(c -> Math.abs(c - first)));
+      return out;
+    }
+
+    double find() throws BoardException, NotMeasurable {
+      int passes = 0;
+      double pulse = SEARCH_PULSE;
+      double played = pulse;
+      a.plan(0);
+      while (a.scansLeft() >= carriers.size() + 4 || passes == 0) {
+        int averaged = passes == 0 ? 1 : 2;
+        played = pulse;
+        for (double c : carriers) {
+          Optional<Double> line = look(c, pulse, averaged);
+          if (line.isPresent()) {
+            return line.get();
+          }
+        }
+        passes++;
+        pulse *= 2.3;
+      }
+      throw Diagnosis.noResonance(a, largest, largestAt, threshold, played, interference);
+    }
+
+    private Optional<Double> look(double wanted, double pulse, int averaged)
+        throws BoardException, NotMeasurable {
+      double carrier = a.limits().carrierHertz().snap(wanted);
+      Averager average = new Averager();
+      Shot shot = shot(a, carrier, Choices.gain(a), pulse, 0, SEARCH_REST);
+      for (int i = 0; i < averaged; i++) {
+        average.add(a.play(shot).fid());
+      }
+      Fid fid = average.mean();
+      double sigma = sigma(a, fid) / Math.sqrt(averaged);
+      Detection d = detect(fid, sigma, carrier);
+      threshold = d.thresholdSigma();
+      if (d.statisticSigma() > largest) {
+        largest = d.statisticSigma();
+        largestAt = carrier + d.offsetHertz();
+      }
+      seenAt.add(carrier);
+      seen.add(d.statisticSigma());
+      picture(d);
+      if (!d.found()) {
+        return Optional.empty();
+      }
+      if (isThereWithoutPulse(shot, d)) {
+        interference.add(carrier + d.offsetHertz());
+        a.say(
+            String.format(
+                Locale.ROOT,
+                "the line at %.6f MHz stays with the transmitter off: interference, left out",
+                (carrier + d.offsetHertz()) * 1e-6));
+        Detection again = detect(fid, sigma, carrier);
+        return again.found() && !isThereWithoutPulse(shot, again)
+            ? Optional.of(carrier + again.offsetHertz())
+            : Optional.empty();
+      }
+      return Optional.of(carrier + d.offsetHertz());
+    }
+
+    private Detection detect(Fid fid, double sigma, double carrier) {
+      List<Detection.Excluded> out = new ArrayList<>();
+      out.add(new Detection.Excluded(0, 2 / (fid.points() * fid.dwellSeconds())));
+      for (double f : interference) {
+        if (Math.abs(f - carrier) < fid.widthHertz() / 2) {
+          out.add(new Detection.Excluded(f - carrier, 500));
+        }
+      }
+      return Detection.of(fid, sigma, out, carriers.size() * 2, FALSE_ALARM_PROBABILITY);
+    }
+
+    private boolean isThereWithoutPulse(Shot shot, Detection d) throws BoardException {
+      Receive receive = (Receive) shot.steps().get(shot.steps().size() - 1);
+      Shot quiet = new Shot(shot.carrierHertz(), shot.gainDecibels(), 0, List.of(receive));
+      Fid fid = a.playAside(quiet).fid();
+      Detection without = Detection.of(fid, sigma(a, fid), List.of(), 1, FALSE_ALARM_PROBABILITY);
+      return without.found()
+          && Math.abs(without.offsetHertz() - d.offsetHertz()) < 200
+          && without.statisticSigma() > 0.5 * d.statisticSigma();
+    }
+
+    private void picture(Detection d) {
+      double[] x = seenAt.stream().mapToDouble(Double::doubleValue).toArray();
+      double[] y = seen.stream().mapToDouble(Double::doubleValue).toArray();
+      a.show(
+          new Picture.Curve(
+              Rung.RESONANCE,
+              "carrier",
+              "Hz",
+              "largest peak",
+              "sigma",
+              x,
+              y,
+              new double[x.length],
+              new double[] {a.settings().searchLowHertz(), a.settings().searchHighHertz()},
+              new double[] {d.thresholdSigma(), d.thresholdSigma()},
+              new double[0],
+              String.format(
+                  Locale.ROOT,
+                  "%d of %d carriers; threshold %.1f sigma (false alarm %.0e)",
+                  x.length,
+                  carriers.size(),
+                  d.thresholdSigma(),
+                  FALSE_ALARM_PROBABILITY)));
+    }
+  }
+}

@@ -1,0 +1,167 @@
+package coilside.bench;
+
+import coilside.board.BoardException;
+import coilside.board.BoardLimits;
+import coilside.fit.NotDetermined;
+import coilside.fit.RingDownFit;
+import coilside.quantity.Measured;
+import coilside.quantity.Unit;
+import coilside.shot.Shot;
+import coilside.signal.Averager;
+import coilside.signal.Fid;
+import coilside.signal.Fourier;
+import coilside.signal.Scan;
+import java.util.ArrayList;
+import java.util.LinkedHashMap;
+import java.util.List;
+import java.util.Locale;
+import java.util.Map;
+import java.util.Optional;
+
+/**
+ * The ring-down rung: pairs of scans with the pulse's phase turned by 180 degrees and the receiver
+ * opened as early as it can be. What turns with the pulse is ring-down and signal; the signal is
+ * fitted late, drawn back and taken off.
+ */
+final class RingDownMethod implements Method {
+  private static final int PAIRS = 2;
+  private static final int POINTS = 8192;
+  private static final double DWELL = 1e-6;
+  private static final double PULSE = 20e-6;
+
+  /** Ringing below this part of the noise counts as gone. */
+  private static final double FRACTION = 0.5;
+
+  @Override
+  public Rung rung() {
+    return Rung.RINGDOWN;
+  }
+
+  @Override
+  public void acquire(Acquisition a) throws BoardException, NotMeasurable {
+    a.plan(2 * PAIRS + 1);
+    BoardLimits limits = a.limits();
+    Choices.Window window =
+        new Choices.Window(Choices.points(limits, POINTS), limits.dwellSeconds().snap(DWELL));
+    double rest = Choices.rest(a, GainMethod.RECOVERED * GainMethod.guessT1(a));
+    double earliest = limits.waitSeconds().min();
+    double pulse = Choices.pulse(limits, PULSE);
+    for (int i = 0; i < 2 * PAIRS; i++) {
+      double phase = i % 2 * Math.PI;
+      Shot shot =
+          BenchShots.single(
+              a, Choices.carrier(a), Choices.gain(a), pulse, phase, rest, earliest, window);
+      if (i == 0) {
+        Quiet.play(a, shot);
+      }
+      a.play(shot);
+    }
+    a.note("shortest_delay", earliest);
+    a.note("delay_step", limits.waitSeconds().step());
+  }
+
+  @Override
+  public Reading read(Capture capture) throws NotMeasurable {
+    Averager plus = new Averager();
+    Averager minus = new Averager();
+    int clippedUntil = 0;
+    for (int i = 0; i < capture.shots().size(); i++) {
+      Shot shot = capture.shots().get(i);
+      if (shot.receiveOnly()) {
+        continue;
+      }
+      Scan scan = capture.scans().get(i);
+      (BenchShots.firstPhase(shot) == 0 ? plus : minus).add(scan.fid());
+      clippedUntil = Math.max(clippedUntil, clippedUntil(scan));
+    }
+    double one = Quiet.of(capture.shots(), capture.scans()).sigma();
+    double sigma = one / Math.sqrt(plus.count() + minus.count());
+    Fid following = RingDownFit.separate(plus.mean(), minus.mean()).following();
+    double pulseHalf = pulseHalf(capture);
+    RingDownFit.Result fit;
+    try {
+      fit = RingDownFit.fit(following, sigma, clippedUntil, FRACTION * one / sigma);
+    } catch (NotDetermined e) {
+      throw Readings.refused("the ring-down is not determined", e);
+    }
+    double shortest = Notes.number(capture, "shortest_delay");
+    double delay = Math.max(shortest, fit.receiveDelaySeconds() - pulseHalf);
+    double step = Notes.number(capture, "delay_step");
+    if (step > 0) {
+      delay = Math.ceil(delay / step - 1e-6) * step;
+    }
+    Map<String, Measured> values = new LinkedHashMap<>();
+    values.put("ring_down_time", fit.timeConstant());
+    values.put(
+        "receive_delay",
+        fit.clearSeconds().hasUncertainty()
+            ? Measured.of(delay, fit.clearSeconds().u(), Unit.SECOND)
+            : Measured.withoutUncertainty(
+                delay, Unit.SECOND, fit.clearSeconds().whyNoUncertainty()));
+    List<String> warnings = new ArrayList<>(fit.warnings());
+    if (clippedUntil > 0) {
+      warnings.add(
+          String.format(
+              Locale.ROOT,
+              "the receiver clips for %.0f us after the pulse",
+              (following.time(clippedUntil) - pulseHalf) * 1e6));
+    }
+    String caption =
+        fit.visible()
+            ? String.format(
+                Locale.ROOT,
+                "ring-down %.3g us, receive delay %.0f us",
+                fit.timeConstant().value() * 1e6,
+                delay * 1e6)
+            : String.format(
+                Locale.ROOT, "no ring-down stands out; receive delay %.0f us", delay * 1e6);
+    int shown = Math.min(following.points(), Math.max(64, 4 * indexAt(following, delay)));
+    Fid early = following.slice(0, shown);
+    Optional<Fid> signal =
+        fit.signal() == null ? Optional.empty() : Optional.of(fit.signal().model(early));
+    Picture picture =
+        new Picture.Trace(
+            Rung.RINGDOWN,
+            early,
+            signal,
+            indexAt(early, delay),
+            Optional.of(Fourier.spectrum(following)),
+            List.of(),
+            caption);
+    return new Reading(values, warnings, picture);
+  }
+
+  private static double pulseHalf(Capture capture) {
+    return capture.shots().stream()
+        .filter(s -> !s.receiveOnly())
+        .findFirst()
+        .map(s -> NutationMethod.pulse(s).seconds() / 2)
+        .orElse(0.0);
+  }
+
+  private static int indexAt(Fid fid, double seconds) {
+    int k = (int) Math.ceil((seconds - fid.startSeconds()) / fid.dwellSeconds());
+    return Math.max(0, Math.min(fid.points() - 1, k));
+  }
+
+  /**
+   * One past the last sample of the first half that stands at the largest level, where it clips.
+   */
+  private static int clippedUntil(Scan scan) {
+    if (scan.clippedSamples() == 0) {
+      return 0;
+    }
+    Fid fid = scan.fid();
+    double top = 0;
+    for (int k = 0; k < fid.points(); k++) {
+      top = Math.max(top, Math.max(Math.abs(fid.re(k)), Math.abs(fid.im(k))));
+    }
+    int last = 0;
+    for (int k = 0; k < fid.points() / 2; k++) {
+      if (Math.max(Math.abs(fid.re(k)), Math.abs(fid.im(k))) > 0.98 * top) {
+        last = k + 1;
+      }
+    }
+    return last;
+  }
+}

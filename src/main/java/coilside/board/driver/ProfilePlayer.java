@@ -1,0 +1,513 @@
+package coilside.board.driver;
+
+import coilside.board.BoardException;
+import coilside.board.BoardException.BadAnswer;
+import coilside.board.BoardException.Silent;
+import coilside.board.BoardException.Stopped;
+import coilside.board.BoardIdentity;
+import coilside.board.ClearedShot;
+import coilside.board.ShotPlayer;
+import coilside.board.driver.Conversation.Outgoing;
+import coilside.board.link.Link;
+import coilside.board.profile.Command;
+import coilside.board.profile.CommandName;
+import coilside.board.profile.DeviceProfile;
+import coilside.board.profile.Identification;
+import coilside.board.profile.Replies;
+import coilside.board.profile.SampleBlocks;
+import coilside.board.profile.Template;
+import coilside.board.profile.ValueName;
+import coilside.board.wire.Clean;
+import coilside.board.wire.WireEvent;
+import coilside.shot.Shot;
+import coilside.signal.Scan;
+import java.time.Clock;
+import java.time.Instant;
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Locale;
+import java.util.Map;
+import java.util.Optional;
+import java.util.OptionalDouble;
+import java.util.concurrent.locks.ReentrantLock;
+import java.util.function.LongSupplier;
+
+/**
+ * The transmitting side of a board that speaks a profile over a link.
+ *
+ * <p>What the board keeps is not sent again. After any trouble the board is told to stop, the line
+ * is drained before the next shot, and everything is sent afresh.
+ */
+final class ProfilePlayer implements ShotPlayer {
+  private static final double QUIET_SECONDS = 0.05;
+  private static final double LONGEST_DRAIN_SECONDS = 5;
+  private static final double SLOWEST_NETWORK_BYTES_PER_SECOND = 100_000;
+  private static final int IDENTIFY_TRIES = 3;
+
+  private final DeviceProfile profile;
+  private final Link link;
+  private final Clock wallClock;
+  private final Conversation conversation;
+  private final ShotWriter writer;
+  private final ReentrantLock wire = new ReentrantLock();
+
+  private BoardIdentity identity;
+  private List<Outgoing> sentSettings = List.of();
+  private List<Outgoing> sentBody = List.of();
+  private boolean unsettled;
+  private boolean stopped = true;
+  private volatile boolean closed;
+  private long lastRunNanos;
+  private double lastShotSeconds = Double.NaN;
+  private byte[] lastBlock = {};
+
+  ProfilePlayer(DeviceProfile profile, Link link, LongSupplier nanoClock, Clock wallClock) {
+    this.profile = profile;
+    this.link = link;
+    this.wallClock = wallClock;
+    this.conversation = new Conversation(profile, link, nanoClock);
+    this.writer = new ShotWriter(profile, conversation);
+  }
+
+  /**
+   * Greets and recognises the board and sends the profile's set-up.
+   *
+   * @param simulated true for the simulated bench in this process, which needs no time to settle
+   */
+  void open(boolean simulated) throws BoardException {
+    wire.lock();
+    try {
+      String name = identify(simulated);
+      identity =
+          new BoardIdentity(name, profile.name(), profile.digest(), link.description(), simulated);
+      List<Outgoing> setup = new ArrayList<>();
+      for (Template template : profile.setup()) {
+        setup.add(conversation.usual(template));
+      }
+      conversation.say(setup);
+    } finally {
+      wire.unlock();
+    }
+  }
+
+  private String identify(boolean simulated) throws BoardException {
+    Identification how = profile.identification();
+    double limit = profile.replies().timeLimitSeconds();
+    String greeted = greeting(simulated, how, limit);
+    if (how.ask().isEmpty()) {
+      return greeted;
+    }
+    Outgoing question =
+        new Outgoing(conversation.encode(how.ask().get(), Map.of()), Optional.of(how.expect()));
+    BoardException last = null;
+    for (int i = 0; i < IDENTIFY_TRIES; i++) {
+      conversation.forget();
+      try {
+        return nameIn(conversation.ask(question, limit));
+      } catch (Silent | BadAnswer e) {
+        last = e;
+      }
+    }
+    throw last;
+  }
+
+  private String greeting(boolean simulated, Identification how, double limit)
+      throws BoardException {
+    boolean mustTell = how.ask().isEmpty();
+    conversation.await(mustTell ? Optional.of(how.expect()) : profile.greeting());
+    double patience = mustTell ? profile.settleSeconds() + limit : profile.settleSeconds();
+    if (simulated && !mustTell) {
+      patience = 0;
+    }
+    long end = conversation.inSeconds(patience);
+    boolean waits = mustTell || profile.greeting().isPresent();
+    while (true) {
+      Optional<WireEvent> event = conversation.next(end);
+      if (event.isEmpty()) {
+        break;
+      }
+      if (waits && event.get() instanceof WireEvent.Answer answer) {
+        return nameIn(answer.fields());
+      }
+    }
+    if (mustTell) {
+      throw new Silent(
+          String.format(
+              Locale.ROOT,
+              "the board did not greet within %.3g s; reset it, or check port, speed and line ends",
+              patience));
+    }
+    return "";
+  }
+
+  private String nameIn(Map<String, String> fields) {
+    return Clean.text(fields.getOrDefault("name", profile.name()).strip());
+  }
+
+  @Override
+  public BoardIdentity identity() {
+    return identity;
+  }
+
+  @Override
+  public Scan play(ClearedShot cleared) throws BoardException {
+    wire.lock();
+    try {
+      ready();
+      boolean done = false;
+      try {
+        Scan scan = scan(cleared.shot());
+        done = true;
+        return scan;
+      } finally {
+        if (!done) {
+          sendStop();
+        }
+      }
+    } finally {
+      wire.unlock();
+    }
+  }
+
+  private void ready() throws BoardException {
+    if (closed) {
+      throw new Stopped("the board has been closed; open it again");
+    }
+    conversation.clearStop();
+    if (unsettled) {
+      conversation.drain(QUIET_SECONDS, LONGEST_DRAIN_SECONDS);
+      unsettled = false;
+    }
+  }
+
+  private Scan scan(Shot shot) throws BoardException {
+    ScanBuilder builder = new ScanBuilder(profile, writer, conversation.encoder(), shot);
+    stopped = false;
+    conversation.say(news(shot));
+    if (writer.hostRests(shot)) {
+      conversation.pause(shot.restSeconds());
+    }
+    Outgoing run = writer.run(shot);
+    conversation.expectBlocks(builder.blockLengths());
+    conversation.await(run.answer());
+    Instant started = wallClock.instant();
+    long runNanos = conversation.now();
+    double rest = restAsItWas(shot, runNanos);
+    conversation.send(run.bytes());
+    lastRunNanos = runNanos;
+    lastShotSeconds = shot.seconds();
+    long deadline = deadline(shot, builder.blockLengths());
+    if (run.answer().isPresent()) {
+      acknowledged(run, deadline);
+    }
+    fetchAll(builder, deadline);
+    return builder.scan(started, rest);
+  }
+
+  /** What the board does not know yet. */
+  private List<Outgoing> news(Shot shot) throws BoardException {
+    List<Outgoing> settings = writer.settings(shot);
+    List<Outgoing> body = writer.body(shot);
+    List<Outgoing> out = new ArrayList<>();
+    for (int i = 0; i < settings.size(); i++) {
+      if (sentSettings.size() <= i || !same(settings.get(i), sentSettings.get(i))) {
+        out.add(settings.get(i));
+      }
+    }
+    boolean sameBody = body.size() == sentBody.size();
+    for (int i = 0; sameBody && i < body.size(); i++) {
+      sameBody = same(body.get(i), sentBody.get(i));
+    }
+    if (!sameBody) {
+      out.addAll(body);
+    }
+    sentSettings = profile.keepsShot() ? settings : List.of();
+    sentBody = profile.keepsShot() ? body : List.of();
+    return out;
+  }
+
+  private static boolean same(Outgoing a, Outgoing b) {
+    return java.util.Arrays.equals(a.bytes(), b.bytes());
+  }
+
+  /**
+   * The rest before this scan as it really was: what the board was told, and what the host let pass
+   * between the end of the last scan and now. A board whose time runs faster than the clock (a
+   * simulated one) has only the former.
+   */
+  private double restAsItWas(Shot shot, long runNanos) {
+    if (Double.isNaN(lastShotSeconds)) {
+      return shot.restSeconds();
+    }
+    double since = (runNanos - lastRunNanos) * 1e-9 - lastShotSeconds;
+    double told = writer.hostRests(shot) ? 0 : shot.restSeconds();
+    return Math.max(shot.restSeconds(), told + Math.max(0, since));
+  }
+
+  private long deadline(Shot shot, int[] lengths) {
+    long bytes = java.util.Arrays.stream(lengths).asLongStream().sum() + 256L * lengths.length;
+    double perSecond =
+        profile.serial().map(s -> s.speedBaud() / 10.0).orElse(SLOWEST_NETWORK_BYTES_PER_SECOND);
+    double wireSeconds = 1.5 * bytes / Math.min(perSecond, SLOWEST_NETWORK_BYTES_PER_SECOND);
+    return conversation.inSeconds(
+        shot.seconds() + wireSeconds + profile.replies().timeLimitSeconds());
+  }
+
+  private void acknowledged(Outgoing run, long deadline) throws BoardException {
+    while (true) {
+      WireEvent event =
+          conversation
+              .next(deadline)
+              .orElseThrow(
+                  () ->
+                      new Silent(
+                          "the board did not answer '" + run.text() + "' in time; it may hang"));
+      if (event instanceof WireEvent.Answer) {
+        conversation.await(Optional.empty());
+        return;
+      }
+      trouble(event, run.text());
+    }
+  }
+
+  private void fetchAll(ScanBuilder builder, long deadline) throws BoardException {
+    Optional<Command> fetch = profile.command(CommandName.FETCH);
+    boolean each =
+        fetch.map(c -> c.template().mentions(ValueName.WINDOW)).orElse(false)
+            && profile.blocks().per() == SampleBlocks.Per.WINDOW;
+    int blocks = builder.blockLengths().length;
+    long heard = conversation.bytesHeard();
+    for (int i = 0; i < blocks; i++) {
+      if (fetch.isPresent() && (each || i == 0)) {
+        conversation.send(
+            writer.named(CommandName.FETCH, Map.of(ValueName.WINDOW, (double) i)).bytes());
+      }
+      WireEvent.SampleBlock block = block(i, blocks, deadline, heard);
+      lastBlock = block.bytes();
+      builder.block(block.index(), block.bytes());
+    }
+    while (profile.blocks().endMark().isPresent()) {
+      WireEvent event =
+          conversation
+              .next(deadline)
+              .orElseThrow(() -> new BadAnswer("the end mark after the samples did not come."));
+      if (event instanceof WireEvent.EndMark) {
+        break;
+      }
+      trouble(event, "the samples");
+    }
+  }
+
+  private WireEvent.SampleBlock block(int index, int blocks, long deadline, long heardBefore)
+      throws BoardException {
+    while (true) {
+      Optional<WireEvent> event = conversation.next(deadline);
+      if (event.isEmpty()) {
+        throw missing(index, blocks, heardBefore);
+      }
+      if (event.get() instanceof WireEvent.SampleBlock block) {
+        return block;
+      }
+      trouble(event.get(), "the shot");
+    }
+  }
+
+  private static void trouble(WireEvent event, String what) throws BoardException {
+    if (event instanceof WireEvent.ErrorReply error) {
+      throw Conversation.refused("'" + what + "'", List.of(error));
+    }
+    if (event instanceof WireEvent.Damaged damaged) {
+      throw new BadAnswer("the samples came back damaged: " + damaged.why() + ".");
+    }
+    if (event instanceof WireEvent.EndMark) {
+      throw new BadAnswer("the end mark came before all samples had come.");
+    }
+  }
+
+  private BoardException missing(int index, int blocks, long heardBefore) throws BoardException {
+    if (conversation.bytesHeard() > heardBefore) {
+      String heard = conversation.lastHeard();
+      return new BadAnswer(
+          "sample block "
+              + (index + 1)
+              + " of "
+              + blocks
+              + " did not come whole"
+              + (heard.isEmpty() ? "." : "; the board said '" + heard + "'."));
+    }
+    if (profile.replies().mode() == Replies.Mode.ASKED) {
+      conversation.forget();
+      List<WireEvent.ErrorReply> errors = conversation.errors();
+      if (!errors.isEmpty()) {
+        return Conversation.refused("the shot", errors);
+      }
+    }
+    return new Silent(
+        "the board sent no samples in the time of the shot and its answer; check that it is still"
+            + " powered and has not been reset");
+  }
+
+  /** The bytes of the sample block that came last; empty before the first. Do not change. */
+  byte[] lastBlock() {
+    return lastBlock;
+  }
+
+  /** Sends commands that describe, but never run, a shot; whatever the board knew is sent again. */
+  void describe(List<Outgoing> commands) throws BoardException {
+    wire.lock();
+    try {
+      ready();
+      sentSettings = List.of();
+      sentBody = List.of();
+      try {
+        conversation.say(commands);
+      } finally {
+        unsettled = true;
+      }
+    } finally {
+      wire.unlock();
+    }
+  }
+
+  /** Asks once more who is there. */
+  String identifyAgain() throws BoardException {
+    wire.lock();
+    try {
+      ready();
+      Outgoing question =
+          new Outgoing(
+              conversation.encode(profile.identification().ask().orElseThrow(), Map.of()),
+              Optional.of(profile.identification().expect()));
+      String name = nameIn(conversation.ask(question, profile.replies().timeLimitSeconds()));
+      conversation.await(Optional.empty());
+      return name;
+    } finally {
+      wire.unlock();
+    }
+  }
+
+  /** Sends bytes that mean nothing; what comes back is thrown away before the next command. */
+  void babble(byte[] bytes) throws BoardException {
+    wire.lock();
+    try {
+      ready();
+      conversation.send(bytes);
+      unsettled = true;
+    } finally {
+      wire.unlock();
+    }
+  }
+
+  /** Lets a board of mode "asked" tell its errors until it has none left. */
+  void clearErrors() throws BoardException {
+    wire.lock();
+    try {
+      ready();
+      conversation.errors();
+    } finally {
+      wire.unlock();
+    }
+  }
+
+  ShotWriter writer() {
+    return writer;
+  }
+
+  @Override
+  public OptionalDouble temperature() throws BoardException {
+    Optional<Command> command = profile.command(CommandName.TEMPERATURE);
+    if (command.isEmpty()) {
+      return OptionalDouble.empty();
+    }
+    wire.lock();
+    try {
+      ready();
+      Map<String, String> fields =
+          conversation.ask(
+              writer.named(CommandName.TEMPERATURE, Map.of()),
+              profile.replies().timeLimitSeconds());
+      conversation.await(Optional.empty());
+      String text = fields.getOrDefault("celsius", "");
+      try {
+        double celsius = Double.parseDouble(text);
+        if (celsius > -100 && celsius < 200) {
+          return OptionalDouble.of(celsius);
+        }
+      } catch (NumberFormatException e) {
+        // Falls through: said below, like a temperature out of all reason.
+      }
+      throw new BadAnswer("the board says its temperature is '" + Clean.text(text) + "' degC");
+    } finally {
+      wire.unlock();
+    }
+  }
+
+  @Override
+  public void stop() {
+    conversation.requestStop();
+    if (wire.tryLock()) {
+      try {
+        sendStop();
+      } finally {
+        wire.unlock();
+      }
+    }
+  }
+
+  /** Only with the wire held. Whatever the board knew is sent again afterwards. */
+  private void sendStop() {
+    if (stopped) {
+      return;
+    }
+    stopped = true;
+    unsettled = true;
+    sentSettings = List.of();
+    sentBody = List.of();
+    try {
+      if (profile.command(CommandName.STOP).isPresent()) {
+        conversation.send(writer.named(CommandName.STOP, Map.of()).bytes());
+      }
+    } catch (BoardException e) {
+      closeQuietly();
+    }
+  }
+
+  private void closeQuietly() {
+    closed = true;
+    link.close();
+  }
+
+  @Override
+  public void close() {
+    conversation.requestStop();
+    wire.lock();
+    try {
+      if (closed) {
+        return;
+      }
+      sendStop();
+      closed = true;
+      conversation.clearStop();
+      farewell();
+    } finally {
+      link.close();
+      wire.unlock();
+    }
+  }
+
+  /** Best effort: the answers are waited for, since some boards drop what comes while busy. */
+  private void farewell() {
+    try {
+      if (unsettled && !profile.farewell().isEmpty()) {
+        conversation.drain(QUIET_SECONDS, 1);
+      }
+      List<Outgoing> commands = new ArrayList<>();
+      for (Template template : profile.farewell()) {
+        commands.add(conversation.usual(template));
+      }
+      conversation.say(commands);
+    } catch (BoardException e) {
+      // The board is gone or does not answer; the link is let go in any case.
+    }
+  }
+}

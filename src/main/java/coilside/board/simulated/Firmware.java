@@ -1,0 +1,437 @@
+package coilside.board.simulated;
+
+import coilside.board.profile.Command;
+import coilside.board.profile.CommandName;
+import coilside.board.profile.DeviceProfile;
+import coilside.board.profile.Expectation;
+import coilside.board.profile.Framing;
+import coilside.board.profile.Replies;
+import coilside.board.profile.Template;
+import coilside.board.profile.ValueName;
+import coilside.board.profile.WireValue;
+import coilside.board.simulated.FirmwareReceiver.Counts;
+import coilside.shot.Shot;
+import java.nio.charset.StandardCharsets;
+import java.util.ArrayDeque;
+import java.util.Deque;
+import java.util.HashMap;
+import java.util.List;
+import java.util.Map;
+import java.util.Optional;
+
+/**
+ * A simulated board's firmware: it speaks a device profile from the board's side, byte for byte.
+ * Bytes go in, bytes come out; it has no thread and no clock of its own.
+ *
+ * <p>Written apart from the host's side: it shares the profile's values with it and nothing else,
+ * so that no common mistake can hide. Unpaced it plays each scan as soon as it is asked to; paced,
+ * answers come when they would on a real board. For use by one thread.
+ */
+public final class Firmware {
+  private static final int LONGEST_ERROR_QUEUE = 16;
+  private static final double MOST_SCANS = 1e6;
+
+  private final DeviceProfile profile;
+  private final FirmwareReceiver receiver;
+  private final boolean paced;
+  private final FirmwareDialect dialect;
+  private final FirmwareBlocks blocks;
+  private final FirmwareShot shot;
+  private final Map<String, WireValue> values = new HashMap<>();
+  private final Deque<byte[]> outgoing = new ArrayDeque<>();
+  private final Deque<FirmwareRefusal> errors = new ArrayDeque<>();
+  private final Deque<Integer> fetches = new ArrayDeque<>();
+  private FirmwareFaults faults;
+  private FirmwareRun run;
+  private long idleSinceNanos = Long.MIN_VALUE;
+  private int commands;
+  private int answers;
+  private int scansPlayed;
+
+  /**
+   * @param profile how it speaks
+   * @param receiver what it plays shots on
+   * @param paced true when answers come as late as a real board's
+   * @param faults what goes wrong
+   * @throws IllegalArgumentException the profile does not say how its board's answers look
+   */
+  public Firmware(
+      DeviceProfile profile, FirmwareReceiver receiver, boolean paced, FirmwareFaults faults) {
+    this.profile = profile;
+    this.receiver = receiver;
+    this.paced = paced;
+    this.faults = faults;
+    this.dialect =
+        profile.framing() instanceof Framing.Lines lines
+            ? new FirmwareLines(lines)
+            : new FirmwareFrames((Framing.Cobs) profile.framing());
+    this.blocks = new FirmwareBlocks(profile, dialect);
+    this.shot = new FirmwareShot(profile);
+    for (Map.Entry<ValueName, WireValue> value : profile.values().entrySet()) {
+      values.put(value.getKey().word(), value.getValue());
+    }
+    identity();
+    profile.replies().success().ifPresent(e -> dialect.say(e, Map.of()));
+    blocks.endMark();
+  }
+
+  /** From now on these things go wrong. */
+  public void setFaults(FirmwareFaults changed) {
+    faults = changed;
+  }
+
+  /** Somebody has connected: the board starts anew and greets. */
+  public void connect() {
+    restart();
+  }
+
+  /** Nobody is connected any more: the board stops. */
+  public void disconnect() {
+    halt();
+    dialect.forget();
+    outgoing.clear();
+  }
+
+  private void restart() {
+    halt();
+    dialect.forget();
+    outgoing.clear();
+    errors.clear();
+    shot.reset();
+    profile
+        .greeting()
+        .ifPresent(g -> outgoing.add(dialect.wrap(dialect.say(g, Map.of("name", name())))));
+  }
+
+  private void halt() {
+    run = null;
+    fetches.clear();
+  }
+
+  private String name() {
+    return faults.wrongName().isEmpty() ? profile.name() : faults.wrongName();
+  }
+
+  private String identity() {
+    Expectation expect = profile.identification().expect();
+    String own = dialect.say(expect, Map.of("name", name()));
+    boolean fixed = !faults.wrongName().isEmpty() && !own.contains(faults.wrongName());
+    return fixed ? faults.wrongName() : own;
+  }
+
+  /**
+   * Takes bytes from the host.
+   *
+   * @param nowNanos a steady clock, ns
+   */
+  public void hear(byte[] bytes, int offset, int length, long nowNanos) {
+    dialect.hear(bytes, offset, length);
+    boolean more = true;
+    while (more) {
+      try {
+        Optional<String> message = dialect.nextMessage();
+        more = message.isPresent();
+        if (more) {
+          obey(message.get(), nowNanos);
+        }
+      } catch (FirmwareRefusal e) {
+        refuse(e);
+      }
+    }
+  }
+
+  /**
+   * What the board says next.
+   *
+   * @param nowNanos the same clock
+   * @return the bytes; empty when there is nothing to say yet
+   */
+  public Optional<byte[]> say(long nowNanos) {
+    while (outgoing.isEmpty() && run != null && mayPlay() && dueNanos(nowNanos) <= nowNanos) {
+      playOne(nowNanos);
+    }
+    return Optional.ofNullable(outgoing.poll());
+  }
+
+  /** When the board will have something to say if it hears nothing; Long.MAX_VALUE for never. */
+  public long nextNanos(long nowNanos) {
+    if (!outgoing.isEmpty()) {
+      return nowNanos;
+    }
+    return run != null && mayPlay() ? dueNanos(nowNanos) : Long.MAX_VALUE;
+  }
+
+  private long dueNanos(long nowNanos) {
+    return paced ? run.scanEndNanos() : nowNanos;
+  }
+
+  /** A board that is asked for its samples keeps one scan until all of it was fetched. */
+  private boolean mayPlay() {
+    return !run.allPlayed() && (!fetching() || run.windows().isEmpty() || run.fetchedAll());
+  }
+
+  private boolean fetching() {
+    return profile.command(CommandName.FETCH).isPresent();
+  }
+
+  private void obey(String message, long nowNanos) throws FirmwareRefusal {
+    commands++;
+    if (faults.silentAfterCommands() > 0 && commands > faults.silentAfterCommands()) {
+      return;
+    }
+    if (profile.framing() instanceof Framing.Lines lines && lines.echo()) {
+      outgoing.add(dialect.wrap(message));
+    }
+    Replies replies = profile.replies();
+    if (replies.question().isPresent() && matches(replies.question().get(), message)) {
+      answerQuestion();
+    } else if (profile.identification().ask().filter(t -> matches(t, message)).isPresent()) {
+      answer(identity());
+    } else if (!command(message, nowNanos)) {
+      settingUp(message);
+    }
+  }
+
+  private boolean matches(Template template, String message) {
+    try {
+      return dialect.understand(template, message, values).isPresent();
+    } catch (FirmwareRefusal e) {
+      return false;
+    }
+  }
+
+  private boolean command(String message, long nowNanos) throws FirmwareRefusal {
+    for (CommandName name : CommandName.values()) {
+      Optional<Command> command = profile.command(name);
+      if (command.isPresent()) {
+        Optional<Map<String, Double>> told = understand(name, command.get(), message);
+        if (told.isPresent()) {
+          carryOut(name, command.get(), told.get(), nowNanos);
+          return true;
+        }
+      }
+    }
+    return false;
+  }
+
+  private Optional<Map<String, Double>> understand(
+      CommandName name, Command command, String message) throws FirmwareRefusal {
+    try {
+      return dialect.understand(command.template(), message, values);
+    } catch (FirmwareRefusal e) {
+      if (builds(name)) {
+        shot.spoil();
+      }
+      throw e;
+    }
+  }
+
+  private static boolean builds(CommandName name) {
+    return switch (name) {
+      case CARRIER, GAIN, BEGIN, PULSE, WAIT, RECEIVE, REPEAT, END_REPEAT, END -> true;
+      default -> false;
+    };
+  }
+
+  private void carryOut(CommandName name, Command command, Map<String, Double> told, long nowNanos)
+      throws FirmwareRefusal {
+    switch (name) {
+      case RUN -> begin(shot.run(told), told.getOrDefault("scans", 1.0), command, nowNanos);
+      case PULSE_AND_RECEIVE -> begin(shot.fixed(told, true), 1, command, nowNanos);
+      case RECEIVE_ONLY -> begin(shot.fixed(told, false), 1, command, nowNanos);
+      case FETCH -> fetch(told.getOrDefault("window", -1.0).intValue());
+      case STOP -> {
+        halt();
+        idleSinceNanos = nowNanos;
+        outgoing.clear();
+        confirm(command);
+      }
+      case TEMPERATURE ->
+          answer(
+              dialect.say(
+                  command.answer().orElseThrow(),
+                  Map.of("celsius", receiver.temperatureCelsius())));
+      default -> {
+        refuseWhileRunning();
+        build(name, told);
+        confirm(command);
+      }
+    }
+  }
+
+  private void build(CommandName name, Map<String, Double> told) throws FirmwareRefusal {
+    try {
+      shot.tell(name, told);
+    } catch (FirmwareRefusal e) {
+      shot.spoil();
+      throw e;
+    }
+  }
+
+  private void refuseWhileRunning() throws FirmwareRefusal {
+    if (run != null && !run.allPlayed()) {
+      throw FirmwareRefusal.conflict("a run is in hand");
+    }
+  }
+
+  private void begin(Shot whole, double scans, Command command, long nowNanos)
+      throws FirmwareRefusal {
+    refuseWhileRunning();
+    if (scans < 1 || scans > MOST_SCANS || scans != Math.rint(scans)) {
+      throw FirmwareRefusal.range("scans " + scans + " outside 1.." + MOST_SCANS);
+    }
+    if (paced && idleSinceNanos != Long.MIN_VALUE) {
+      receiver.idle(Math.max(0, nowNanos - idleSinceNanos) * 1e-9);
+    }
+    fetches.clear();
+    run = new FirmwareRun(whole, (long) scans, nowNanos);
+    confirm(command);
+  }
+
+  private void playOne(long nowNanos) {
+    List<Counts> taken = receiver.play(run.shot());
+    run.played(taken);
+    scansPlayed++;
+    if (run.allPlayed()) {
+      idleSinceNanos = paced ? run.scanEndNanos() : nowNanos;
+    }
+    if (faults.restartAfterScans() > 0 && scansPlayed == faults.restartAfterScans()) {
+      restart();
+    } else if (fetching()) {
+      deliverFetched();
+    } else {
+      deliver(taken);
+    }
+  }
+
+  private void deliver(List<Counts> taken) {
+    if (blocks.perWindow()) {
+      for (int w = 0; w < taken.size(); w++) {
+        outgoing.add(blocks.window(taken.get(w), w, faults));
+      }
+    } else {
+      outgoing.add(blocks.scan(taken, faults));
+    }
+    tellEnd();
+  }
+
+  private void tellEnd() {
+    byte[] mark = blocks.endMark();
+    if (mark.length > 0) {
+      outgoing.add(mark);
+    }
+  }
+
+  private void fetch(int window) throws FirmwareRefusal {
+    if (run == null) {
+      answerWithError(FirmwareRefusal.conflict("there are no samples to fetch"));
+      return;
+    }
+    fetches.add(window);
+    if (!run.windows().isEmpty() && (run.allPlayed() || !run.fetchedAll())) {
+      deliverFetched();
+    }
+  }
+
+  private void deliverFetched() {
+    while (!fetches.isEmpty()) {
+      int window = fetches.remove();
+      List<Counts> taken = run.windows();
+      if (window >= taken.size()) {
+        answerWithError(
+            FirmwareRefusal.range("window " + window + " outside 0.." + (taken.size() - 1)));
+      } else if (window >= 0) {
+        outgoing.add(blocks.window(taken.get(window), window, faults));
+        run.fetched(window);
+        if (run.fetchedAll()) {
+          tellEnd();
+        }
+      } else {
+        run.fetched(taken.size());
+        deliver(taken);
+      }
+    }
+  }
+
+  private void settingUp(String message) throws FirmwareRefusal {
+    for (List<Template> known : List.of(profile.setup(), profile.farewell())) {
+      for (Template template : known) {
+        if (matches(template, message)) {
+          if (message.equalsIgnoreCase("*CLS")) {
+            errors.clear();
+          } else if (message.equalsIgnoreCase("*RST")) {
+            halt();
+            shot.reset();
+          }
+          confirm(new Command(template, Optional.empty(), false));
+          return;
+        }
+      }
+    }
+    String shown = message.length() > 40 ? message.substring(0, 40) : message;
+    throw FirmwareRefusal.undefined(shown.replaceAll("[^\\x20-\\x7e]|\"", "."));
+  }
+
+  private void confirm(Command command) {
+    if (command.silent()) {
+      return;
+    }
+    if (command.answer().isPresent()) {
+      answer(dialect.say(command.answer().get(), Map.of()));
+    } else if (profile.replies().mode() == Replies.Mode.EACH) {
+      profile.replies().success().ifPresent(e -> answer(dialect.say(e, Map.of())));
+    }
+  }
+
+  private void answerQuestion() {
+    FirmwareRefusal first = errors.poll();
+    if (first != null) {
+      sayError(first);
+    } else {
+      profile.replies().success().ifPresent(e -> answer(dialect.say(e, Map.of())));
+    }
+  }
+
+  private void refuse(FirmwareRefusal e) {
+    if (profile.replies().mode() != Replies.Mode.ASKED) {
+      sayError(e);
+    } else if (errors.size() < LONGEST_ERROR_QUEUE) {
+      errors.add(e);
+    }
+  }
+
+  /** In place of an answer that cannot be given. */
+  private void answerWithError(FirmwareRefusal otherwise) {
+    FirmwareRefusal first = errors.poll();
+    sayError(first == null ? otherwise : first);
+  }
+
+  private void sayError(FirmwareRefusal e) {
+    if (profile.replies().error().isEmpty()) {
+      return;
+    }
+    Expectation error = profile.replies().error().get();
+    String text = e.getMessage().length() > 200 ? e.getMessage().substring(0, 200) : e.getMessage();
+    String line = dialect.say(error, Map.of("code", e.code(), "text", text));
+    boolean fits =
+        error instanceof Expectation.LinePattern p && p.pattern().match(line).isPresent();
+    answer(fits ? line : dialect.say(error, Map.of("code", Math.abs(e.code()), "text", text)));
+  }
+
+  private void answer(String message) {
+    answers++;
+    if (faults.rubbishBeforeOneAnswerIn() > 0 && answers % faults.rubbishBeforeOneAnswerIn() == 0) {
+      outgoing.add(rubbish());
+    }
+    if (!faults.remark().isEmpty() && answers == faults.remarkBeforeAnswer()) {
+      outgoing.add(dialect.wrap(faults.remark()));
+    }
+    outgoing.add(dialect.wrap(message));
+  }
+
+  private byte[] rubbish() {
+    return profile.framing() instanceof Framing.Lines
+        ? dialect.wrap("@\u00ff~#9\u001b[2J??")
+        : "\u0007\u0001\u00ff#rubbish\u0000".getBytes(StandardCharsets.ISO_8859_1);
+  }
+}

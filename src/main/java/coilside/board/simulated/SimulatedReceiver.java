@@ -1,0 +1,288 @@
+package coilside.board.simulated;
+
+import coilside.board.profile.SampleFormat.RealSampling;
+import coilside.board.simulated.FirmwareReceiver.Counts;
+import coilside.board.simulated.Scenario.Interference;
+import coilside.shot.Receive;
+import java.util.Arrays;
+import java.util.SplittableRandom;
+
+/**
+ * From the coil's terminals to the ADC: filter, noise, lines, ringing, gain and imperfections.
+ *
+ * <p>The receive filter is flat to 0.4 of the sampling rate each side of the carrier (0.2 for real
+ * samples) and closed from 0.5 (0.25): what lies beyond is not folded back.
+ */
+final class SimulatedReceiver {
+  private static final int CHUNK = 16384;
+  private static final double FLAT = 0.4;
+  private static final double CLOSED = 0.5;
+
+  private final Scenario scenario;
+  private final SimulatedDigitiser digitiser;
+  private final SimulatedMagnet magnet;
+  private final SimulatedSpins spins;
+  private final SplittableRandom random;
+  private final double[] linePhase;
+  private final SimulatedLineSum sum = new SimulatedLineSum();
+  private final double[] cRe;
+  private final double[] cIm;
+  private final double[] step;
+
+  SimulatedReceiver(
+      Scenario scenario,
+      SimulatedDigitiser digitiser,
+      SimulatedMagnet magnet,
+      SimulatedSpins spins,
+      SplittableRandom random) {
+    this.scenario = scenario;
+    this.digitiser = digitiser;
+    this.magnet = magnet;
+    this.spins = spins;
+    this.random = random;
+    this.linePhase = new double[scenario.interference().size()];
+    for (int i = 0; i < linePhase.length; i++) {
+      linePhase[i] = 2 * Math.PI * random.nextDouble();
+    }
+    cRe = new double[spins.size()];
+    cIm = new double[spins.size()];
+    step = new double[spins.size()];
+  }
+
+  /** What the filter lets through of a frequency, for complex samples at this dwell time. */
+  static double filter(double offsetHertz, double dwellSeconds) {
+    double x = Math.abs(offsetHertz) * dwellSeconds;
+    if (x <= FLAT) {
+      return 1;
+    }
+    if (x >= CLOSED) {
+      return 0;
+    }
+    double c = Math.cos(Math.PI / 2 * (x - FLAT) / (CLOSED - FLAT));
+    return c * c;
+  }
+
+  Counts window(
+      Receive receive, double carrierHertz, double gainDecibels, double ringRe, double ringIm) {
+    int n = receive.points();
+    double dwell = receive.dwellSeconds();
+    double width = digitiser.real().isPresent() ? 2 * dwell : dwell;
+    double start = -digitiser.filterDelaySamples() * dwell;
+    double[] re = new double[n];
+    double[] im = new double[n];
+    addSpins(re, im, carrierHertz, dwell, width, start);
+    addLines(re, im, carrierHertz, dwell, width, start);
+    addRinging(re, im, carrierHertz, dwell, width, start, ringRe, ringIm);
+    turn(re, im, -receive.phaseRadians());
+    spoil(re, im);
+    double gain = Math.pow(10, gainDecibels / 20);
+    return digitiser.real().isPresent()
+        ? real(re, im, digitiser.real().get(), carrierHertz, gain)
+        : complex(re, im, dwell, gain);
+  }
+
+  private void addSpins(
+      double[] re, double[] im, double carrierHertz, double dwell, double width, double start) {
+    int n = re.length;
+    double offset = magnet.offsetHertz(carrierHertz, n * dwell);
+    double volts = scenario.sample().signalVolts();
+    for (int j = 0; j < cRe.length; j++) {
+      double f = offset + spins.offsetHertz(j);
+      double pass = volts * filter(f, width);
+      if (pass == 0) {
+        cRe[j] = 0;
+        cIm[j] = 0;
+        continue;
+      }
+      SimulatedCoilResponse coil = SimulatedCoilResponse.at(scenario.coil(), carrierHertz + f);
+      double x = pass * spins.transverseX(j);
+      double y = pass * spins.transverseY(j);
+      cRe[j] = x * coil.re() - y * coil.im();
+      cIm[j] = x * coil.im() + y * coil.re();
+      double turns = spins.offsetHertz(j) * dwell;
+      step[j] = 2 * Math.PI * (turns - Math.rint(turns));
+    }
+    if (start != 0) {
+      shift(start / dwell);
+    }
+    double[] a = new double[Math.min(n, CHUNK)];
+    double[] b = new double[a.length];
+    for (int at = 0; at < n; at += CHUNK) {
+      int count = Math.min(CHUNK, n - at);
+      for (int c = 0; c < spins.components(); c++) {
+        Arrays.fill(a, 0);
+        Arrays.fill(b, 0);
+        sum.add(cRe, cIm, step, spins.first(c), spins.first(c + 1), a, b, 0, count);
+        double decay = Math.exp(-dwell / spins.t2Seconds(c));
+        double left = Math.exp(-(start + at * dwell) / spins.t2Seconds(c));
+        for (int k = 0; k < count; k++) {
+          re[at + k] += left * a[k];
+          im[at + k] += left * b[k];
+          left *= decay;
+        }
+      }
+      if (at + CHUNK < n) {
+        shift(CHUNK);
+      }
+    }
+    carry(re, im, offset, dwell, start);
+  }
+
+  private void shift(double samples) {
+    for (int j = 0; j < cRe.length; j++) {
+      double c = Math.cos(step[j] * samples);
+      double s = Math.sin(step[j] * samples);
+      double x = cRe[j] * c - cIm[j] * s;
+      cIm[j] = cRe[j] * s + cIm[j] * c;
+      cRe[j] = x;
+    }
+  }
+
+  /** From the magnet's frame to the carrier's, mains modulation and cable phase included. */
+  private void carry(double[] re, double[] im, double offset, double dwell, double start) {
+    double phase = scenario.sample().phaseRadians();
+    double turns = magnet.turns() + offset * start;
+    boolean modulated = magnet.modulated();
+    double stepRe = Math.cos(2 * Math.PI * offset * dwell);
+    double stepIm = Math.sin(2 * Math.PI * offset * dwell);
+    double c = 1;
+    double s = 0;
+    for (int k = 0; k < re.length; k++) {
+      if (modulated || k % 64 == 0) {
+        double now = turns + offset * dwell * k;
+        now += magnet.mainsTurns(start + k * dwell);
+        double angle = phase + 2 * Math.PI * (now - Math.rint(now));
+        c = Math.cos(angle);
+        s = Math.sin(angle);
+      }
+      double x = re[k] * c - im[k] * s;
+      im[k] = re[k] * s + im[k] * c;
+      re[k] = x;
+      double t = c * stepRe - s * stepIm;
+      s = c * stepIm + s * stepRe;
+      c = t;
+    }
+  }
+
+  private void addLines(
+      double[] re, double[] im, double carrierHertz, double dwell, double width, double start) {
+    for (int i = 0; i < linePhase.length; i++) {
+      Interference line = scenario.interference().get(i);
+      double f = line.hertz() - carrierHertz;
+      double amplitude = line.volts() * filter(f, width);
+      if (amplitude == 0) {
+        continue;
+      }
+      double turns = f * (magnet.seconds() + start);
+      double angle = linePhase[i] + 2 * Math.PI * (turns - Math.rint(turns));
+      addTone(re, im, amplitude * Math.cos(angle), amplitude * Math.sin(angle), f * dwell, 1);
+    }
+  }
+
+  private void addRinging(
+      double[] re,
+      double[] im,
+      double carrierHertz,
+      double dwell,
+      double width,
+      double start,
+      double ringRe,
+      double ringIm) {
+    double f = scenario.coil().tunedHertz() - carrierHertz;
+    double pass = filter(f, width);
+    if (pass == 0 || Math.hypot(ringRe, ringIm) < 1e-3 * scenario.receiver().noiseDensity()) {
+      return;
+    }
+    double tau = scenario.coil().ringSeconds();
+    double grown = pass * Math.exp(-start / tau);
+    double angle = 2 * Math.PI * f * start;
+    double c = grown * Math.cos(angle);
+    double s = grown * Math.sin(angle);
+    addTone(
+        re,
+        im,
+        ringRe * c - ringIm * s,
+        ringRe * s + ringIm * c,
+        f * dwell,
+        Math.exp(-dwell / tau));
+  }
+
+  private static void addTone(
+      double[] re, double[] im, double aRe, double aIm, double turnsEach, double decay) {
+    double c = decay * Math.cos(2 * Math.PI * turnsEach);
+    double s = decay * Math.sin(2 * Math.PI * turnsEach);
+    double a = aRe;
+    double b = aIm;
+    double gone = 1e-14 * Math.hypot(aRe, aIm);
+    for (int k = 0; k < re.length; k++) {
+      re[k] += a;
+      im[k] += b;
+      double t = a * c - b * s;
+      b = a * s + b * c;
+      a = t;
+      if (decay < 1 && Math.abs(a) + Math.abs(b) < gone) {
+        return;
+      }
+    }
+  }
+
+  private static void turn(double[] re, double[] im, double radians) {
+    if (radians == 0) {
+      return;
+    }
+    double c = Math.cos(radians);
+    double s = Math.sin(radians);
+    for (int k = 0; k < re.length; k++) {
+      double x = re[k] * c - im[k] * s;
+      im[k] = re[k] * s + im[k] * c;
+      re[k] = x;
+    }
+  }
+
+  /** The filter fills during the first samples. */
+  private void spoil(double[] re, double[] im) {
+    int lost = Math.min(digitiser.lostSamples(), re.length);
+    for (int k = 0; k < lost; k++) {
+      double s = Math.sin(Math.PI / 2 * k / lost);
+      re[k] *= s * s;
+      im[k] *= s * s;
+    }
+  }
+
+  private Counts complex(double[] re, double[] im, double dwell, double gain) {
+    Scenario.Receiver r = scenario.receiver();
+    double sigma = r.noiseDensity() / Math.sqrt(dwell);
+    double cos = (1 + r.gainError()) * Math.cos(r.phaseErrorRadians());
+    double sin = (1 + r.gainError()) * Math.sin(r.phaseErrorRadians());
+    for (int k = 0; k < re.length; k++) {
+      double a = re[k] + sigma * random.nextGaussian();
+      double b = im[k] + sigma * random.nextGaussian();
+      double q = cos * b + sin * a;
+      re[k] = counts(gain * (r.swapped() ? q : a) + r.offsetIVolts());
+      im[k] = counts(gain * (r.swapped() ? a : q) + r.offsetQVolts());
+    }
+    return new Counts(re, im);
+  }
+
+  private Counts real(
+      double[] re, double[] im, RealSampling sampling, double carrierHertz, double gain) {
+    double rate = sampling.rateHertz();
+    double turnsEach = sampling.intermediateHertz().orElse(carrierHertz) / rate;
+    turnsEach -= Math.floor(turnsEach);
+    // Mixed down to one channel of 1/dwell, this noise has the density noiseDensity.
+    double sigma = scenario.receiver().noiseDensity() * Math.sqrt(rate / 2);
+    for (int k = 0; k < re.length; k++) {
+      double turns = turnsEach * k;
+      double angle = 2 * Math.PI * (turns - Math.rint(turns));
+      double v = re[k] * Math.cos(angle) - im[k] * Math.sin(angle);
+      v += sigma * random.nextGaussian();
+      re[k] = counts(gain * v + scenario.receiver().offsetIVolts());
+    }
+    return new Counts(re, new double[0]);
+  }
+
+  private double counts(double volts) {
+    double rail = scenario.receiver().railVolts();
+    return Math.max(-rail, Math.min(rail, volts)) / digitiser.voltsPerCount();
+  }
+}

@@ -1,0 +1,12 @@
+package coilside.command;
+
+import coilside.quantity.AgeFormat;
+
+/** Ages for tables. */
+final class Ages {
+  private Ages() {}
+
+  static String text(double seconds) {
+    return AgeFormat.text(seconds);
+  }
+}

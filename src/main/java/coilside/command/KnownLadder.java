@@ -1,0 +1,86 @@
+package coilside.command;
+
+import coilside.bench.Conditions;
+import coilside.bench.Finding;
+import coilside.bench.KeepException;
+import coilside.bench.LadderView;
+import coilside.bench.Rung;
+import coilside.bench.RungStatus;
+import coilside.record.BenchRecord;
+import coilside.record.RecordView;
+import java.nio.file.Files;
+import java.time.Clock;
+import java.time.Instant;
+import java.util.EnumMap;
+import java.util.List;
+import java.util.Map;
+import java.util.Optional;
+import java.util.OptionalDouble;
+
+/** The ladder as the record knows it, read without a board and beside whoever holds it. */
+final class KnownLadder implements AutoCloseable {
+  private final Optional<RecordView> view;
+  private final CommonOptions options;
+  private final Clock clock = Clock.systemUTC();
+
+  private KnownLadder(Optional<RecordView> view, CommonOptions options) {
+    this.view = view;
+    this.options = options;
+  }
+
+  static KnownLadder open(CommonOptions options) throws KeepException {
+    boolean there = Files.exists(options.captures.resolve(BenchRecord.FILE_NAME));
+    return new KnownLadder(
+        there ? Optional.of(BenchRecord.watch(options.captures)) : Optional.empty(), options);
+  }
+
+  Instant now() {
+    return clock.instant();
+  }
+
+  List<Finding> history(Rung rung) throws KeepException {
+    return view.isPresent() ? view.get().findings(rung) : List.of();
+  }
+
+  List<RungStatus> ladder() throws KeepException {
+    Map<Rung, List<Finding>> findings = new EnumMap<>(Rung.class);
+    for (Rung rung : Rung.values()) {
+      findings.put(rung, history(rung));
+    }
+    Conditions last =
+        LadderView.last(findings)
+            .orElse(new Conditions("", "", 1, 0, 0, "", "", OptionalDouble.empty()));
+    String digest =
+        options.board == null
+            ? last.profileDigest()
+            : Profiles.read(BoardAddress.parse(options.board).profile()).digest();
+    Conditions now =
+        new Conditions(
+            last.board(),
+            digest,
+            last.carrierHertz(),
+            setting("amplitude", options.amplitude)
+                .map(Double::parseDouble)
+                .orElse(last.amplitude()),
+            last.gainDecibels(),
+            setting("sample", options.sample).orElse(last.sample()),
+            setting("coil", options.coil).orElse(last.coil()),
+            last.temperatureCelsius());
+    return LadderView.of(findings, now, clock.instant());
+  }
+
+  private Optional<String> setting(String name, String given) throws KeepException {
+    if (given != null) {
+      return Optional.of(
+          name.equals("amplitude")
+              ? Double.toString(Values.fraction("--amplitude", given))
+              : given);
+    }
+    return view.isPresent() ? view.get().setting(name) : Optional.empty();
+  }
+
+  @Override
+  public void close() {
+    view.ifPresent(RecordView::close);
+  }
+}

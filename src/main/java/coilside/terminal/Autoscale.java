@@ -1,0 +1,48 @@
+package coilside.terminal;
+
+/**
+ * A range that follows the data without jitter: it grows at once when data leave it, and shrinks
+ * only after the data have filled less than half of it for several updates in a row.
+ */
+final class Autoscale {
+  private static final int PATIENCE = 12;
+  private double low = Double.NaN;
+  private double high = Double.NaN;
+  private int tooWide;
+
+  double low() {
+    return low;
+  }
+
+  double high() {
+    return high;
+  }
+
+  void reset() {
+    low = Double.NaN;
+    high = Double.NaN;
+    tooWide = 0;
+  }
+
+  void update(double dataLow, double dataHigh) {
+    if (!Double.isFinite(dataLow) || !Double.isFinite(dataHigh)) {
+      return;
+    }
+    double span = dataHigh - dataLow;
+    if (!(span > 0)) {
+      span = Math.max(Math.abs(dataHigh) * 0.1, 1e-12);
+    }
+    boolean outside = !(dataLow >= low - 1e-9 * span && dataHigh <= high + 1e-9 * span);
+    tooWide = span < 0.5 * (high - low) ? tooWide + 1 : 0;
+    if (outside || tooWide >= PATIENCE) {
+      take(dataLow, dataHigh, span);
+    }
+  }
+
+  private void take(double dataLow, double dataHigh, double span) {
+    double step = new Axis(0, span, "").step(8);
+    low = Math.floor((dataLow - 0.02 * span) / step) * step;
+    high = Math.ceil((dataHigh + 0.02 * span) / step) * step;
+    tooWide = 0;
+  }
+}

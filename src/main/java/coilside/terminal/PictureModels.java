@@ -1,0 +1,221 @@
+package coilside.terminal;
+
+import coilside.bench.Picture;
+import coilside.bench.Rung;
+import coilside.signal.Fid;
+import coilside.signal.Spectrum;
+import java.util.ArrayList;
+import java.util.Arrays;
+import java.util.List;
+import java.util.Locale;
+
+/** Turns the bench's pictures into plots. */
+final class PictureModels {
+  private PictureModels() {}
+
+  /** The plots of a picture, the most telling first. */
+  static List<PlotModel> of(Picture picture, Part part, String prefix) {
+    if (picture instanceof Picture.Curve curve) {
+      return List.of(curve(curve, prefix));
+    }
+    Picture.Trace trace = (Picture.Trace) picture;
+    List<PlotModel> out = new ArrayList<>();
+    out.add(fid(trace, part, prefix));
+    trace.spectrum().ifPresent(s -> out.add(spectrum(s, trace.rung(), part, prefix)));
+    return out;
+  }
+
+  private static PlotModel curve(Picture.Curve c, String prefix) {
+    List<Series> series = new ArrayList<>();
+    List<Series> residuals = new ArrayList<>();
+    boolean search = c.rung() == Rung.RESONANCE || c.rung() == Rung.GAIN;
+    double[] x = c.x();
+    double[] y = c.y();
+    double[] u = c.u();
+    if (search && x.length > 1) {
+      Integer[] order = new Integer[x.length];
+      Arrays.setAll(order, k -> k);
+      Arrays.sort(order, (a, b) -> Double.compare(c.x()[a], c.x()[b]));
+      double[] sx = new double[x.length];
+      double[] sy = new double[x.length];
+      for (int k = 0; k < x.length; k++) {
+        sx[k] = x[order[k]];
+        sy[k] = y[order[k]];
+      }
+      series.add(Series.line("", Ink.FAINT, sx, sy));
+    }
+    if (c.fitX().length > 1) {
+      series.add(Series.line("fit", Ink.FIT, c.fitX(), c.fitY()));
+    }
+    series.add(
+        Series.points(x.length == 1 ? "1 point" : x.length + " points", Ink.SIGNAL, x, y, u));
+    if (c.nextX().length > 0) {
+      series.add(Series.marks("next", c.nextX()));
+    }
+    if (c.fitX().length > 1 && x.length > 0) {
+      double[] r = new double[x.length];
+      for (int k = 0; k < x.length; k++) {
+        r[k] = y[k] - interpolate(c.fitX(), c.fitY(), x[k]);
+      }
+      double[] ends = {c.fitX()[0], c.fitX()[c.fitX().length - 1]};
+      residuals.add(Series.line("", Ink.FAINT, ends, new double[2]));
+      residuals.add(Series.points("", Ink.SECOND, x, r, u));
+    }
+    // The line joining search points must not decide the ends of the axis.
+    if (!series.isEmpty() && series.get(0).form() == Series.Form.LINE) {
+      Series points =
+          series.stream().filter(s -> s.form() == Series.Form.POINTS).findFirst().orElseThrow();
+      series.remove(points);
+      series.add(0, points);
+    }
+    return new PlotModel(
+        prefix + c.rung().id() + ".curve",
+        c.rung().id() + ": " + c.yName(),
+        c.xName(),
+        c.xUnit(),
+        c.yName(),
+        c.yUnit(),
+        series,
+        residuals,
+        0,
+        c.caption());
+  }
+
+  static double interpolate(double[] x, double[] y, double at) {
+    for (int k = 0; k + 1 < x.length; k++) {
+      if (at >= x[k] && at <= x[k + 1] && x[k + 1] > x[k]) {
+        return y[k] + (y[k + 1] - y[k]) * (at - x[k]) / (x[k + 1] - x[k]);
+      }
+    }
+    return Double.NaN;
+  }
+
+  private static double[] part(double[] re, double[] im, Part part) {
+    return switch (part) {
+      case REAL, BOTH -> re;
+      case IMAGINARY -> im;
+      case MAGNITUDE -> {
+        double[] m = new double[re.length];
+        Arrays.setAll(m, k -> Math.hypot(re[k], im[k]));
+        yield m;
+      }
+    };
+  }
+
+  private static PlotModel fid(Picture.Trace t, Part part, String prefix) {
+    Fid fid = t.fid();
+    double[] time = new double[fid.points()];
+    Arrays.setAll(time, fid::time);
+    double[] y = part(fid.re(), fid.im(), part);
+    List<Series> series = new ArrayList<>();
+    List<Series> residuals = new ArrayList<>();
+    series.add(Series.line(part == Part.BOTH ? "real" : part.words, Ink.SIGNAL, time, y));
+    if (part == Part.BOTH) {
+      series.add(Series.line("imaginary", Ink.SECOND, time, fid.im()));
+    }
+    t.fit()
+        .ifPresent(
+            fit -> {
+              int n = Math.min(fit.points(), fid.points());
+              double[] fy = part(fit.re(), fit.im(), part);
+              int from = Math.max(0, Math.min(n - 1, t.usedFrom()));
+              double[] ft = Arrays.copyOfRange(time, from, n);
+              series.add(Series.line("fit", Ink.FIT, ft, Arrays.copyOfRange(fy, from, n)));
+              double[] r = new double[n - from];
+              Arrays.setAll(r, k -> y[from + k] - fy[from + k]);
+              residuals.add(Series.line("", Ink.SECOND, ft, r));
+              double[] u = new double[2];
+              Arrays.fill(u, rms(r));
+              residuals.add(
+                  Series.band("", new double[] {ft[0], ft[ft.length - 1]}, new double[2], u));
+            });
+    return new PlotModel(
+        prefix + t.rung().id() + ".fid",
+        "FID, " + part.words,
+        "time",
+        "s",
+        "amplitude",
+        "V",
+        series,
+        residuals,
+        0,
+        t.caption());
+  }
+
+  private static double rms(double[] v) {
+    double sum = 0;
+    for (double x : v) {
+      sum += x * x;
+    }
+    return Math.sqrt(sum / Math.max(1, v.length));
+  }
+
+  private static PlotModel spectrum(Spectrum s, Rung rung, Part part, String prefix) {
+    int n = s.points();
+    double[] f = new double[n];
+    Arrays.setAll(f, s::offsetHertz);
+    double[] magnitude = new double[n];
+    Arrays.setAll(magnitude, s::magnitude);
+    double[] y = part(s.re(), s.im(), part);
+    List<Series> series = new ArrayList<>();
+    series.add(Series.line(part == Part.BOTH ? "real" : part.words, Ink.SIGNAL, f, y));
+    if (part == Part.BOTH) {
+      series.add(Series.line("imaginary", Ink.SECOND, f, s.im()));
+    }
+    double noise = baseline(magnitude);
+    double[] ends = {f[0], f[n - 1]};
+    double[] half = {noise, noise};
+    series.add(Series.band("noise level", ends, new double[2], half));
+    return new PlotModel(
+        prefix + rung.id() + ".spectrum",
+        "spectrum, " + part.words + peakText(s, magnitude, noise),
+        "offset",
+        "Hz",
+        "amplitude",
+        "V",
+        series,
+        List.of(),
+        s.carrierHertz(),
+        "");
+  }
+
+  /** Noise of one component, from the median of a Rayleigh-distributed magnitude. */
+  static double baseline(double[] magnitude) {
+    double[] sorted = magnitude.clone();
+    Arrays.sort(sorted);
+    return sorted[sorted.length / 2] / Math.sqrt(2 * Math.log(2));
+  }
+
+  /**
+   * Place and full width at half height of the largest peak, where it stands clear of the noise.
+   */
+  private static String peakText(Spectrum s, double[] m, double noise) {
+    int p = 0;
+    for (int k = 1; k < m.length; k++) {
+      if (m[k] > m[p]) {
+        p = k;
+      }
+    }
+    if (!(m[p] > 6 * noise)) {
+      return "";
+    }
+    double left = crossing(m, p, -1);
+    double right = crossing(m, p, 1);
+    return String.format(
+        Locale.ROOT,
+        "; peak %s, width %s",
+        Numbers.si(s.offsetHertz(p), "Hz", 4),
+        Numbers.si((right - left) * s.stepHertz(), "Hz", 3));
+  }
+
+  private static double crossing(double[] m, int peak, int step) {
+    double half = m[peak] / 2;
+    for (int k = peak + step; k >= 0 && k < m.length; k += step) {
+      if (m[k] <= half) {
+        double f = (m[k - step] - half) / (m[k - step] - m[k]);
+        return k - step + step * f;
+      }
+    }
+    return step < 0 ? 0 : m.length - 1.0;
+  }
+}

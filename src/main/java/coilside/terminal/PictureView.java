@@ -1,0 +1,217 @@
+package coilside.terminal;
+
+import coilside.bench.Picture;
+import coilside.bench.Rung;
+import java.util.ArrayList;
+import java.util.HashMap;
+import java.util.List;
+import java.util.Map;
+import java.util.Optional;
+
+/** Chooses and draws the picture: of the chosen rung, of what runs live, or of the log. */
+final class PictureView {
+  enum Source {
+    RUNG,
+    LIVE,
+    LOG
+  }
+
+  private final Look look;
+  private final Map<String, PlotView> views = new HashMap<>();
+  private Source source = Source.RUNG;
+  private int focus;
+  private Boolean alone;
+  private List<PlotModel> shown = List.of();
+
+  PictureView(Look look) {
+    this.look = look;
+  }
+
+  Source source() {
+    return source;
+  }
+
+  void source(Source s) {
+    if (s != source) {
+      source = s;
+      focus = 0;
+      alone = null;
+    }
+  }
+
+  void rungChanged() {
+    source = Source.RUNG;
+    focus = 0;
+    alone = null;
+  }
+
+  void nextFocus() {
+    focus = shown.isEmpty() ? 0 : (focus + 1) % shown.size();
+  }
+
+  void toggleAlone() {
+    alone = alone == null || !alone;
+  }
+
+  boolean several() {
+    return shown.size() > 1;
+  }
+
+  /** The view of the plot that has the keys; empty when there is no plot. */
+  Optional<PlotView> focused() {
+    if (shown.isEmpty()) {
+      return Optional.empty();
+    }
+    return Optional.of(view(shown.get(Math.min(focus, shown.size() - 1))));
+  }
+
+  private PlotView view(PlotModel m) {
+    return views.computeIfAbsent(m.id() + look.part, k -> new PlotView());
+  }
+
+  void draw(Canvas canvas, Area area, Snapshot state) {
+    Optional<Picture> picture = picture(state);
+    shown =
+        source == Source.LOG
+            ? LogModels.of(state.log())
+            : picture
+                .map(p -> PictureModels.of(p, look.part, source == Source.LIVE ? "live." : ""))
+                .orElse(List.of());
+    if (shown.isEmpty()) {
+      empty(canvas, area, state);
+      return;
+    }
+    focus = Math.min(focus, shown.size() - 1);
+    Area plots = area;
+    if (source == Source.LIVE && hasHeadlines(state)) {
+      headlines(canvas, area.rows(0, 2), state);
+      plots = new Area(area.x(), area.y() + 2, area.width(), area.height() - 2);
+    }
+    String caption = shown.get(0).caption();
+    List<String> lines = caption.isEmpty() ? List.of() : Wrap.wrap(caption, area.width());
+    int captionRows = Math.min(area.height() > 24 ? 3 : 2, lines.size());
+    for (int i = 0; i < captionRows; i++) {
+      canvas.put(area.x(), area.bottom() - captionRows + i, lines.get(i), Ink.STRONG, area.right());
+    }
+    plots = new Area(plots.x(), plots.y(), plots.width(), plots.height() - captionRows);
+    drawPlots(canvas, plots);
+  }
+
+  private void drawPlots(Canvas canvas, Area area) {
+    boolean small = area.height() / 2 < 11 && area.width() < 130;
+    boolean one =
+        shown.size() == 1
+            || (alone == null
+                ? small
+                    && source == Source.RUNG
+                    && !shown.get(0).residuals().isEmpty()
+                    && look.residuals
+                : alone);
+    Plot plot = new Plot(canvas, look.style);
+    if (one) {
+      PlotModel m = shown.get(focus);
+      plot.draw(m, view(m), area, look.residuals, true);
+      return;
+    }
+    int first =
+        focus == shown.size() - 1 && shown.size() > 2
+            ? focus - 1
+            : Math.min(focus, shown.size() - 2);
+    List<PlotModel> two = List.of(shown.get(first), shown.get(first + 1));
+    boolean beside = area.width() >= 130;
+    for (int i = 0; i < 2; i++) {
+      int half = beside ? area.width() / 2 : area.height() / 2;
+      Area part =
+          beside
+              ? new Area(area.x() + i * half, area.y(), half - 1, area.height())
+              : new Area(
+                  area.x(),
+                  area.y() + i * half,
+                  area.width(),
+                  i == 0 ? half : area.height() - half);
+      PlotModel m = two.get(i);
+      plot.draw(m, view(m), part, look.residuals, first + i == focus);
+    }
+  }
+
+  private Optional<Picture> picture(Snapshot state) {
+    return source == Source.LIVE
+        ? state.live()
+        : Optional.ofNullable(state.pictures().get(look.chosen));
+  }
+
+  private void empty(Canvas canvas, Area area, Snapshot state) {
+    List<String> text = new ArrayList<>();
+    if (source == Source.LOG) {
+      text.add("No log rows yet.");
+      text.add("Press k to start a log.");
+    } else if (source == Source.LIVE) {
+      text.add("Nothing live yet.");
+      text.add("Press l for live tuning and shimming, o to listen with the transmitter off.");
+    } else {
+      Rung rung = look.chosen;
+      text.add(rung.id() + ": " + rung.title());
+      boolean busy = state.measuring().filter(r -> r == rung).isPresent();
+      text.add(
+          busy ? "Measuring: the picture comes with the first points." : "No picture of it yet.");
+      if (!busy) {
+        text.add("Press m to measure it, r to bring all rungs up to date.");
+      }
+      state.status(rung).reasons().forEach(r -> text.add("Because " + r));
+    }
+    int y = area.y() + 1;
+    for (String paragraph : text) {
+      for (String line : Wrap.wrap(paragraph, area.width() - 2)) {
+        canvas.put(area.x() + 2, y, line, y == area.y() + 1 ? Ink.TITLE : Ink.FAINT, area.right());
+        y++;
+      }
+    }
+  }
+
+  private static boolean hasHeadlines(Snapshot state) {
+    return state.headlines().values().stream().anyMatch(h -> h.latest().isPresent());
+  }
+
+  /** The headline number with trend and best on the first line, the others on the second. */
+  private void headlines(Canvas canvas, Area area, Snapshot state) {
+    Glyphs g = canvas.glyphs();
+    HeadlineHistory chief = state.headlines().get(look.headline);
+    int x = area.x();
+    if (chief.latest().isPresent()) {
+      x = canvas.put(x, area.y(), look.headline.words + " ", Ink.TITLE, area.right());
+      x =
+          canvas.put(
+              x,
+              area.y(),
+              Numbers.concise(chief.latest().get(), g.unicode()),
+              Ink.STRONG,
+              area.right());
+      x = canvas.put(x + 1, area.y(), g.arrow(chief.trend()), Ink.STRONG, area.right());
+      if (chief.best().isPresent()) {
+        boolean now = chief.best().equals(chief.latest());
+        String best =
+            now ? "* best so far" : "best " + Numbers.concise(chief.best().get(), g.unicode());
+        canvas.put(x + 2, area.y(), best, now ? Ink.GOOD : Ink.FAINT, area.right());
+      }
+    }
+    x = area.x();
+    for (Headline h : Headline.values()) {
+      HeadlineHistory history = state.headlines().get(h);
+      if (h != look.headline && history.latest().isPresent()) {
+        String text =
+            (h == Headline.FREQUENCY || h == Headline.T2STAR || h == Headline.LINEWIDTH
+                    ? ""
+                    : h.words + " ")
+                + (h == Headline.T2STAR ? "T2* " : "")
+                + Numbers.si(
+                    history.latest().get().value(),
+                    history.latest().get().unit().pretty(),
+                    h == Headline.FREQUENCY ? 7 : 3)
+                + g.arrow(history.trend()).substring(0, 1);
+        if (x + text.length() <= area.right()) {
+          x = canvas.put(x, area.y() + 1, text, Ink.PLAIN, area.right()) + 2;
+        }
+      }
+    }
+  }
+}

@@ -1,0 +1,150 @@
+package coilside.terminal;
+
+import coilside.bench.Desk;
+import java.io.BufferedReader;
+import java.io.IOException;
+import java.io.InputStream;
+import java.io.InputStreamReader;
+import java.io.PrintStream;
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Locale;
+import java.util.Optional;
+import java.util.concurrent.BlockingQueue;
+import java.util.concurrent.LinkedBlockingQueue;
+import java.util.concurrent.TimeUnit;
+
+/**
+ * The state line by line, for screen readers: changes are printed once as they happen, a letter or
+ * word and Enter does what the same key does on the screen. No cursor movement, no colour.
+ */
+final class PlainMode {
+  private static final String END = "\u0004";
+  private final Cockpit cockpit;
+  private final Watch watch;
+  private final PrintStream out;
+  private final PlainText text;
+
+  private PlainMode(Desk desk, TerminalOptions options, PrintStream out) {
+    watch = new Watch(options.clock());
+    desk.listen(watch);
+    cockpit = new Cockpit(desk, watch, options, false);
+    this.out = out;
+    text = new PlainText(desk, options.clock(), TextInterface.unicode(options));
+  }
+
+  static int run(Desk desk, TerminalOptions options, InputStream in, PrintStream out) {
+    PlainMode mode = new PlainMode(desk, options, out);
+    BlockingQueue<String> lines = new LinkedBlockingQueue<>(100);
+    Thread reader = new Thread(() -> read(in, options, lines), "line reader");
+    reader.setDaemon(true);
+    reader.start();
+    try {
+      mode.loop(lines);
+    } catch (InterruptedException e) {
+      Thread.currentThread().interrupt();
+    }
+    if (mode.watch.snapshotWork().isPresent()) {
+      desk.stop();
+    }
+    return TextInterface.DONE;
+  }
+
+  private static void read(InputStream in, TerminalOptions options, BlockingQueue<String> lines) {
+    BufferedReader reader = new BufferedReader(new InputStreamReader(in, options.charset()));
+    try {
+      String line;
+      while ((line = reader.readLine()) != null) {
+        lines.put(line);
+      }
+      lines.put(END);
+    } catch (IOException e) {
+      lines.offer(END);
+    } catch (InterruptedException e) {
+      Thread.currentThread().interrupt();
+    }
+  }
+
+  private void loop(BlockingQueue<String> lines) throws InterruptedException {
+    print(text.overview(watch.snapshot()));
+    print(List.of("Type help and Enter for what can be done; ladder for the list; quit to leave."));
+    while (!cockpit.done()) {
+      String line = lines.poll(200, TimeUnit.MILLISECONDS);
+      cockpit.tick();
+      print(text.changes(watch.snapshot()));
+      if (END.equals(line)) {
+        return;
+      }
+      if (line != null) {
+        command(line.strip());
+        print(text.changes(watch.snapshot()));
+      }
+    }
+  }
+
+  private void command(String line) {
+    if (line.isEmpty()) {
+      return;
+    }
+    String word = line.toLowerCase(Locale.ROOT);
+    switch (word) {
+      case "help" -> print(help());
+      case "ladder" -> print(text.ladder(watch.snapshot()));
+      case "state", "picture" -> print(text.overview(watch.snapshot()));
+      default -> {
+        if (cockpit.panelOpen() || line.length() == 1) {
+          keys(line);
+        } else {
+          Optional<Action> action =
+              cockpit.actions().stream().filter(a -> a.brief().equalsIgnoreCase(word)).findFirst();
+          if (action.isPresent()) {
+            cockpit.key(action.get().key());
+          } else {
+            print(List.of("'" + line + "' is no command here; type help."));
+          }
+        }
+      }
+    }
+    if (cockpit.panelOpen()) {
+      print(rows(cockpit.frame(100, 60, watch.snapshot())));
+      print(List.of("Type q and Enter to go back."));
+    }
+  }
+
+  private void keys(String line) {
+    for (int i = 0; i < line.length(); i++) {
+      cockpit.key(Key.of(line.charAt(i)));
+    }
+    if (line.length() > 1) {
+      cockpit.key(Key.of(Key.Name.ENTER));
+    }
+  }
+
+  /** The text of the panel alone: the part right of the ladder, blank lines left out. */
+  private static List<String> rows(Canvas canvas) {
+    List<String> out = new ArrayList<>();
+    for (int y = 8; y < canvas.height() - 2; y++) {
+      String row = canvas.row(y).substring(31).strip();
+      if (!row.isEmpty()) {
+        out.add(row);
+      }
+    }
+    return out;
+  }
+
+  private List<String> help() {
+    List<String> out = new ArrayList<>();
+    out.add("help: this list. ladder: all rungs. state: what is going on. Then, one of:");
+    for (Action a : cockpit.actions()) {
+      if (a.works().getAsBoolean() && a.keyText().length() == 1) {
+        out.add(a.keyText() + " or " + a.brief() + ": " + a.what());
+      }
+    }
+    return out;
+  }
+
+  private void print(List<String> lines) {
+    lines.forEach(out::println);
+    out.flush();
+  }
+}

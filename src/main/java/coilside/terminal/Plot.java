@@ -1,0 +1,399 @@
+package coilside.terminal;
+
+import java.util.ArrayList;
+import java.util.List;
+
+/**
+ * Draws a {@link PlotModel} into an area: title, axes with round ticks, curves as joined dots,
+ * points with error bars, marks, a residual panel below, and a cursor with its reading.
+ */
+final class Plot {
+  private static final double DECADES_SHOWN = 4;
+  private final Canvas canvas;
+  private final DrawingStyle style;
+  private final Glyphs glyphs;
+  private PlotModel model;
+  private PlotView view;
+  private double logFloor;
+
+  Plot(Canvas canvas, DrawingStyle style) {
+    this.canvas = canvas;
+    this.style = style;
+    glyphs = canvas.glyphs();
+  }
+
+  void draw(PlotModel plotted, PlotView looked, Area area, boolean withResiduals, boolean chosen) {
+    model = plotted;
+    view = looked;
+    if (area.width() < 20 || area.height() < 4) {
+      canvas.put(area.x(), area.y(), model.title(), Ink.TITLE, area.right());
+      return;
+    }
+    boolean residualPanel = withResiduals && !model.residuals().isEmpty() && area.height() >= 11;
+    int residualRows = residualPanel ? Math.max(3, area.height() / 5) : 0;
+    int left = 8;
+    Area plot =
+        new Area(
+            area.x() + left, area.y() + 1, area.width() - left, area.height() - 3 - residualRows);
+    Axis x = xAxis();
+    logFloor = floor();
+    Axis y = yAxis(model.series(), view.yScale, view.logarithmic(), x);
+    titleRow(area, x, chosen);
+    yTicks(area, plot, y, view.logarithmic());
+    drawSeries(model.series(), plot, x, y, view.logarithmic());
+    if (residualPanel) {
+      Area below = new Area(plot.x(), plot.bottom(), plot.width(), residualRows);
+      Axis r = yAxis(model.residuals(), view.residualScale, false, x);
+      separator(area, below.y());
+      Area inner = new Area(below.x(), below.y() + 1, below.width(), below.height() - 1);
+      yTicks(area, inner, r, false);
+      drawSeries(model.residuals(), inner, x, r, false);
+    }
+    xTicks(area, plot, plot.bottom() + residualRows, x);
+    cursor(plot, plot.bottom() + residualRows, y, x);
+  }
+
+  private Axis xAxis() {
+    double low = Double.POSITIVE_INFINITY;
+    double high = Double.NEGATIVE_INFINITY;
+    for (Series s : model.series()) {
+      for (double v : s.x()) {
+        if (Double.isFinite(v)) {
+          low = Math.min(low, v);
+          high = Math.max(high, v);
+        }
+      }
+    }
+    if (low > high) {
+      low = 0;
+      high = 1;
+    }
+    boolean line = model.series().stream().anyMatch(s -> s.form() == Series.Form.LINE);
+    boolean dense = line && model.series().get(0).form() == Series.Form.LINE;
+    if (dense) {
+      // A trace fills the width exactly; only point plots get round ends.
+      double span = high - low;
+      return new Axis(low + view.from() * span, low + view.to() * span, model.xUnit());
+    }
+    view.xScale.update(low, high);
+    double span = view.xScale.high() - view.xScale.low();
+    return new Axis(
+        view.xScale.low() + view.from() * span,
+        view.xScale.low() + view.to() * span,
+        model.xUnit());
+  }
+
+  private double floor() {
+    double top = 0;
+    for (Series s : model.series()) {
+      if (s.form() == Series.Form.LINE || s.form() == Series.Form.POINTS) {
+        for (double v : s.y()) {
+          if (Double.isFinite(v)) {
+            top = Math.max(top, Math.abs(v));
+          }
+        }
+      }
+    }
+    return top > 0 ? top * Math.pow(10, -DECADES_SHOWN) : 1e-12;
+  }
+
+  private double scaled(double v, boolean log) {
+    return log ? Math.log10(Math.max(Math.abs(v), logFloor)) : v;
+  }
+
+  private Axis yAxis(List<Series> all, Autoscale scale, boolean log, Axis x) {
+    double low = Double.POSITIVE_INFINITY;
+    double high = Double.NEGATIVE_INFINITY;
+    for (Series s : all) {
+      if (s.form() == Series.Form.MARKS) {
+        continue;
+      }
+      for (int k = 0; k < s.y().length; k++) {
+        double v = s.y()[k];
+        if (!Double.isFinite(v) || s.x()[k] < x.low() || s.x()[k] > x.high()) {
+          continue;
+        }
+        double u = log ? 0 : s.uncertainty(k);
+        low = Math.min(low, scaled(v, log) - u);
+        high = Math.max(high, scaled(v, log) + u);
+      }
+    }
+    scale.update(low, high);
+    if (Double.isNaN(scale.low())) {
+      return new Axis(0, 1, model.yUnit());
+    }
+    return new Axis(scale.low(), scale.high(), model.yUnit());
+  }
+
+  private void titleRow(Area area, Axis x, boolean chosen) {
+    String zoom =
+        view.zoomed()
+            ? "  zoomed " + glyphs.times() + Math.round(1 / (view.to() - view.from()))
+            : "";
+    String log = view.logarithmic() ? "  log" : "";
+    int end =
+        canvas.put(
+            area.x(),
+            area.y(),
+            model.title() + log + zoom,
+            chosen ? Ink.TITLE : Ink.PLAIN,
+            area.right());
+    StringBuilder legend = new StringBuilder();
+    if (model.series().size() > 1) {
+      for (Series s : model.series()) {
+        if (!s.name().isEmpty()) {
+          legend.append(legend.isEmpty() ? "" : "  ").append(mark(s)).append(' ').append(s.name());
+        }
+      }
+    }
+    if (end + 2 + legend.length() <= area.right()) {
+      canvas.putRight(area.right(), area.y(), legend.toString(), Ink.FAINT, end + 2);
+    }
+  }
+
+  private char mark(Series s) {
+    return switch (s.form()) {
+      case LINE -> glyphs.horizontal();
+      case POINTS -> glyphs.point();
+      case BAND -> glyphs.empty();
+      case MARKS -> glyphs.next();
+    };
+  }
+
+  private void separator(Area area, int row) {
+    canvas.put(area.x(), row, "residual", Ink.FAINT, area.right());
+    for (int i = area.x() + 8; i < area.right(); i++) {
+      canvas.put(i, row, glyphs.dotted(), Ink.AXIS);
+    }
+  }
+
+  private void yTicks(Area area, Area plot, Axis y, boolean log) {
+    for (int row = plot.y(); row < plot.bottom(); row++) {
+      canvas.put(plot.x() - 1, row, glyphs.vertical(), Ink.AXIS);
+    }
+    int atMost = Math.max(1, plot.height() / 3 + 1);
+    List<Double> ticks = log ? decades(y, atMost) : y.ticks(atMost);
+    int last = Integer.MAX_VALUE;
+    for (double t : ticks) {
+      int row = plot.bottom() - 1 - (int) Math.round(y.fraction(t) * (plot.height() - 1));
+      if (row < plot.y() || row >= plot.bottom() || Math.abs(row - last) < 1) {
+        continue;
+      }
+      last = row;
+      String label =
+          log ? Numbers.si(Math.pow(10, t), model.yUnit(), 1).replace(" ", "") : y.label(t, atMost);
+      canvas.put(plot.x() - 1, row, glyphs.sideTick(), Ink.AXIS);
+      canvas.putRight(plot.x() - 1, row, label, Ink.AXIS, area.x());
+    }
+  }
+
+  private static List<Double> decades(Axis y, int atMost) {
+    List<Double> out = new ArrayList<>();
+    int step = (int) Math.max(1, Math.ceil(y.span() / Math.max(1, atMost)));
+    for (double d = Math.ceil(y.low()); d <= y.high(); d += step) {
+      out.add(d);
+    }
+    return out;
+  }
+
+  private void xTicks(Area area, Area plot, int row, Axis x) {
+    canvas.put(plot.x() - 1, row, glyphs.corner(), Ink.AXIS);
+    for (int i = plot.x(); i < plot.right(); i++) {
+      canvas.put(i, row, glyphs.horizontal(), Ink.AXIS);
+    }
+    String unit = x.unitText();
+    String name = model.xName() + (unit.isEmpty() ? "" : " (" + unit + ")");
+    int nameFrom = Math.max(plot.x() + plot.width() / 2, plot.right() - name.length());
+    canvas.putRight(plot.right(), row + 1, name, Ink.AXIS, nameFrom);
+    String yUnit =
+        view.logarithmic() ? "" : new Axis(viewLow(), viewHigh(), model.yUnit()).unitText();
+    canvas.put(area.x(), row, yUnit, Ink.AXIS, plot.x() - 1);
+    int atMost = Math.max(2, plot.width() / 10);
+    int free = area.x();
+    for (double t : x.ticks(atMost)) {
+      int column = plot.x() + (int) Math.round(x.fraction(t) * (plot.width() - 1));
+      if (column < plot.x() || column >= plot.right()) {
+        continue;
+      }
+      canvas.put(column, row, glyphs.tick(), Ink.AXIS);
+      String label = x.label(t, atMost);
+      int from = column - label.length() / 2;
+      if (from >= free && from + label.length() < nameFrom) {
+        canvas.put(from, row + 1, label, Ink.AXIS, area.right());
+        free = from + label.length() + 1;
+      }
+    }
+  }
+
+  private double viewLow() {
+    return Double.isNaN(view.yScale.low()) ? 0 : view.yScale.low();
+  }
+
+  private double viewHigh() {
+    return Double.isNaN(view.yScale.high()) ? 1 : view.yScale.high();
+  }
+
+  private void drawSeries(List<Series> all, Area plot, Axis x, Axis y, boolean log) {
+    for (Series s : all) {
+      Dots dots = new Dots(canvas, plot, style);
+      switch (s.form()) {
+        case LINE -> line(dots, s, x, y, log);
+        case BAND -> band(dots, s, x, y);
+        case POINTS -> points(dots, plot, s, x, y, log);
+        case MARKS -> marks(plot, s, x);
+      }
+    }
+  }
+
+  private static double column(Dots dots, Axis x, double v) {
+    return x.fraction(v) * (dots.width() - 1);
+  }
+
+  private static double dotRow(Dots dots, Axis y, double v) {
+    return (1 - y.fraction(v)) * (dots.height() - 1);
+  }
+
+  /** Many samples in one column become one stroke from their least to their largest. */
+  private void line(Dots dots, Series s, Axis x, Axis y, boolean log) {
+    int current = Integer.MIN_VALUE;
+    double lastX = Double.NaN;
+    double lastY = Double.NaN;
+    double low = 0;
+    double high = 0;
+    for (int k = 0; k < s.x().length; k++) {
+      double cx = column(dots, x, s.x()[k]);
+      if (!Double.isFinite(s.y()[k])) {
+        lastX = Double.NaN;
+        continue;
+      }
+      if (cx < -dots.width() || cx > 2.0 * dots.width()) {
+        if (cx > dots.width() && lastX > dots.width()) {
+          break;
+        }
+      }
+      double cy = dotRow(dots, y, scaled(s.y()[k], log));
+      int column = (int) Math.round(Math.max(-1e6, Math.min(1e6, cx)));
+      if (column == current) {
+        low = Math.min(low, cy);
+        high = Math.max(high, cy);
+      } else {
+        stroke(dots, current, low, high, s.ink());
+        if (!Double.isNaN(lastX)) {
+          dots.line(lastX, lastY, cx, cy, s.ink());
+        }
+        current = column;
+        low = cy;
+        high = cy;
+      }
+      lastX = cx;
+      lastY = cy;
+    }
+    stroke(dots, current, low, high, s.ink());
+    dots.paint();
+  }
+
+  private static void stroke(Dots dots, int column, double low, double high, Ink ink) {
+    if (column >= 0 && column < dots.width()) {
+      double l = Math.max(-1, Math.min(dots.height(), low));
+      double h = Math.max(-1, Math.min(dots.height(), high));
+      dots.vertical(column, (int) Math.round(l), (int) Math.round(h), ink);
+    }
+  }
+
+  private void band(Dots dots, Series s, Axis x, Axis y) {
+    for (int k = 0; k + 1 < s.x().length; k++) {
+      int from = (int) Math.max(0, Math.round(column(dots, x, s.x()[k])));
+      int to = (int) Math.min(dots.width() - 1.0, Math.round(column(dots, x, s.x()[k + 1])));
+      double top = dotRow(dots, y, s.y()[k] + s.uncertainty(k));
+      double bottom = dotRow(dots, y, s.y()[k] - s.uncertainty(k));
+      for (int c = from; c <= to; c++) {
+        if (c % 2 == 0) {
+          dots.dot(c, (int) Math.round(top), s.ink());
+          dots.dot(c, (int) Math.round(bottom), s.ink());
+        }
+      }
+    }
+    dots.paint();
+  }
+
+  private void points(Dots dots, Area plot, Series s, Axis x, Axis y, boolean log) {
+    for (int k = 0; k < s.x().length; k++) {
+      double u = s.uncertainty(k);
+      int column = (int) Math.round(column(dots, x, s.x()[k]));
+      if (u > 0 && !log && column >= 0 && column < dots.width()) {
+        stroke(dots, column, dotRow(dots, y, s.y()[k] + u), dotRow(dots, y, s.y()[k] - u), s.ink());
+      }
+    }
+    dots.paint();
+    for (int k = 0; k < s.x().length; k++) {
+      double fx = x.fraction(s.x()[k]);
+      double fy = y.fraction(scaled(s.y()[k], log));
+      if (fx >= 0 && fx <= 1 && fy >= 0 && fy <= 1) {
+        canvas.put(
+            plot.x() + (int) Math.round(fx * (plot.width() - 1)),
+            plot.bottom() - 1 - (int) Math.round(fy * (plot.height() - 1)),
+            glyphs.point(),
+            s.ink());
+      }
+    }
+  }
+
+  private void marks(Area plot, Series s, Axis x) {
+    for (double v : s.x()) {
+      double f = x.fraction(v);
+      if (f >= 0 && f <= 1) {
+        canvas.put(
+            plot.x() + (int) Math.round(f * (plot.width() - 1)),
+            plot.bottom() - 1,
+            glyphs.next(),
+            s.ink());
+      }
+    }
+  }
+
+  private void cursor(Area plot, int bottom, Axis y, Axis x) {
+    if (!view.cursorOn()) {
+      return;
+    }
+    double value = x.value(view.cursor());
+    int column = plot.x() + (int) Math.round(view.cursor() * (plot.width() - 1));
+    for (int row = plot.y(); row < bottom; row++) {
+      if (canvas.at(column, row) == ' ') {
+        canvas.put(column, row, glyphs.vertical(), Ink.NEXT);
+      } else {
+        canvas.tint(column, row, 1, Ink.NEXT);
+      }
+    }
+    String text = " " + reading(value) + " ";
+    int from = Math.max(plot.x(), Math.min(column + 2, plot.right() - text.length()));
+    canvas.put(from, plot.y(), text, Ink.CHOSEN, plot.right());
+  }
+
+  /** What stands under the cursor: abscissa, ppm where it makes sense, and each line's ordinate. */
+  private String reading(double at) {
+    StringBuilder out = new StringBuilder(Numbers.si(at, model.xUnit(), 4));
+    if (model.ppmOfHertz() > 0) {
+      out.append("  ").append(Numbers.si(at / model.ppmOfHertz() * 1e6, "ppm", 4));
+    }
+    for (Series s : model.series()) {
+      if (s.form() == Series.Form.LINE || s.form() == Series.Form.POINTS) {
+        int k = nearest(s.x(), at);
+        if (k >= 0) {
+          out.append("  ").append(s.name()).append(s.name().isEmpty() ? "" : " ");
+          out.append(Numbers.si(s.y()[k], model.yUnit(), 3));
+        }
+      }
+    }
+    return out.toString();
+  }
+
+  private static int nearest(double[] x, double at) {
+    int best = -1;
+    for (int k = 0; k < x.length; k++) {
+      if (best < 0 || Math.abs(x[k] - at) < Math.abs(x[best] - at)) {
+        best = k;
+      }
+    }
+    return best;
+  }
+}

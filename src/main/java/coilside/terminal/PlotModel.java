@@ -1,0 +1,34 @@
+package coilside.terminal;
+
+import java.util.List;
+
+/**
+ * What a plot shows, in SI units.
+ *
+ * @param id names the plot, so that zoom and scale stay with it ("t2star.fid")
+ * @param title what it is, short
+ * @param xName name of the abscissa
+ * @param xUnit unit of the abscissa
+ * @param yName name of the ordinate
+ * @param yUnit unit of the ordinate
+ * @param series drawn in this order, later ones on top
+ * @param residuals data minus fit, drawn in a panel of its own; empty when there is no fit
+ * @param ppmOfHertz carrier for a reading in ppm; 0 where that makes no sense
+ * @param caption the result so far, one line
+ */
+record PlotModel(
+    String id,
+    String title,
+    String xName,
+    String xUnit,
+    String yName,
+    String yUnit,
+    List<Series> series,
+    List<Series> residuals,
+    double ppmOfHertz,
+    String caption) {
+  PlotModel {
+    series = List.copyOf(series);
+    residuals = List.copyOf(residuals);
+  }
+}

@@ -1,0 +1,83 @@
+package coilside.terminal;
+
+/** How one plot is looked at: zoom, pan, cursor, logarithmic scale, and the scales in use. */
+final class PlotView {
+  final Autoscale xScale = new Autoscale();
+  final Autoscale yScale = new Autoscale();
+  final Autoscale residualScale = new Autoscale();
+  private double from;
+  private double to = 1;
+  private double cursor = Double.NaN;
+  private boolean logarithmic;
+
+  double from() {
+    return from;
+  }
+
+  double to() {
+    return to;
+  }
+
+  boolean zoomed() {
+    return from > 0 || to < 1;
+  }
+
+  boolean logarithmic() {
+    return logarithmic;
+  }
+
+  void toggleLogarithmic() {
+    logarithmic = !logarithmic;
+    yScale.reset();
+  }
+
+  boolean cursorOn() {
+    return !Double.isNaN(cursor);
+  }
+
+  /** Place of the cursor within the visible part, 0..1. */
+  double cursor() {
+    return cursor;
+  }
+
+  void toggleCursor() {
+    cursor = cursorOn() ? Double.NaN : 0.5;
+  }
+
+  void moveCursor(double by) {
+    if (cursorOn()) {
+      cursor = Math.max(0, Math.min(1, cursor + by));
+    }
+  }
+
+  /** Zooms about the cursor, or the middle; a factor below 1 shows less. */
+  void zoom(double factor) {
+    double centre = from + (cursorOn() ? cursor : 0.5) * (to - from);
+    double width = Math.max(1e-4, Math.min(1, (to - from) * factor));
+    double share = (centre - from) / (to - from);
+    from = centre - share * width;
+    to = from + width;
+    keepInside();
+  }
+
+  void pan(double by) {
+    double shift = by * (to - from);
+    from += shift;
+    to += shift;
+    keepInside();
+  }
+
+  void showAll() {
+    from = 0;
+    to = 1;
+    xScale.reset();
+    yScale.reset();
+    residualScale.reset();
+  }
+
+  private void keepInside() {
+    double width = Math.min(1, to - from);
+    from = Math.max(0, Math.min(1 - width, from));
+    to = from + width;
+  }
+}

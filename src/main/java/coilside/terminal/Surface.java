@@ -1,0 +1,97 @@
+package coilside.terminal;
+
+import com.googlecode.lanterna.TerminalSize;
+import com.googlecode.lanterna.input.KeyStroke;
+import com.googlecode.lanterna.screen.Screen;
+import java.io.IOException;
+
+/** Shows canvases on a Lanterna screen, sending only what changed, and reads its keys. */
+final class Surface {
+  private final Screen screen;
+  private final Runnable ring;
+  private Palette palette;
+
+  /**
+   * @param screen a started screen
+   * @param ring sounds the bell
+   */
+  Surface(Screen screen, Palette palette, Runnable ring) {
+    this.screen = screen;
+    this.palette = palette;
+    this.ring = ring;
+    screen.setCursorPosition(null);
+  }
+
+  Palette palette() {
+    return palette;
+  }
+
+  void palette(Palette other) {
+    palette = other;
+  }
+
+  /** Takes a changed size over; true when there was one. */
+  boolean resize() {
+    return screen.doResizeIfNecessary() != null;
+  }
+
+  int width() {
+    return screen.getTerminalSize().getColumns();
+  }
+
+  int height() {
+    return screen.getTerminalSize().getRows();
+  }
+
+  void show(Canvas canvas, boolean everything) throws IOException {
+    TerminalSize size = screen.getTerminalSize();
+    int w = Math.min(size.getColumns(), canvas.width());
+    int h = Math.min(size.getRows(), canvas.height());
+    for (int y = 0; y < h; y++) {
+      for (int x = 0; x < w; x++) {
+        screen.setCharacter(x, y, palette.character(canvas.at(x, y), canvas.inkAt(x, y)));
+      }
+    }
+    screen.refresh(everything ? Screen.RefreshType.COMPLETE : Screen.RefreshType.DELTA);
+  }
+
+  void bell() {
+    ring.run();
+  }
+
+  /** The next key, or null when none is waiting. */
+  Key poll() throws IOException {
+    KeyStroke stroke = screen.pollInput();
+    return stroke == null ? null : key(stroke);
+  }
+
+  static Key key(KeyStroke stroke) {
+    Key.Name name =
+        switch (stroke.getKeyType()) {
+          case Character -> Key.Name.CHARACTER;
+          case ArrowUp -> Key.Name.UP;
+          case ArrowDown -> Key.Name.DOWN;
+          case ArrowLeft -> Key.Name.LEFT;
+          case ArrowRight -> Key.Name.RIGHT;
+          case PageUp -> Key.Name.PAGE_UP;
+          case PageDown -> Key.Name.PAGE_DOWN;
+          case Home -> Key.Name.HOME;
+          case End -> Key.Name.END;
+          case Enter -> Key.Name.ENTER;
+          case Tab -> Key.Name.TAB;
+          case ReverseTab -> Key.Name.BACK_TAB;
+          case Backspace -> Key.Name.BACKSPACE;
+          case Delete -> Key.Name.DELETE;
+          case Escape -> Key.Name.ESCAPE;
+          case EOF -> Key.Name.HANG_UP;
+          default -> Key.Name.OTHER;
+        };
+    if (name != Key.Name.CHARACTER) {
+      return Key.of(name);
+    }
+    if (stroke.isAltDown()) {
+      return Key.of(Key.Name.OTHER);
+    }
+    return new Key(name, stroke.getCharacter(), stroke.isCtrlDown());
+  }
+}

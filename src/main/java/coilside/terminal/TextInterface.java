@@ -1,0 +1,209 @@
+package coilside.terminal;
+
+import coilside.bench.Desk;
+import coilside.bench.Progress;
+import coilside.bench.Work;
+import java.io.IOException;
+import java.io.PrintWriter;
+import java.io.StringWriter;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.nio.file.StandardOpenOption;
+import java.util.Optional;
+import java.util.concurrent.CountDownLatch;
+
+/**
+ * The text interface: runs the screen, or its line-by-line form, on a desk until the operator
+ * leaves.
+ */
+public final class TextInterface {
+  /** Left as the operator wished. */
+  public static final int DONE = 0;
+
+  /** The terminal cannot be used: the caller's usage error. */
+  public static final int NO_TERMINAL = 2;
+
+  /** Interrupted by Ctrl-C or a signal; what was finished is kept. */
+  public static final int INTERRUPTED = 130;
+
+  /** A mistake of the program's own; the stack trace is in the crash log. */
+  public static final int CRASHED = 70;
+
+  private static final double BYTES_A_SECOND = 200_000;
+  private static final double BYTES_A_SECOND_REMOTE = 9_000;
+
+  private TextInterface() {}
+
+  /**
+   * Why the screen cannot run here, with what to do instead; empty when it can. Asks the terminal
+   * nothing but its type.
+   */
+  public static Optional<String> unusable(TerminalOptions options, boolean terminalPresent) {
+    if (!terminalPresent) {
+      return Optional.of(
+          "There is no terminal here: input or output is redirected. Start coilside on a terminal,"
+              + " or use 'coilside ready', which prints its table anywhere.");
+    }
+    String term = options.environment().getOrDefault("TERM", "");
+    if (term.isEmpty() || term.equals("dumb")) {
+      return Optional.of(
+          "The terminal type is TERM="
+              + (term.isEmpty() ? "(not set)" : "dumb")
+              + ", which cannot place text on a screen. Set TERM to what your terminal is (often"
+              + " xterm-256color), or use 'coilside --plain' or 'coilside ready'.");
+    }
+    return Optional.empty();
+  }
+
+  static boolean unicode(TerminalOptions options) {
+    return !options.asciiOnly() && StandardCharsets.UTF_8.equals(options.charset());
+  }
+
+  /**
+   * Runs until the operator leaves. The desk is stopped where the work in hand must not outlive the
+   * screen, and is not closed. After a hang-up it returns once the work in hand has ended.
+   *
+   * @return exit status: {@link #DONE}, {@link #NO_TERMINAL}, {@link #INTERRUPTED}, {@link
+   *     #CRASHED}
+   */
+  public static int run(Desk desk, TerminalOptions options) {
+    if (options.plain()) {
+      return PlainMode.run(desk, options, System.in, System.out);
+    }
+    Optional<String> trouble = unusable(options, System.console() != null);
+    if (trouble.isPresent()) {
+      System.err.println(trouble.get());
+      return NO_TERMINAL;
+    }
+    try {
+      Console console = new Console(options.charset());
+      int w = console.screen().getTerminalSize().getColumns();
+      int h = console.screen().getTerminalSize().getRows();
+      if (w < Cockpit.LEAST_WIDTH || h < Cockpit.LEAST_HEIGHT) {
+        console.giveBack();
+        System.err.println(tooSmall(w, h));
+        return NO_TERMINAL;
+      }
+      return onScreen(desk, options, console);
+    } catch (IOException e) {
+      System.err.println(
+          "The terminal could not be set up: "
+              + e.getMessage()
+              + ". Check that stty works here, or use 'coilside ready'.");
+      return NO_TERMINAL;
+    }
+  }
+
+  static String tooSmall(int width, int height) {
+    return "The terminal is "
+        + width
+        + " x "
+        + height
+        + " characters; the screen needs at least "
+        + Cockpit.LEAST_WIDTH
+        + " x "
+        + Cockpit.LEAST_HEIGHT
+        + ". Enlarge the window or choose a smaller font, or use 'coilside ready'.";
+  }
+
+  private static int onScreen(Desk desk, TerminalOptions options, Console console) {
+    CountDownLatch idle = new CountDownLatch(1);
+    Watch watch = new Watch(options.clock());
+    desk.listen(watch);
+    boolean remote =
+        options.environment().containsKey("SSH_CONNECTION")
+            || options.environment().containsKey("SSH_TTY");
+    try {
+      Palette palette = Palette.from(options.environment(), options.noColor());
+      Cockpit cockpit = new Cockpit(desk, watch, options, palette.light());
+      Surface surface = new Surface(console.screen(), palette, console::bell);
+      ScreenLoop loop =
+          new ScreenLoop(
+              cockpit,
+              watch,
+              surface,
+              console::pause,
+              System::nanoTime,
+              console::bytes,
+              remote ? BYTES_A_SECOND_REMOTE : BYTES_A_SECOND,
+              console::suspend,
+              () -> !console.signal().isEmpty());
+      loop.run();
+      boolean lost = loop.hungUp() || console.signal().equals("HUP");
+      console.giveBack();
+      if (lost) {
+        outlive(desk, watch, idle);
+        return DONE;
+      }
+      boolean interrupted = !console.signal().isEmpty() || cockpit.interrupted();
+      if (watch.snapshotWork().isPresent()) {
+        desk.stop();
+      }
+      return interrupted ? INTERRUPTED : DONE;
+    } catch (IOException e) {
+      // Writing failed: the terminal went away.
+      console.giveBack();
+      outlive(desk, watch, idle);
+      return DONE;
+    } catch (InterruptedException e) {
+      Thread.currentThread().interrupt();
+      console.giveBack();
+      desk.stop();
+      return INTERRUPTED;
+    } catch (RuntimeException | Error e) {
+      console.giveBack();
+      desk.stop();
+      System.err.println(crashed(e, options.crashLog()));
+      return CRASHED;
+    }
+  }
+
+  /** A lost session ends the screen, not the run: waits for the work in hand, unless it is live. */
+  private static void outlive(Desk desk, Watch watch, CountDownLatch idle) {
+    Optional<Work> work = watch.snapshotWork();
+    if (work.isEmpty()) {
+      return;
+    }
+    if (work.get() instanceof Work.Live) {
+      desk.stop();
+      return;
+    }
+    desk.listen(
+        event -> {
+          if (event instanceof Progress.WorkEnded) {
+            idle.countDown();
+          }
+        });
+    if (!desk.busy()) {
+      return;
+    }
+    try {
+      idle.await();
+    } catch (InterruptedException e) {
+      Thread.currentThread().interrupt();
+    }
+  }
+
+  /** Writes the stack trace to the log and tells in one paragraph what happened. */
+  static String crashed(Throwable e, Path log) {
+    StringWriter trace = new StringWriter();
+    e.printStackTrace(new PrintWriter(trace, true));
+    String where;
+    try {
+      Path parent = log.toAbsolutePath().getParent();
+      if (parent != null) {
+        Files.createDirectories(parent);
+      }
+      Files.writeString(log, trace + "\n", StandardOpenOption.CREATE, StandardOpenOption.APPEND);
+      where = "The details are in " + log + "; please report them.";
+    } catch (IOException | SecurityException io) {
+      where = "The details could not be written to " + log + " (" + io.getMessage() + ").";
+    }
+    return "The text interface ended by a mistake of its own ("
+        + e.getClass().getSimpleName()
+        + (e.getMessage() == null ? "" : ": " + e.getMessage())
+        + "). The board was told to stop; what was finished is kept. "
+        + where;
+  }
+}
