@@ -55,7 +55,7 @@ final class ResonanceMethod implements Method {
     a.startAgain();
     double beside = a.limits().carrierHertz().snap(lineHertz - BESIDE);
     Scan scan = a.playAside(shot(a, beside, Choices.gain(a), SEARCH_PULSE, 0, SEARCH_REST));
-    Fid fid = scan.fid();
+    Fid fid = withoutOffset(scan.fid());
     Detection d =
         Detection.of(
             fid,
@@ -94,6 +94,21 @@ final class ResonanceMethod implements Method {
         a, carrier, gain, Choices.pulse(a.limits(), pulse), phase, Choices.rest(a, rest));
   }
 
+  /**
+   * The FID without the receiver's DC offset, taken from its second half: the offset would spread
+   * into every short window of the detection.
+   */
+  private static Fid withoutOffset(Fid fid) {
+    int n = fid.points();
+    double re = 0;
+    double im = 0;
+    for (int k = n / 2; k < n; k++) {
+      re += fid.re(k) / (n - n / 2);
+      im += fid.im(k) / (n - n / 2);
+    }
+    return new Quiet(0, re, im).strip(fid);
+  }
+
   /** The noise of one sample as the noise rung found it, for this dwell time, V. */
   static double sigma(Acquisition a, Fid fid) {
     return a.known().need(Rung.NOISE, "noise_density") / Math.sqrt(fid.dwellSeconds());
@@ -101,11 +116,7 @@ final class ResonanceMethod implements Method {
 
   @Override
   public Reading read(Capture capture) throws NotMeasurable {
-    Averager average = new Averager();
-    for (int i = 0; i < capture.scans().size(); i++) {
-      average.add(capture.scans().get(i).fid(), BenchShots.firstPhase(capture.shots().get(i)));
-    }
-    Fid fid = average.mean();
+    Fid fid = DecayMethod.mean(capture.shots(), capture.scans());
     return Readings.resonance(fid, capture.scans());
   }
 
@@ -176,7 +187,7 @@ final class ResonanceMethod implements Method {
       for (int i = 0; i < averaged; i++) {
         average.add(a.play(shot).fid());
       }
-      Fid fid = average.mean();
+      Fid fid = withoutOffset(average.mean());
       double sigma = sigma(a, fid) / Math.sqrt(averaged);
       Detection d = detect(fid, sigma, carrier);
       threshold = d.thresholdSigma();
@@ -219,7 +230,7 @@ final class ResonanceMethod implements Method {
     private boolean isThereWithoutPulse(Shot shot, Detection d) throws BoardException {
       Receive receive = (Receive) shot.steps().get(shot.steps().size() - 1);
       Shot quiet = new Shot(shot.carrierHertz(), shot.gainDecibels(), 0, List.of(receive));
-      Fid fid = a.playAside(quiet).fid();
+      Fid fid = withoutOffset(a.playAside(quiet).fid());
       Detection without = Detection.of(fid, sigma(a, fid), List.of(), 1, FALSE_ALARM_PROBABILITY);
       return without.found()
           && Math.abs(without.offsetHertz() - d.offsetHertz()) < 200

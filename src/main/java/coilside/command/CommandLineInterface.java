@@ -21,7 +21,10 @@ import picocli.CommandLine.Mixin;
       LadderCommand.class,
       ShowCommand.class,
       ExportCommand.class,
-      PortsCommand.class
+      PortsCommand.class,
+      SimulateCommand.class,
+      CheckCommand.class,
+      ReportCommand.class
     },
     footer = {
       "",
@@ -54,6 +57,6 @@ public final class CommandLineInterface implements CoilsideCommand {
 
   @Override
   public int run(Output output) throws Exception {
-    throw new UsageException("not yet");
+    return InterfaceLauncher.run(common, output);
   }
 }

@@ -64,7 +64,12 @@ final class Actions {
           c.begin(new Work.Log(every, 0, Optional.empty(), look.logScans, true));
         });
     add('s', "stop", "Stop the work in hand; what is finished is kept", c::running, c::stop);
-    add('a', "arm/lock", "Arm the transmitter, or lock it again", () -> true, c::armOrLock);
+    add(
+        'a',
+        "arm/lock",
+        "Arm the transmitter, or lock it again",
+        () -> !c.simulated(),
+        c::armOrLock);
     add('e', "settings", "Edit sample and settings", () -> true, c::openSettings);
     add(
         'i',
@@ -127,7 +132,7 @@ final class Actions {
         "Move the view or the cursor right (also right arrow)",
         plot,
         () -> c.sideways(1));
-    add('0', "all", "Show all of the plot again", plot, c::showAll);
+    add('0', "all", "Show all of the plot; once more, the part around the peak", plot, c::showAll);
     add('y', "log scale", "Logarithmic or linear scale", plot, c::toggleLogarithmic);
     add('d', "residuals", "Residuals on or off", plot, () -> look.residuals = !look.residuals);
     add(

@@ -6,9 +6,17 @@ package coilside.terminal;
  */
 final class Autoscale {
   private static final int PATIENCE = 12;
+  private final double margin;
   private double low = Double.NaN;
   private double high = Double.NaN;
   private int tooWide;
+
+  /**
+   * @param margin room left beyond the data at each end, as a fraction of their span
+   */
+  Autoscale(double margin) {
+    this.margin = margin;
+  }
 
   double low() {
     return low;
@@ -41,8 +49,8 @@ final class Autoscale {
 
   private void take(double dataLow, double dataHigh, double span) {
     double step = new Axis(0, span, "").step(8);
-    low = Math.floor((dataLow - 0.02 * span) / step) * step;
-    high = Math.ceil((dataHigh + 0.02 * span) / step) * step;
+    low = Math.floor((dataLow - margin * span) / step) * step;
+    high = Math.ceil((dataHigh + margin * span) / step) * step;
     tooWide = 0;
   }
 }

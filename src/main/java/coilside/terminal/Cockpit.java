@@ -29,6 +29,7 @@ final class Cockpit {
   private final ScreenLayout layout;
   private Work pending;
   private long bestsHeard;
+  private Picture numbered;
   private boolean follow;
   private boolean done;
   private boolean interrupted;
@@ -59,6 +60,10 @@ final class Cockpit {
 
   List<Action> actions() {
     return actions;
+  }
+
+  boolean simulated() {
+    return desk.board().simulated();
   }
 
   boolean unicode() {
@@ -136,6 +141,11 @@ final class Cockpit {
 
   /** Starts work that waited for the work before it to end; follows the rung being measured. */
   void tick() {
+    Optional<Picture> live = watch.livePicture();
+    if (live.isPresent() && live.get() != numbered) {
+      numbered = live.get();
+      watch.headlines(Headline.of(numbered));
+    }
     Optional<Rung> measured = watch.snapshotMeasuring();
     if (follow && measured.isPresent() && measured.get() != look.chosen) {
       show(measured.get());

@@ -94,6 +94,7 @@ final class Console {
   /** Gives the terminal back, stops the whole job, and takes the terminal again afterwards. */
   void suspend() {
     try {
+      terminal.setCursorVisible(true);
       screen.stopScreen(false);
       terminal.lend();
       // The shell stops and continues with the group; its end tells that the job goes on.
@@ -118,6 +119,7 @@ final class Console {
       return;
     }
     try {
+      terminal.setCursorVisible(true);
       screen.stopScreen(false);
       terminal.close();
     } catch (IOException e) {

@@ -1,6 +1,10 @@
 package coilside.terminal;
 
 import coilside.bench.Picture;
+import coilside.bench.Rung;
+import coilside.fit.DecayFit;
+import coilside.fit.DecayResult;
+import coilside.fit.NotDetermined;
 import coilside.quantity.Measured;
 import coilside.quantity.Unit;
 import coilside.signal.Fid;
@@ -30,67 +34,34 @@ enum Headline {
   }
 
   /**
-   * The numbers of a decay with its fit; empty where there is no fit. The fit's samples give the
-   * values (they are free of noise), the residuals the noise, and the Cramer-Rao bound of one
-   * complex exponential with amplitude, phase, frequency and decay free the standard uncertainties:
-   * var(alpha) = var(omega) = sigma^2 S0/(A^2 D), D = S0 S2 - S1^2, S_k = sum t^k exp(-2 alpha t).
+   * The numbers of a decay, by the same estimator as the ladder's T2* rung; empty where it is not
+   * determined or the picture is of something else.
    */
-  static Map<Headline, Measured> of(Picture.Trace trace) {
+  static Map<Headline, Measured> of(Picture picture) {
     Map<Headline, Measured> out = new EnumMap<>(Headline.class);
-    if (trace.fit().isEmpty()) {
+    if (!(picture instanceof Picture.Trace trace)
+        || trace.rung() != Rung.T2STAR
+        || trace.fit().isEmpty()) {
       return out;
     }
     Fid fid = trace.fid();
-    Fid fit = trace.fit().get();
-    int n = Math.min(fid.points(), fit.points());
-    int from = Math.max(0, Math.min(n - 2, trace.usedFrom()));
-    if (n < 8 || from < 0) {
-      return out;
+    try {
+      DecayResult fit = DecayFit.fit(fid);
+      out.put(LINEWIDTH, fit.linewidthHertz());
+      out.put(T2STAR, fit.t2Star());
+      out.put(AMPLITUDE, fit.amplitude());
+      out.put(SNR, fit.snr());
+      Measured offset = fit.offsetHertz();
+      double larmor = fid.carrierHertz() + offset.value();
+      out.put(
+          FREQUENCY,
+          offset.hasUncertainty()
+              ? Measured.of(larmor, offset.u(), Unit.HERTZ)
+              : Measured.withoutUncertainty(larmor, Unit.HERTZ, offset.whyNoUncertainty()));
+    } catch (NotDetermined e) {
+      // The picture's own caption tells why there are no numbers.
+      out.clear();
     }
-    double start = fit.magnitude(from);
-    int to = from + 1;
-    while (to < n - 1 && fit.magnitude(to) > 0.3 * start) {
-      to++;
-    }
-    double alpha = Math.log(start / fit.magnitude(to)) / ((to - from) * fit.dwellSeconds());
-    if (!(alpha > 0) || !Double.isFinite(alpha) || !(start > 0)) {
-      return out;
-    }
-    double re = fit.re(from + 1) * fit.re(from) + fit.im(from + 1) * fit.im(from);
-    double im = fit.im(from + 1) * fit.re(from) - fit.re(from + 1) * fit.im(from);
-    double offset = Math.atan2(im, re) / (2 * Math.PI * fit.dwellSeconds());
-    double amplitude = start * Math.exp(alpha * fit.time(from));
-    double s0 = 0;
-    double s1 = 0;
-    double s2 = 0;
-    double squares = 0;
-    for (int k = from; k < n; k++) {
-      double t = fid.time(k);
-      double w = Math.exp(-2 * alpha * t);
-      s0 += w;
-      s1 += t * w;
-      s2 += t * t * w;
-      double dr = fid.re(k) - fit.re(k);
-      double di = fid.im(k) - fit.im(k);
-      squares += dr * dr + di * di;
-    }
-    double sigma = Math.sqrt(squares / (2.0 * (n - from)));
-    double d = s0 * s2 - s1 * s1;
-    double uAlpha = sigma / amplitude * Math.sqrt(s0 / d);
-    double uAmplitude = sigma * Math.sqrt(s2 / d);
-    if (!Double.isFinite(uAlpha) || !Double.isFinite(uAmplitude)) {
-      return out;
-    }
-    out.put(LINEWIDTH, Measured.of(alpha / Math.PI, uAlpha / Math.PI, Unit.HERTZ));
-    out.put(T2STAR, Measured.of(1 / alpha, uAlpha / (alpha * alpha), Unit.SECOND));
-    out.put(AMPLITUDE, Measured.of(amplitude, uAmplitude, Unit.VOLT));
-    if (sigma > 0) {
-      double snr = amplitude / sigma;
-      double relative = Math.hypot(uAmplitude / amplitude, 1 / Math.sqrt(4.0 * (n - from)));
-      out.put(SNR, Measured.of(snr, snr * relative, Unit.ONE));
-    }
-    out.put(
-        FREQUENCY, Measured.of(fid.carrierHertz() + offset, uAlpha / (2 * Math.PI), Unit.HERTZ));
     return out;
   }
 }

@@ -43,6 +43,8 @@ final class LogModels {
                   : List.of(Series.points("", Ink.SIGNAL, t, y, new double[0])),
               List.of(),
               0,
+              Double.NaN,
+              Double.NaN,
               caption));
     }
     return out;

@@ -1,5 +1,7 @@
 package coilside.terminal;
 
+import coilside.quantity.AgeFormat;
+import coilside.quantity.ConciseFormat;
 import coilside.quantity.Measured;
 import coilside.quantity.Unit;
 import java.time.Duration;
@@ -62,56 +64,19 @@ final class Numbers {
    * units of the last digits shown.
    */
   static String concise(Measured m, boolean unicode) {
-    String unit = unicode ? m.unit().pretty() : m.unit() == Unit.ONE ? "" : m.unit().symbol();
-    return concise(m.value(), m.u(), unit);
-  }
-
-  static String concise(double value, double u, String unit) {
-    if (!Double.isFinite(value)) {
-      return "-";
-    }
-    if (!(u > 0) || Double.isInfinite(u)) {
-      return si(value, unit, 4);
-    }
-    int e = exponent(Math.max(Math.abs(value), u), unit);
-    double scale = Math.pow(10, e);
-    double v = value / scale;
-    double s = u / scale;
-    int decimals = 1 - (int) Math.floor(Math.log10(s));
-    if (Math.round(s * Math.pow(10, decimals)) >= 100) {
-      decimals--;
-    }
-    decimals = Math.min(12, decimals);
-    if (decimals <= 0) {
-      return join(fixed(v, 0) + "(" + fixed(s, 0) + ")", prefix(e), unit);
-    }
-    // Brackets count units of the last digit, unless the uncertainty reaches above the point.
-    String bracket = s >= 1 ? fixed(s, decimals) : fixed(s * Math.pow(10, decimals), 0);
-    return join(grouped(fixed(v, decimals)) + "(" + bracket + ")", prefix(e), unit);
-  }
-
-  /** Digits behind the point in groups of three where there are more than four. */
-  private static String grouped(String number) {
-    int point = number.indexOf('.');
-    if (point < 0 || number.length() - point - 1 <= 4) {
-      return number;
-    }
-    StringBuilder out = new StringBuilder(number.substring(0, point + 1));
-    String tail = number.substring(point + 1);
-    for (int i = 0; i < tail.length(); i++) {
-      if (i > 0 && i % 3 == 0) {
-        out.append(' ');
-      }
-      out.append(tail.charAt(i));
-    }
-    return out.toString();
+    return unicode ? ConciseFormat.text(m) : ConciseFormat.ascii(m);
   }
 
   /** A named value of a finding, where its name asks for another form than its unit does. */
   static String named(String name, Measured m, boolean unicode) {
     return switch (name) {
-      case "field_spread" -> concise(m.value() * 1e6, m.u() * 1e6, "ppm");
-      case "b1_spread", "peak_fraction" -> concise(m.value() * 100, m.u() * 100, "%");
+      case "b1_spread", "peak_fraction" -> {
+        Measured percent =
+            m.hasUncertainty()
+                ? Measured.of(m.value() * 100, m.u() * 100, Unit.ONE)
+                : Measured.withoutUncertainty(m.value() * 100, Unit.ONE, m.whyNoUncertainty());
+        yield concise(percent, unicode) + " %";
+      }
       default -> concise(m, unicode);
     };
   }
@@ -136,17 +101,7 @@ final class Numbers {
   }
 
   static String age(Duration d) {
-    long s = Math.max(0, d.toSeconds());
-    if (s < 100) {
-      return s + " s";
-    }
-    if (s < 6000) {
-      return s / 60 + " min";
-    }
-    if (s < 48 * 3600) {
-      return s / 3600 + " h";
-    }
-    return s / 86400 + " d";
+    return AgeFormat.text(d.toMillis() / 1e3);
   }
 
   /** Time left as "0:07", "12:30" or "3:05:00". */

@@ -7,7 +7,7 @@ import coilside.signal.Spectrum;
 import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
-import java.util.Locale;
+import java.util.Optional;
 
 /** Turns the bench's pictures into plots. */
 final class PictureModels {
@@ -18,7 +18,7 @@ final class PictureModels {
     if (picture instanceof Picture.Curve curve) {
       return List.of(curve(curve, prefix));
     }
-    Picture.Trace trace = (Picture.Trace) picture;
+    Picture.Trace trace = Phased.of((Picture.Trace) picture);
     List<PlotModel> out = new ArrayList<>();
     out.add(fid(trace, part, prefix));
     trace.spectrum().ifPresent(s -> out.add(spectrum(s, trace.rung(), part, prefix)));
@@ -61,13 +61,6 @@ final class PictureModels {
       residuals.add(Series.line("", Ink.FAINT, ends, new double[2]));
       residuals.add(Series.points("", Ink.SECOND, x, r, u));
     }
-    // The line joining search points must not decide the ends of the axis.
-    if (!series.isEmpty() && series.get(0).form() == Series.Form.LINE) {
-      Series points =
-          series.stream().filter(s -> s.form() == Series.Form.POINTS).findFirst().orElseThrow();
-      series.remove(points);
-      series.add(0, points);
-    }
     return new PlotModel(
         prefix + c.rung().id() + ".curve",
         c.rung().id() + ": " + c.yName(),
@@ -78,6 +71,8 @@ final class PictureModels {
         series,
         residuals,
         0,
+        Double.NaN,
+        Double.NaN,
         c.caption());
   }
 
@@ -123,15 +118,15 @@ final class PictureModels {
               series.add(Series.line("fit", Ink.FIT, ft, Arrays.copyOfRange(fy, from, n)));
               double[] r = new double[n - from];
               Arrays.setAll(r, k -> y[from + k] - fy[from + k]);
-              residuals.add(Series.line("", Ink.SECOND, ft, r));
               double[] u = new double[2];
               Arrays.fill(u, rms(r));
               residuals.add(
                   Series.band("", new double[] {ft[0], ft[ft.length - 1]}, new double[2], u));
+              residuals.add(Series.line("", Ink.SECOND, ft, r));
             });
     return new PlotModel(
         prefix + t.rung().id() + ".fid",
-        "FID, " + part.words,
+        "FID, " + part.words + (Phased.applies(t) ? ", phased" : ""),
         "time",
         "s",
         "amplitude",
@@ -139,6 +134,8 @@ final class PictureModels {
         series,
         residuals,
         0,
+        Double.NaN,
+        Double.NaN,
         t.caption());
   }
 
@@ -162,13 +159,15 @@ final class PictureModels {
     if (part == Part.BOTH) {
       series.add(Series.line("imaginary", Ink.SECOND, f, s.im()));
     }
-    double noise = baseline(magnitude);
+    double noise = Peak.baseline(magnitude);
     double[] ends = {f[0], f[n - 1]};
     double[] half = {noise, noise};
-    series.add(Series.band("noise level", ends, new double[2], half));
+    series.add(0, Series.band("noise level", ends, new double[2], half));
+    Optional<Peak> peak = Peak.of(s, magnitude, noise);
+    double[] near = peak.map(Peak::around).orElse(new double[] {Double.NaN, Double.NaN});
     return new PlotModel(
         prefix + rung.id() + ".spectrum",
-        "spectrum, " + part.words + peakText(s, magnitude, noise),
+        "spectrum, " + part.words + peak.map(Peak::text).orElse(""),
         "offset",
         "Hz",
         "amplitude",
@@ -176,46 +175,8 @@ final class PictureModels {
         series,
         List.of(),
         s.carrierHertz(),
+        near[0],
+        near[1],
         "");
-  }
-
-  /** Noise of one component, from the median of a Rayleigh-distributed magnitude. */
-  static double baseline(double[] magnitude) {
-    double[] sorted = magnitude.clone();
-    Arrays.sort(sorted);
-    return sorted[sorted.length / 2] / Math.sqrt(2 * Math.log(2));
-  }
-
-  /**
-   * Place and full width at half height of the largest peak, where it stands clear of the noise.
-   */
-  private static String peakText(Spectrum s, double[] m, double noise) {
-    int p = 0;
-    for (int k = 1; k < m.length; k++) {
-      if (m[k] > m[p]) {
-        p = k;
-      }
-    }
-    if (!(m[p] > 6 * noise)) {
-      return "";
-    }
-    double left = crossing(m, p, -1);
-    double right = crossing(m, p, 1);
-    return String.format(
-        Locale.ROOT,
-        "; peak %s, width %s",
-        Numbers.si(s.offsetHertz(p), "Hz", 4),
-        Numbers.si((right - left) * s.stepHertz(), "Hz", 3));
-  }
-
-  private static double crossing(double[] m, int peak, int step) {
-    double half = m[peak] / 2;
-    for (int k = peak + step; k >= 0 && k < m.length; k += step) {
-      if (m[k] <= half) {
-        double f = (m[k - step] - half) / (m[k - step] - m[k]);
-        return k - step + step * f;
-      }
-    }
-    return step < 0 ? 0 : m.length - 1.0;
   }
 }

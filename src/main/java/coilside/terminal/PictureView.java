@@ -21,6 +21,7 @@ final class PictureView {
   private Source source = Source.RUNG;
   private int focus;
   private Boolean alone;
+  private boolean shownAlone;
   private List<PlotModel> shown = List.of();
 
   PictureView(Look look) {
@@ -50,7 +51,7 @@ final class PictureView {
   }
 
   void toggleAlone() {
-    alone = alone == null || !alone;
+    alone = !shownAlone;
   }
 
   boolean several() {
@@ -107,6 +108,7 @@ final class PictureView {
                     && !shown.get(0).residuals().isEmpty()
                     && look.residuals
                 : alone);
+    shownAlone = one;
     Plot plot = new Plot(canvas, look.style);
     if (one) {
       PlotModel m = shown.get(focus);
@@ -198,18 +200,18 @@ final class PictureView {
     for (Headline h : Headline.values()) {
       HeadlineHistory history = state.headlines().get(h);
       if (h != look.headline && history.latest().isPresent()) {
+        boolean named = h == Headline.T2STAR || h == Headline.SNR || area.width() >= 70;
         String text =
-            (h == Headline.FREQUENCY || h == Headline.T2STAR || h == Headline.LINEWIDTH
-                    ? ""
-                    : h.words + " ")
-                + (h == Headline.T2STAR ? "T2* " : "")
+            (named ? h.words + " " : "")
                 + Numbers.si(
                     history.latest().get().value(),
                     history.latest().get().unit().pretty(),
                     h == Headline.FREQUENCY ? 7 : 3)
-                + g.arrow(history.trend()).substring(0, 1);
+                + g.arrow(history.trend()).charAt(0);
         if (x + text.length() <= area.right()) {
-          x = canvas.put(x, area.y() + 1, text, Ink.PLAIN, area.right()) + 2;
+          x =
+              canvas.put(x, area.y() + 1, text, Ink.PLAIN, area.right())
+                  + (area.width() >= 70 ? 2 : 1);
         }
       }
     }

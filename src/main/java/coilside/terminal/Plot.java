@@ -44,7 +44,7 @@ final class Plot {
     if (residualPanel) {
       Area below = new Area(plot.x(), plot.bottom(), plot.width(), residualRows);
       Axis r = yAxis(model.residuals(), view.residualScale, false, x);
-      separator(area, below.y());
+      separator(area, below.y(), r.unitText());
       Area inner = new Area(below.x(), below.y() + 1, below.width(), below.height() - 1);
       yTicks(area, inner, r, false);
       drawSeries(model.residuals(), inner, x, r, false);
@@ -68,11 +68,11 @@ final class Plot {
       low = 0;
       high = 1;
     }
-    boolean line = model.series().stream().anyMatch(s -> s.form() == Series.Form.LINE);
-    boolean dense = line && model.series().get(0).form() == Series.Form.LINE;
+    boolean dense = model.series().stream().noneMatch(s -> s.form() == Series.Form.POINTS);
     if (dense) {
       // A trace fills the width exactly; only point plots get round ends.
       double span = high - low;
+      view.prefer((model.shownFrom() - low) / span, (model.shownTo() - low) / span);
       return new Axis(low + view.from() * span, low + view.to() * span, model.xUnit());
     }
     view.xScale.update(low, high);
@@ -160,9 +160,10 @@ final class Plot {
     };
   }
 
-  private void separator(Area area, int row) {
-    canvas.put(area.x(), row, "residual", Ink.FAINT, area.right());
-    for (int i = area.x() + 8; i < area.right(); i++) {
+  private void separator(Area area, int row, String unit) {
+    String name = unit.isEmpty() ? "residual " : "residual (" + unit + ") ";
+    int end = canvas.put(area.x(), row, name, Ink.AXIS, area.right());
+    for (int i = end; i < area.right(); i++) {
       canvas.put(i, row, glyphs.dotted(), Ink.AXIS);
     }
   }
@@ -171,7 +172,11 @@ final class Plot {
     for (int row = plot.y(); row < plot.bottom(); row++) {
       canvas.put(plot.x() - 1, row, glyphs.vertical(), Ink.AXIS);
     }
-    int atMost = Math.max(1, plot.height() / 3 + 1);
+    int wanted = Math.max(1, Math.min(9, plot.height() / 2));
+    while (!log && wanted < 2 * plot.height() && y.ticks(wanted).size() < 2) {
+      wanted++;
+    }
+    int atMost = wanted;
     List<Double> ticks = log ? decades(y, atMost) : y.ticks(atMost);
     int last = Integer.MAX_VALUE;
     for (double t : ticks) {
@@ -208,7 +213,7 @@ final class Plot {
     String yUnit =
         view.logarithmic() ? "" : new Axis(viewLow(), viewHigh(), model.yUnit()).unitText();
     canvas.put(area.x(), row, yUnit, Ink.AXIS, plot.x() - 1);
-    int atMost = Math.max(2, plot.width() / 10);
+    int atMost = Math.max(2, plot.width() / 8);
     int free = area.x();
     for (double t : x.ticks(atMost)) {
       int column = plot.x() + (int) Math.round(x.fraction(t) * (plot.width() - 1));
@@ -234,13 +239,23 @@ final class Plot {
   }
 
   private void drawSeries(List<Series> all, Area plot, Axis x, Axis y, boolean log) {
+    Dots dots = new Dots(canvas, plot, style);
     for (Series s : all) {
-      Dots dots = new Dots(canvas, plot, style);
       switch (s.form()) {
         case LINE -> line(dots, s, x, y, log);
         case BAND -> band(dots, s, x, y);
-        case POINTS -> points(dots, plot, s, x, y, log);
-        case MARKS -> marks(plot, s, x);
+        case POINTS -> errorBars(dots, s, x, y, log);
+        case MARKS -> {
+          /* whole characters, below */
+        }
+      }
+    }
+    dots.paint();
+    for (Series s : all) {
+      if (s.form() == Series.Form.POINTS) {
+        points(plot, s, x, y, log);
+      } else if (s.form() == Series.Form.MARKS) {
+        marks(plot, s, x);
       }
     }
   }
@@ -289,7 +304,6 @@ final class Plot {
       lastY = cy;
     }
     stroke(dots, current, low, high, s.ink());
-    dots.paint();
   }
 
   private static void stroke(Dots dots, int column, double low, double high, Ink ink) {
@@ -313,10 +327,9 @@ final class Plot {
         }
       }
     }
-    dots.paint();
   }
 
-  private void points(Dots dots, Area plot, Series s, Axis x, Axis y, boolean log) {
+  private void errorBars(Dots dots, Series s, Axis x, Axis y, boolean log) {
     for (int k = 0; k < s.x().length; k++) {
       double u = s.uncertainty(k);
       int column = (int) Math.round(column(dots, x, s.x()[k]));
@@ -324,7 +337,9 @@ final class Plot {
         stroke(dots, column, dotRow(dots, y, s.y()[k] + u), dotRow(dots, y, s.y()[k] - u), s.ink());
       }
     }
-    dots.paint();
+  }
+
+  private void points(Area plot, Series s, Axis x, Axis y, boolean log) {
     for (int k = 0; k < s.x().length; k++) {
       double fx = x.fraction(s.x()[k]);
       double fy = y.fraction(scaled(s.y()[k], log));

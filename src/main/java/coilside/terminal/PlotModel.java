@@ -14,6 +14,8 @@ import java.util.List;
  * @param series drawn in this order, later ones on top
  * @param residuals data minus fit, drawn in a panel of its own; empty when there is no fit
  * @param ppmOfHertz carrier for a reading in ppm; 0 where that makes no sense
+ * @param shownFrom start of the part worth looking at first; NaN for all of it
+ * @param shownTo its end
  * @param caption the result so far, one line
  */
 record PlotModel(
@@ -26,6 +28,8 @@ record PlotModel(
     List<Series> series,
     List<Series> residuals,
     double ppmOfHertz,
+    double shownFrom,
+    double shownTo,
     String caption) {
   PlotModel {
     series = List.copyOf(series);

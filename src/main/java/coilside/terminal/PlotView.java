@@ -2,11 +2,12 @@ package coilside.terminal;
 
 /** How one plot is looked at: zoom, pan, cursor, logarithmic scale, and the scales in use. */
 final class PlotView {
-  final Autoscale xScale = new Autoscale();
-  final Autoscale yScale = new Autoscale();
-  final Autoscale residualScale = new Autoscale();
+  final Autoscale xScale = new Autoscale(0);
+  final Autoscale yScale = new Autoscale(0.02);
+  final Autoscale residualScale = new Autoscale(0.02);
   private double from;
   private double to = 1;
+  private boolean touched;
   private double cursor = Double.NaN;
   private boolean logarithmic;
 
@@ -18,8 +19,24 @@ final class PlotView {
     return to;
   }
 
+  /**
+   * Looks at the part worth looking at first, until the operator zooms; it only moves when what is
+   * asked for differs by more than a quarter, so that the axis rests.
+   */
+  void prefer(double wantedFrom, double wantedTo) {
+    if (touched || Double.isNaN(wantedFrom) || Double.isNaN(wantedTo)) {
+      return;
+    }
+    double f = Math.max(0, wantedFrom);
+    double t = Math.min(1, wantedTo);
+    if (t - f > 1e-4 && Math.abs(f - from) + Math.abs(t - to) > 0.25 * (t - f)) {
+      from = f;
+      to = t;
+    }
+  }
+
   boolean zoomed() {
-    return from > 0 || to < 1;
+    return touched && (from > 0 || to < 1);
   }
 
   boolean logarithmic() {
@@ -52,6 +69,7 @@ final class PlotView {
 
   /** Zooms about the cursor, or the middle; a factor below 1 shows less. */
   void zoom(double factor) {
+    touched = true;
     double centre = from + (cursorOn() ? cursor : 0.5) * (to - from);
     double width = Math.max(1e-4, Math.min(1, (to - from) * factor));
     double share = (centre - from) / (to - from);
@@ -61,13 +79,16 @@ final class PlotView {
   }
 
   void pan(double by) {
+    touched = true;
     double shift = by * (to - from);
     from += shift;
     to += shift;
     keepInside();
   }
 
+  /** All of it; once more, the part worth looking at first. */
   void showAll() {
+    touched = !(touched && from == 0 && to == 1);
     from = 0;
     to = 1;
     xScale.reset();

@@ -82,9 +82,9 @@ final class ScreenLayout {
     boolean armed = desk.armed();
     boolean simulated = desk.board().simulated();
     if (simulated) {
-      right = "SIMULATED, may transmit";
+      right = "SIMULATED, armed";
     } else {
-      right = armed ? "ARMED: MAY TRANSMIT" : "transmitter locked";
+      right = armed ? "ARMED, may transmit" : "locked, may not transmit";
     }
     String doing = doing(state);
     int x = w - 1 - right.length();

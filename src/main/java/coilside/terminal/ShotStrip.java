@@ -87,7 +87,7 @@ final class ShotStrip {
           parts.add(part(Kind.WAIT, t, w.seconds(), ""));
         }
       } else if (step instanceof Receive r) {
-        parts.add(part(Kind.RECEIVE, t, r.seconds(), "receive " + r.points()));
+        parts.add(part(Kind.RECEIVE, t, r.seconds(), "receive " + r.points() + "|" + r.points()));
       } else if (step instanceof Repeat r) {
         int perTurn = r.steps().size();
         int shown = Math.max(1, Math.min(r.count(), (budget - 2) / Math.max(1, perTurn)));
@@ -99,7 +99,12 @@ final class ShotStrip {
             at += once;
           }
           int left = r.count() - shown;
-          parts.add(part(Kind.LEFT_OUT, at, left * once, glyphs.times() + left + " more"));
+          parts.add(
+              part(
+                  Kind.LEFT_OUT,
+                  at,
+                  left * once,
+                  glyphs.times() + left + " more|" + glyphs.times() + left));
         } else {
           for (int i = 0; i < r.count(); i++) {
             collect(r.steps(), at, parts, t90, t90Amplitude, glyphs, budget);
@@ -144,7 +149,7 @@ final class ShotStrip {
 
   private static int least(Part p) {
     return switch (p.kind()) {
-      case PULSE -> 5;
+      case PULSE -> Math.max(7, Math.min(10, p.above().length() + 2));
       case WAIT, DEAD_TIME -> 5;
       case RECEIVE -> 7;
       case REST -> 7;

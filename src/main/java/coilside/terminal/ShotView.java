@@ -77,7 +77,15 @@ final class ShotView {
     }
   }
 
-  private static void centre(Canvas canvas, int from, int end, int y, String text, Ink ink) {
+  /** Centres the first of the wordings, divided by bars, that fits; else the last, cut. */
+  private static void centre(Canvas canvas, int from, int end, int y, String wordings, Ink ink) {
+    String text = "";
+    for (String wording : wordings.split("\\|")) {
+      text = wording;
+      if (text.length() < end - from) {
+        break;
+      }
+    }
     int x = from + Math.max(0, (end - from - 1 - text.length()) / 2);
     canvas.put(x, y, text, ink, Math.max(x, end - (text.length() >= end - from ? 0 : 1)));
   }

@@ -49,17 +49,9 @@ final class Watch implements Consumer<Progress> {
   }
 
   @Override
-  public void accept(Progress event) {
-    // The arithmetic on samples stays outside the lock.
-    Map<Headline, Measured> numbers =
-        event instanceof Progress.PictureChanged p && p.picture() instanceof Picture.Trace t
-            ? Headline.of(t)
-            : Map.of();
-    synchronized (this) {
-      version++;
-      take(event);
-      numbers.forEach((name, value) -> headlines.get(name).add(value));
-    }
+  public synchronized void accept(Progress event) {
+    version++;
+    take(event);
   }
 
   private void take(Progress event) {
@@ -132,6 +124,16 @@ final class Watch implements Consumer<Progress> {
   synchronized void picture(Picture picture) {
     version++;
     pictures.putIfAbsent(picture.rung(), picture);
+  }
+
+  /** The picture of what runs live, for the drawing thread to take its numbers from. */
+  synchronized Optional<Picture> livePicture() {
+    return Optional.ofNullable(live);
+  }
+
+  synchronized void headlines(Map<Headline, Measured> numbers) {
+    version++;
+    numbers.forEach((name, value) -> headlines.get(name).add(value));
   }
 
   synchronized void clearHeadlines() {

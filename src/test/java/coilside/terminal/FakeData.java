@@ -13,6 +13,7 @@ final class FakeData {
   private static final int N = 2048;
   private static final double DWELL = 20e-6;
   private final Random random = new Random(1);
+  private int traces;
 
   double noise() {
     return random.nextGaussian();
@@ -85,7 +86,10 @@ final class FakeData {
     double[] fr = new double[N];
     double[] fi = new double[N];
     double sigma = 4e-7 / Math.sqrt(scans);
-    double t2 = rung == Rung.RINGDOWN ? 8e-6 : 8.3e-3 * (1 + 0.01 * noise());
+    double t2 =
+        rung == Rung.RINGDOWN
+            ? 8e-6
+            : 8.3e-3 * (1 + 0.01 * noise() + 0.05 * Math.sin(0.02 * traces++));
     double a = rung == Rung.NOISE ? 0 : 3e-5;
     double f = 132;
     double start = 60e-6;
@@ -114,7 +118,7 @@ final class FakeData {
     String caption =
         rung == Rung.NOISE
             ? "noise 1.23(2) nV/Hz^0.5; no line above 5 sigma"
-            : "T2* " + Numbers.concise(t2, 1e-4, "s") + ", linewidth 38.3(5) Hz";
+            : "T2* " + Numbers.si(t2, "s", 3) + ", linewidth 38.3(5) Hz";
     return new Picture.Trace(
         rung, fid, fit, 4, Optional.of(new Spectrum(sr, si, step, carrier)), List.of(), caption);
   }

@@ -48,6 +48,7 @@ final class FakeDesk implements Desk {
   private FakeScript script;
   private int begun;
   String armedBy = "";
+  boolean breaks;
 
   FakeDesk(InstantSource clock, boolean simulated) {
     this.clock = clock;
@@ -99,6 +100,12 @@ final class FakeDesk implements Desk {
     }
   }
 
+  void playSome(int events) {
+    for (int i = 0; i < events; i++) {
+      advance();
+    }
+  }
+
   void state(Rung rung, RungStatus.State state, List<String> reasons) {
     List<Finding> all = findings.get(rung);
     Optional<Finding> last =
@@ -122,6 +129,9 @@ final class FakeDesk implements Desk {
 
   @Override
   public BoardLimits limits() {
+    if (breaks) {
+      throw new UnsupportedOperationException("broken on purpose");
+    }
     return new BoardLimits(
         new BoardLimits.Range(1e6, 30e6, 1),
         new BoardLimits.Range(0, 60, 1),

@@ -13,6 +13,7 @@ final class TryScreen {
   public static void main(String[] args) {
     List<String> words = List.of(args);
     FakeDesk desk = new FakeDesk(InstantSource.system(), !words.contains("real"));
+    desk.breaks = words.contains("crash");
     long pause = words.contains("fast") ? 5 : 80;
     Thread player =
         new Thread(

@@ -200,30 +200,37 @@ public final class Firmware {
     }
   }
 
+  /**
+   * Carries out the command that the message is. One that looks like a command but holds a wrong
+   * number is refused only when it is no other command either.
+   */
   private boolean command(String message, long nowNanos) throws FirmwareRefusal {
+    FirmwareRefusal nearly = null;
+    boolean building = false;
     for (CommandName name : CommandName.values()) {
       Optional<Command> command = profile.command(name);
-      if (command.isPresent()) {
-        Optional<Map<String, Double>> told = understand(name, command.get(), message);
-        if (told.isPresent()) {
-          carryOut(name, command.get(), told.get(), nowNanos);
-          return true;
-        }
+      if (command.isEmpty()) {
+        continue;
+      }
+      Optional<Map<String, Double>> told = Optional.empty();
+      try {
+        told = dialect.understand(command.get().template(), message, values);
+      } catch (FirmwareRefusal e) {
+        nearly = nearly == null ? e : nearly;
+        building |= builds(name);
+      }
+      if (told.isPresent()) {
+        carryOut(name, command.get(), told.get(), nowNanos);
+        return true;
       }
     }
-    return false;
-  }
-
-  private Optional<Map<String, Double>> understand(
-      CommandName name, Command command, String message) throws FirmwareRefusal {
-    try {
-      return dialect.understand(command.template(), message, values);
-    } catch (FirmwareRefusal e) {
-      if (builds(name)) {
+    if (nearly != null) {
+      if (building) {
         shot.spoil();
       }
-      throw e;
+      throw nearly;
     }
+    return false;
   }
 
   private static boolean builds(CommandName name) {
@@ -397,6 +404,9 @@ public final class Firmware {
       sayError(e);
     } else if (errors.size() < LONGEST_ERROR_QUEUE) {
       errors.add(e);
+    } else {
+      errors.removeLast();
+      errors.add(FirmwareRefusal.queueOverflow());
     }
   }
 
