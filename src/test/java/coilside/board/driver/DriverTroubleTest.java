@@ -362,6 +362,38 @@ class DriverTroubleTest {
     assertTrue(refused.getMessage().contains("only one pulse"), refused.getMessage());
   }
 
+  /** A board that lives by the clock rests longer when the host dawdles; one that does not, not. */
+  @Test
+  void theRestIsToldAsItWas() throws BoardException {
+    TalkingLink link = new TalkingLink(DriverTroubleTest::plain);
+    Board board = open(PLAIN, link);
+    long[] due = {Long.MAX_VALUE};
+    link.board =
+        c -> {
+          if (c.startsWith("go ")) {
+            due[0] = link.getAsLong() + 500_190_000L;
+            return latin("ok\r\n");
+          }
+          return plain(c);
+        };
+    link.whenWaitingInVain =
+        () -> {
+          if (link.getAsLong() >= due[0]) {
+            due[0] = Long.MAX_VALUE;
+            link.say(join(block("data 0 64\r\n", 0), latin("done\r\n")));
+          }
+        };
+    assertEquals(0.5, board.play(usual()).restSeconds());
+    link.pass(2_000_000_000L);
+    assertEquals(2.5, board.play(usual()).restSeconds(), 0.05);
+
+    TalkingLink fast = new TalkingLink(DriverTroubleTest::plain);
+    Board ahead = open(PLAIN, fast);
+    ahead.play(usual());
+    fast.pass(2_000_000_000L);
+    assertEquals(0.5, ahead.play(usual()).restSeconds());
+  }
+
   /** The board of the reference page's worked example, as its sheet describes it. */
   @Test
   void theWorkedExampleOfTheReferencePageWorks() throws Exception {
