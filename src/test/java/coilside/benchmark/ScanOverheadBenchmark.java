@@ -4,8 +4,9 @@ import coilside.board.Board;
 import coilside.board.driver.Boards;
 import coilside.board.profile.DeviceProfile;
 import coilside.board.profile.ProfileReader;
-import coilside.board.simulated.AnalogBench;
+import coilside.board.simulated.Firmware;
 import coilside.board.simulated.FirmwareFaults;
+import coilside.board.simulated.FirmwareReceiver;
 import coilside.board.simulated.SimulatedBoards;
 import coilside.shot.Pulse;
 import coilside.shot.Receive;
@@ -57,12 +58,13 @@ public class ScanOverheadBenchmark {
         ProfileReader.read(Path.of("device-profiles", profileName + ".toml"))
             .profile()
             .orElseThrow();
-    AnalogBench.Trace trace = new AnalogBench.Trace(new double[4096], new double[4096]);
-    AnalogBench still =
-        new AnalogBench() {
+    FirmwareReceiver.Counts window =
+        new FirmwareReceiver.Counts(new double[4096], new double[4096]);
+    FirmwareReceiver still =
+        new FirmwareReceiver() {
           @Override
-          public List<Trace> play(Shot played) {
-            return List.of(trace);
+          public List<Counts> play(Shot played) {
+            return List.of(window);
           }
 
           @Override
@@ -76,8 +78,7 @@ public class ScanOverheadBenchmark {
     board =
         Boards.open(
             profile,
-            SimulatedBoards.inProcess(
-                profile, still, false, FirmwareFaults.none(), System::nanoTime),
+            SimulatedBoards.inProcess(new Firmware(profile, still, false, FirmwareFaults.none())),
             System::nanoTime,
             Clock.systemUTC(),
             true);
