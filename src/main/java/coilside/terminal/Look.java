@@ -1,6 +1,8 @@
 package coilside.terminal;
 
 import coilside.bench.Rung;
+import java.util.HashMap;
+import java.util.Map;
 
 /**
  * How the operator likes the screen, and the small numbers it starts work with; kept in the store.
@@ -8,6 +10,7 @@ import coilside.bench.Rung;
 final class Look {
   private final SettingsStore store;
   private final boolean unicode;
+  private final Map<String, String> written = new HashMap<>();
   DrawingStyle style;
   Part part;
   Rung chosen;
@@ -42,7 +45,7 @@ final class Look {
   }
 
   private <E extends Enum<E>> E choice(String name, E otherwise) {
-    String text = store.get("screen." + name).orElse("");
+    String text = store.get(name).orElse("");
     for (E e : otherwise.getDeclaringClass().getEnumConstants()) {
       if (e.name().equals(text)) {
         return e;
@@ -52,12 +55,12 @@ final class Look {
   }
 
   private boolean flag(String name, boolean otherwise) {
-    return store.get("screen." + name).map("true"::equals).orElse(otherwise);
+    return store.get(name).map("true"::equals).orElse(otherwise);
   }
 
   private double number(String name, double otherwise, double min, double max) {
     try {
-      double v = Double.parseDouble(store.get("screen." + name).orElse(""));
+      double v = Double.parseDouble(store.get(name).orElse(""));
       return v >= min && v <= max ? v : otherwise;
     } catch (NumberFormatException e) {
       return otherwise;
@@ -66,18 +69,25 @@ final class Look {
 
   void keep() {
     if (unicode) {
-      store.set("screen.style", style.name());
+      put("style", style.name());
     }
-    store.set("screen.part", part.name());
-    store.set("screen.rung", chosen.name());
-    store.set("screen.headline", headline.name());
-    store.set("screen.residuals", Boolean.toString(residuals));
-    store.set("screen.wide", Boolean.toString(wide));
-    store.set("screen.light", Boolean.toString(light));
-    store.set("screen.bell", Boolean.toString(bell));
-    store.set("screen.memory", Integer.toString(memoryScans));
-    store.set("screen.fid-scans", Integer.toString(fidScans));
-    store.set("screen.log-scans", Integer.toString(logScans));
-    store.set("screen.log-every", Double.toString(logEverySeconds));
+    put("part", part.name());
+    put("rung", chosen.name());
+    put("headline", headline.name());
+    put("residuals", Boolean.toString(residuals));
+    put("wide", Boolean.toString(wide));
+    put("light", Boolean.toString(light));
+    put("bell", Boolean.toString(bell));
+    put("memory", Integer.toString(memoryScans));
+    put("fid-scans", Integer.toString(fidScans));
+    put("log-scans", Integer.toString(logScans));
+    put("log-every", Double.toString(logEverySeconds));
+  }
+
+  /** Writing may cost a disk sync: only what changed is written. */
+  private void put(String name, String value) {
+    if (!value.equals(written.put(name, value))) {
+      store.set(name, value);
+    }
   }
 }

@@ -44,7 +44,7 @@ final class Plot {
     if (residualPanel) {
       Area below = new Area(plot.x(), plot.bottom(), plot.width(), residualRows);
       Axis r = yAxis(model.residuals(), view.residualScale, false, x);
-      separator(area, below.y());
+      separator(area, below.y(), r.unitText());
       Area inner = new Area(below.x(), below.y() + 1, below.width(), below.height() - 1);
       yTicks(area, inner, r, false);
       drawSeries(model.residuals(), inner, x, r, false);
@@ -160,9 +160,10 @@ final class Plot {
     };
   }
 
-  private void separator(Area area, int row) {
-    canvas.put(area.x(), row, "residual", Ink.FAINT, area.right());
-    for (int i = area.x() + 8; i < area.right(); i++) {
+  private void separator(Area area, int row, String unit) {
+    String name = unit.isEmpty() ? "residual " : "residual (" + unit + ") ";
+    int end = canvas.put(area.x(), row, name, Ink.AXIS, area.right());
+    for (int i = end; i < area.right(); i++) {
       canvas.put(i, row, glyphs.dotted(), Ink.AXIS);
     }
   }
@@ -171,7 +172,7 @@ final class Plot {
     for (int row = plot.y(); row < plot.bottom(); row++) {
       canvas.put(plot.x() - 1, row, glyphs.vertical(), Ink.AXIS);
     }
-    int wanted = Math.max(1, plot.height() / 2);
+    int wanted = Math.max(1, Math.min(9, plot.height() / 2));
     while (!log && wanted < 2 * plot.height() && y.ticks(wanted).size() < 2) {
       wanted++;
     }
@@ -238,13 +239,43 @@ final class Plot {
   }
 
   private void drawSeries(List<Series> all, Area plot, Axis x, Axis y, boolean log) {
+    Dots dots = new Dots(canvas, plot, style);
     for (Series s : all) {
-      Dots dots = new Dots(canvas, plot, style);
       switch (s.form()) {
         case LINE -> line(dots, s, x, y, log);
         case BAND -> band(dots, s, x, y);
-        case POINTS -> points(dots, plot, s, x, y, log);
-        case MARKS -> marks(plot, s, x);
+        case POINTS -> {
+          errorBars(dots, s, x, y, log);
+          if (crowded(s, plot)) {
+            singleDots(dots, s, x, y, log);
+          }
+        }
+        case MARKS -> {
+          /* whole characters, below */
+        }
+      }
+    }
+    dots.paint();
+    for (Series s : all) {
+      if (s.form() == Series.Form.POINTS && !crowded(s, plot)) {
+        points(plot, s, x, y, log);
+      } else if (s.form() == Series.Form.MARKS) {
+        marks(plot, s, x);
+      }
+    }
+  }
+
+  /** More points than whole characters could tell apart. */
+  private static boolean crowded(Series s, Area plot) {
+    return s.x().length > plot.width();
+  }
+
+  private void singleDots(Dots dots, Series s, Axis x, Axis y, boolean log) {
+    for (int k = 0; k < s.x().length; k++) {
+      double column = column(dots, x, s.x()[k]);
+      double row = dotRow(dots, y, scaled(s.y()[k], log));
+      if (Double.isFinite(row)) {
+        dots.dot((int) Math.round(column), (int) Math.round(row), s.ink());
       }
     }
   }
@@ -293,7 +324,6 @@ final class Plot {
       lastY = cy;
     }
     stroke(dots, current, low, high, s.ink());
-    dots.paint();
   }
 
   private static void stroke(Dots dots, int column, double low, double high, Ink ink) {
@@ -317,10 +347,9 @@ final class Plot {
         }
       }
     }
-    dots.paint();
   }
 
-  private void points(Dots dots, Area plot, Series s, Axis x, Axis y, boolean log) {
+  private void errorBars(Dots dots, Series s, Axis x, Axis y, boolean log) {
     for (int k = 0; k < s.x().length; k++) {
       double u = s.uncertainty(k);
       int column = (int) Math.round(column(dots, x, s.x()[k]));
@@ -328,7 +357,9 @@ final class Plot {
         stroke(dots, column, dotRow(dots, y, s.y()[k] + u), dotRow(dots, y, s.y()[k] - u), s.ink());
       }
     }
-    dots.paint();
+  }
+
+  private void points(Area plot, Series s, Axis x, Axis y, boolean log) {
     for (int k = 0; k < s.x().length; k++) {
       double fx = x.fraction(s.x()[k]);
       double fy = y.fraction(scaled(s.y()[k], log));

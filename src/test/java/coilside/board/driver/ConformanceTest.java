@@ -10,6 +10,8 @@ import coilside.board.link.Link;
 import coilside.board.profile.DeviceProfile;
 import coilside.board.profile.ProfileReader;
 import coilside.board.simulated.AnalogBench;
+import coilside.board.simulated.Firmware;
+import coilside.board.simulated.FirmwareAdc;
 import coilside.board.simulated.FirmwareFaults;
 import coilside.board.simulated.SimulatedBoards;
 import coilside.shot.Receive;
@@ -82,7 +84,8 @@ class ConformanceTest {
   private static List<Row> run(
       DeviceProfile board, DeviceProfile host, NoiseBench bench, boolean transmit, boolean paced) {
     Link link =
-        SimulatedBoards.inProcess(board, bench, paced, FirmwareFaults.none(), System::nanoTime);
+        SimulatedBoards.inProcess(
+            new Firmware(board, new FirmwareAdc(board, bench), paced, FirmwareFaults.none()));
     return Conformance.run(host, link, System::nanoTime, Clock.systemUTC(), transmit, row -> {});
   }
 

@@ -263,6 +263,36 @@ class BenchAgainstPhysicsTest {
     }
   }
 
+  /** With c = 0.2 half the amplitude turns 0.5 (1 + 0.2 . 0.75) = 0.575 as fast as the whole. */
+  @Test
+  void theAmplifierCompresses() {
+    assertEquals(0.575, new Transmitter(T90, 0.2, false).drive(0.5), 1e-15);
+    assertEquals(1, new Transmitter(T90, 0.2, false).drive(1), 1e-15);
+    SimulatedBench bench =
+        new SimulatedBench(
+            new Scenario(
+                "test",
+                "",
+                new Sample(VOLTS, 0, List.of(new Component(1, 1e3, 1e3, 0))),
+                new Magnet(
+                    LARMOR, 25, 0, Shape.GAUSSIAN, 0, 0, 0, new TemperatureCourse(25, 0, 0, 1)),
+                new Coil(LARMOR, 1e-6, 0, 0),
+                new Transmitter(T90, 0.2, false),
+                new Receiver(0, Double.POSITIVE_INFINITY, 0, 0, 0, 0, false),
+                List.of()),
+            SimulatedDigitiser.ideal(),
+            7);
+    Shot half =
+        new Shot(
+            LARMOR,
+            0,
+            0,
+            List.of(new Pulse(T90, 0, 0.5), new Wait(5e-6), new Receive(32, 5e-6, 0)));
+    double seen = -bench.play(half).get(0).q()[0] / VOLTS;
+    assertEquals(Math.sin(0.575 * Math.PI / 2), seen, 1e-5);
+    assertEquals(T90 / 0.575, bench.truth().pulse90Seconds(0.5), 1e-12);
+  }
+
   @Test
   void oneSeedOneResult() {
     Shot shot = single(LARMOR - 100, 0.1, T90, 256, 5e-6);

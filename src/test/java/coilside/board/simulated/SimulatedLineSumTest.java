@@ -2,6 +2,7 @@ package coilside.board.simulated;
 
 import static org.junit.jupiter.api.Assertions.assertEquals;
 
+import java.util.Arrays;
 import java.util.SplittableRandom;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
@@ -26,14 +27,25 @@ class SimulatedLineSumTest {
     x[0] = -Math.PI;
     x[1] = Math.PI;
     x[2] = 0;
-    double[] re = new double[n + 3];
-    double[] im = new double[n + 3];
-    double[] re2 = new double[n + 3];
-    double[] im2 = new double[n + 3];
+    double[] re = new double[n];
+    double[] im = new double[n];
+    double[] re2 = new double[n];
+    double[] im2 = new double[n];
     SimulatedLineSum sum = new SimulatedLineSum();
-    sum.add(a, b, x, 0, lines, re, im, 3, n);
-    SimulatedLineSum.direct(a, b, x, 0, lines, re2, im2, 3, n);
-    for (int k = 0; k < n + 3; k++) {
+    SimulatedLineSum.Plan plan = new SimulatedLineSum.Plan(x, n);
+    sum.add(plan, a, b, 0, lines / 2, re, im, n);
+    sum.add(plan, a, b, lines / 2, lines, re, im, n);
+    SimulatedLineSum.direct(
+        Arrays.stream(x).map(Math::cos).toArray(),
+        Arrays.stream(x).map(Math::sin).toArray(),
+        a,
+        b,
+        0,
+        lines,
+        re2,
+        im2,
+        n);
+    for (int k = 0; k < n; k++) {
       assertEquals(re2[k], re[k], 1e-6 * size);
       assertEquals(im2[k], im[k], 1e-6 * size);
     }
