@@ -339,7 +339,7 @@ final class Exponentials {
    */
   static Start start(double[] re, double[] im) {
     int longest = Integer.highestOneBit(re.length);
-    double[] z = new double[2 * longest];
+    double[] z = Scratch.transform(2 * longest);
     Start best = null;
     double trials = 0;
     for (int n = longest; n >= Math.min(longest, 16); n /= 4) {

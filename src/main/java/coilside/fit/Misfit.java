@@ -22,11 +22,11 @@ record Misfit(double statistic, double threshold, double lambdaRe, double lambda
     return (int) Math.max(1, Math.min(most, Math.floor(-1 / (64 * lambdaRe))));
   }
 
-  static Misfit of(double[] re, double[] im, double sigma, double lambdaRe, double lambdaIm) {
-    int n = re.length;
+  static Misfit of(
+      double[] re, double[] im, int n, double sigma, double lambdaRe, double lambdaIm) {
     int block = block(n, lambdaRe);
     int blocks = n / block;
-    double[][] z = blocks(re, im, block, lambdaIm);
+    double[][] z = blocks(re, im, n, block, lambdaIm);
     Exponentials.Start start = Exponentials.start(z[0], z[1]);
     double sigmaBlock = sigma / Math.sqrt(block);
     return new Misfit(
@@ -37,8 +37,8 @@ record Misfit(double statistic, double threshold, double lambdaRe, double lambda
   }
 
   /** Block means of y_k exp(-i omega k); each stands at the middle of its block. */
-  static double[][] blocks(double[] re, double[] im, int block, double omega) {
-    int blocks = re.length / block;
+  static double[][] blocks(double[] re, double[] im, int n, int block, double omega) {
+    int blocks = n / block;
     double[] outRe = new double[blocks];
     double[] outIm = new double[blocks];
     double stepRe = Math.cos(omega);
