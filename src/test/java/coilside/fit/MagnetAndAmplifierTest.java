@@ -24,10 +24,10 @@ class MagnetAndAmplifierTest {
     assertThrows(NotDetermined.class, () -> MagnetPart.decayTime(seconds(0.1), seconds(0.1001)));
   }
 
-  /** (gamma G)^2 D TE^2/12 with gamma of the free proton, worked to 30 digits. */
+  /** (gamma G)^2 D TE^2/12 with gamma of the shielded proton, worked to 30 digits. */
   @Test
   void diffusionInAGradient() {
-    double gamma = 2.6752218708e8;
+    double gamma = 2.675153194e8;
     assertEquals(0.137106, MagnetPart.diffusionRate(gamma, 0.1, 2.299e-9, 1e-3), 1e-6);
     assertEquals(0.00137106, MagnetPart.diffusionRate(gamma, 0.01, 2.299e-9, 1e-3), 1e-8);
     assertEquals(0.548422, MagnetPart.diffusionRate(gamma, 1, 2.299e-9, 2e-4), 2e-6);
