@@ -4,6 +4,8 @@ import coilside.bench.Desk;
 import coilside.bench.Progress;
 import coilside.bench.Work;
 import java.io.IOException;
+import java.io.OutputStream;
+import java.io.PrintStream;
 import java.io.PrintWriter;
 import java.io.StringWriter;
 import java.nio.charset.StandardCharsets;
@@ -85,13 +87,39 @@ public final class TextInterface {
         System.err.println(tooSmall(w, h));
         return NO_TERMINAL;
       }
-      return onScreen(desk, options, console);
+      PrintStream errors = System.err;
+      try (PrintStream log = crashLog(options.crashLog())) {
+        // Whatever is printed while the screen is drawn would tear it.
+        System.setErr(log);
+        return onScreen(desk, options, console, errors);
+      } finally {
+        System.setErr(errors);
+      }
     } catch (IOException e) {
       System.err.println(
           "The terminal could not be set up: "
               + e.getMessage()
               + ". Check that stty works here, or use 'coilside ready'.");
       return NO_TERMINAL;
+    }
+  }
+
+  private static PrintStream crashLog(Path log) {
+    try {
+      makeFolder(log);
+      return new PrintStream(
+          Files.newOutputStream(log, StandardOpenOption.CREATE, StandardOpenOption.APPEND),
+          true,
+          StandardCharsets.UTF_8);
+    } catch (IOException | SecurityException e) {
+      return new PrintStream(OutputStream.nullOutputStream(), false, StandardCharsets.UTF_8);
+    }
+  }
+
+  private static void makeFolder(Path log) throws IOException {
+    Path parent = log.toAbsolutePath().getParent();
+    if (parent != null) {
+      Files.createDirectories(parent);
     }
   }
 
@@ -107,10 +135,23 @@ public final class TextInterface {
         + ". Enlarge the window or choose a smaller font, or use 'coilside ready'.";
   }
 
-  private static int onScreen(Desk desk, TerminalOptions options, Console console) {
+  private static int onScreen(
+      Desk desk, TerminalOptions options, Console console, PrintStream errors) {
     CountDownLatch idle = new CountDownLatch(1);
     Watch watch = new Watch(options.clock());
     desk.listen(watch);
+    Thread.setDefaultUncaughtExceptionHandler(
+        (thread, e) -> {
+          e.printStackTrace();
+          watch.note(
+              true,
+              "A mistake of the program's own in its part '"
+                  + thread.getName()
+                  + "': "
+                  + e
+                  + ". Quit and start again; the details are in "
+                  + options.crashLog());
+        });
     boolean remote =
         options.environment().containsKey("SSH_CONNECTION")
             || options.environment().containsKey("SSH_TTY");
@@ -154,7 +195,7 @@ public final class TextInterface {
     } catch (RuntimeException | Error e) {
       console.giveBack();
       desk.stop();
-      System.err.println(crashed(e, options.crashLog()));
+      errors.println(crashed(e, options.crashLog()));
       return CRASHED;
     }
   }
@@ -191,10 +232,7 @@ public final class TextInterface {
     e.printStackTrace(new PrintWriter(trace, true));
     String where;
     try {
-      Path parent = log.toAbsolutePath().getParent();
-      if (parent != null) {
-        Files.createDirectories(parent);
-      }
+      makeFolder(log);
       Files.writeString(log, trace + "\n", StandardOpenOption.CREATE, StandardOpenOption.APPEND);
       where = "The details are in " + log + "; please report them.";
     } catch (IOException | SecurityException io) {
