@@ -107,7 +107,7 @@ public final class DecayFit {
       throw NotDetermined.of(
           Reason.NO_SIGNAL, "all samples are zero", "check that the receiver samples");
     }
-    Exponentials.Start start = Exponentials.start(fid.re(), fid.im());
+    ExponentialStart start = ExponentialStart.of(fid.re(), fid.im());
     Exponentials one =
         new Exponentials(
             fid.re(),

@@ -4,7 +4,7 @@ import coilside.signal.Tail;
 
 /**
  * What residuals hold near a line: they are turned to the line's frequency, averaged in blocks of
- * about T2*&#47;64, and searched as {@link Exponentials#start} does for a signal.
+ * about T2*&#47;64, and searched as {@link ExponentialStart} does for a signal.
  *
  * @param statistic largest |X|/sigma_X
  * @param threshold what noise exceeds once in a thousand times
@@ -27,7 +27,7 @@ record Misfit(double statistic, double threshold, double lambdaRe, double lambda
     int block = block(n, lambdaRe);
     int blocks = n / block;
     double[][] z = blocks(re, im, n, block, lambdaIm);
-    Exponentials.Start start = Exponentials.start(z[0], z[1]);
+    ExponentialStart start = ExponentialStart.of(z[0], z[1]);
     double sigmaBlock = sigma / Math.sqrt(block);
     return new Misfit(
         Math.sqrt(start.powerOverSamples()) / sigmaBlock,
