@@ -14,6 +14,7 @@ import java.nio.file.Path;
 import java.nio.file.StandardOpenOption;
 import java.util.Optional;
 import java.util.concurrent.CountDownLatch;
+import java.util.concurrent.TimeUnit;
 
 /**
  * The text interface: runs the screen, or its line-by-line form, on a desk until the operator
@@ -137,7 +138,6 @@ public final class TextInterface {
 
   private static int onScreen(
       Desk desk, TerminalOptions options, Console console, PrintStream errors) {
-    CountDownLatch idle = new CountDownLatch(1);
     Watch watch = new Watch(options.clock());
     desk.listen(watch);
     Thread.setDefaultUncaughtExceptionHandler(
@@ -174,9 +174,9 @@ public final class TextInterface {
       boolean lost = loop.hungUp() || console.signal().equals("HUP");
       console.giveBack();
       if (lost) {
-        outlive(desk, watch, idle);
-        return DONE;
+        return outlive(desk, watch, console);
       }
+      console.leaving();
       boolean interrupted = !console.signal().isEmpty() || cockpit.interrupted();
       if (watch.snapshotWork().isPresent()) {
         desk.stop();
@@ -185,8 +185,7 @@ public final class TextInterface {
     } catch (IOException e) {
       // Writing failed: the terminal went away.
       console.giveBack();
-      outlive(desk, watch, idle);
-      return DONE;
+      return outlive(desk, watch, console);
     } catch (InterruptedException e) {
       Thread.currentThread().interrupt();
       console.giveBack();
@@ -200,30 +199,35 @@ public final class TextInterface {
     }
   }
 
-  /** A lost session ends the screen, not the run: waits for the work in hand, unless it is live. */
-  private static void outlive(Desk desk, Watch watch, CountDownLatch idle) {
-    Optional<Work> work = watch.snapshotWork();
-    if (work.isEmpty()) {
-      return;
-    }
-    if (work.get() instanceof Work.Live) {
-      desk.stop();
-      return;
-    }
+  /**
+   * A lost session ends the screen, not the run: waits for the work in hand, unless it is live, or
+   * until TERM or INT ends that too.
+   */
+  private static int outlive(Desk desk, Watch watch, Console console) {
+    CountDownLatch ended = new CountDownLatch(1);
     desk.listen(
         event -> {
           if (event instanceof Progress.WorkEnded) {
-            idle.countDown();
+            ended.countDown();
           }
         });
-    if (!desk.busy()) {
-      return;
+    Optional<Work> work = watch.snapshotWork();
+    if (work.isPresent() && work.get() instanceof Work.Live) {
+      desk.stop();
+      return DONE;
     }
     try {
-      idle.await();
+      while (desk.busy() && !ended.await(200, TimeUnit.MILLISECONDS)) {
+        if (!console.signal().isEmpty() && !console.signal().equals("HUP")) {
+          console.leaving();
+          desk.stop();
+          return INTERRUPTED;
+        }
+      }
     } catch (InterruptedException e) {
       Thread.currentThread().interrupt();
     }
+    return DONE;
   }
 
   /** Writes the stack trace to the log and tells in one paragraph what happened. */
