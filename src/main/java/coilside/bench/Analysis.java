@@ -1,5 +1,11 @@
 package coilside.bench;
 
+import coilside.shot.Shot;
+import coilside.signal.Fid;
+import coilside.signal.Scan;
+import java.util.ArrayList;
+import java.util.List;
+
 /** Reads a kept capture again, the way it was read when it was taken. */
 public final class Analysis {
   private Analysis() {}
@@ -31,6 +37,28 @@ public final class Analysis {
     } catch (NotMeasurable e) {
       throw new Refused(e.refusal());
     }
+  }
+
+  /**
+   * The average of a capture's scans, each turned back by the phase of its first pulse: the
+   * receiver side of the phase cycle. Receive-only scans are left out.
+   *
+   * @throws IllegalArgumentException when the scans differ in points or dwell time, or none has a
+   *     pulse
+   */
+  public static Fid average(Capture capture) {
+    List<Shot> shots = new ArrayList<>();
+    List<Scan> scans = new ArrayList<>();
+    for (int i = 0; i < capture.shots().size(); i++) {
+      if (!capture.shots().get(i).receiveOnly()) {
+        shots.add(capture.shots().get(i));
+        scans.add(capture.scans().get(i));
+      }
+    }
+    if (scans.isEmpty()) {
+      throw new IllegalArgumentException("the capture holds only receive-only scans");
+    }
+    return DecayMethod.mean(shots, scans);
   }
 
   private static Method method(String purpose) {

@@ -1,11 +1,9 @@
 package coilside.bench;
 
 import coilside.board.BoardException;
-import coilside.fit.DecayBound;
 import coilside.fit.DecayFit;
 import coilside.fit.DecayResult;
 import coilside.fit.NotDetermined;
-import coilside.quantity.Measured;
 import coilside.shot.Pulse;
 import coilside.shot.Receive;
 import coilside.shot.Shot;
@@ -57,7 +55,7 @@ final class DecayMethod implements Method {
         break;
       }
       try {
-        DecayResult fit = DecayFit.fit(mean(a.scans()));
+        DecayResult fit = DecayFit.fit(mean(a.shots(), a.scans()));
         double miss = fit.t2Star().relative() / target;
         if (miss > 1) {
           double more = a.scans().size() * miss * miss;
@@ -75,7 +73,7 @@ final class DecayMethod implements Method {
 
   private static void show(Acquisition a) {
     try {
-      a.show(Readings.decay(mean(a.scans()), a.scans(), Double.NaN).picture());
+      a.show(Readings.decay(mean(a.shots(), a.scans()), a.scans(), Double.NaN).picture());
     } catch (NotMeasurable e) {
       a.say(e.getMessage());
     }
@@ -126,7 +124,11 @@ final class DecayMethod implements Method {
     }
   }
 
-  /** Scan {@code number} of an FID: its phases follow from its place in the phase cycle. */
+  /**
+   * Scan {@code number} of an FID: its phase follows from its place in the phase cycle. The
+   * receiver side of the cycle is done on the samples, where it turns the receiver's own errors
+   * away.
+   */
   static Shot shot(
       Acquisition a, int number, String cycle, int points, double dwell, OptionalDouble carrier) {
     double phase = cycle.equals("none") ? 0 : number % CYCLE * Math.PI / 2;
@@ -145,7 +147,7 @@ final class DecayMethod implements Method {
         List.of(
             new Pulse(Choices.pulse90(a), phase, Choices.amplitude(a)),
             new Wait(Choices.delay(a)),
-            new Receive(w.points(), w.dwellSeconds(), phase)));
+            new Receive(w.points(), w.dwellSeconds(), 0)));
   }
 
   private static double repetition(Acquisition a) {
@@ -154,23 +156,20 @@ final class DecayMethod implements Method {
         .orElse(GainMethod.RECOVERED * a.guesses().t1Seconds().orElse(0.3));
   }
 
-  static Fid mean(List<Scan> scans) {
+  /** The average of scans, each turned back by the phase of its first pulse. */
+  static Fid mean(List<Shot> shots, List<Scan> scans) {
     Averager average = new Averager();
-    scans.forEach(s -> average.add(s.fid()));
+    for (int i = 0; i < scans.size(); i++) {
+      average.add(scans.get(i).fid(), BenchShots.firstPhase(shots.get(i)));
+    }
     return average.mean();
   }
 
   @Override
   public Reading read(Capture capture) throws NotMeasurable {
     return Readings.decay(
-        mean(capture.scans()), capture.scans(), Notes.number(capture, "target", Double.NaN));
-  }
-
-  /** The uncertainty of T2* that this many scans would bring, relative. */
-  static double bound(DecayResult fit, Fid fid, double scansRatio) {
-    Measured t = fit.t2Star();
-    return DecayBound.relativeT2Star(
-            fit.snr().value(), t.value(), fid.dwellSeconds(), fid.points() * fid.dwellSeconds())
-        / Math.sqrt(scansRatio);
+        mean(capture.shots(), capture.scans()),
+        capture.scans(),
+        Notes.number(capture, "target", Double.NaN));
   }
 }

@@ -31,7 +31,7 @@ final class LiveRun {
     while (!stopped.getAsBoolean()) {
       Shot shot = request.transmit() ? pulse(number) : listen();
       Scan scan = a.playAside(shot);
-      average.add(scan.fid());
+      average.add(scan.fid(), BenchShots.firstPhase(shot));
       number++;
       a.show(request.transmit() ? decay(average.mean(), scan) : noise(average.mean()));
     }

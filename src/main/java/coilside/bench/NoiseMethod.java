@@ -34,8 +34,9 @@ final class NoiseMethod implements Method {
     double dwell = Choices.wideDwell(a.limits());
     int points = Choices.points(a.limits(), POINTS);
     double carrier = Choices.carrier(a);
+    double rest = Choices.rest(a, a.known().value(Rung.T1, "repetition_time").orElse(0.1));
     while (a.scans().size() < RECORDS) {
-      Shot shot = new Shot(carrier, gain, 0, List.of(new Receive(points, dwell, 0)));
+      Shot shot = new Shot(carrier, gain, rest, List.of(new Receive(points, dwell, 0)));
       Scan scan = a.play(shot);
       if (scan.peakFraction() > TOO_FULL) {
         double lower = a.limits().gainDecibels().snap(gain - 12);

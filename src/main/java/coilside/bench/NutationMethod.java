@@ -45,7 +45,7 @@ final class NutationMethod implements Method {
     a.note("target", a.settings().pulse90Target());
     NutationFit.Options options = NutationFit.Options.between(shortest90, longest90);
     NutationPlan plan = new NutationPlan(options, a.settings().pulse90Target(), shortest, longest);
-    Quiet.play(a, BenchShots.single(a, gain, longest, 0, 0));
+    Quiet.play(a, BenchShots.single(a, gain, longest, 0, rest));
     double width = Choices.pulse(a.limits(), Math.sqrt(shortest90 * longest90) / 2);
     while (a.scansLeft() > 0) {
       Scan scan = a.play(BenchShots.single(a, gain, width, 0, rest));
@@ -55,7 +55,7 @@ final class NutationMethod implements Method {
             String.format(
                 Locale.ROOT, "the signal clips: measuring again at a gain of %.0f dB", gain));
         a.startAgain();
-        Quiet.play(a, BenchShots.single(a, gain, longest, 0, 0));
+        Quiet.play(a, BenchShots.single(a, gain, longest, 0, rest));
         continue;
       }
       NutationPlan.Advice advice = advice(a, plan, width);

@@ -18,7 +18,10 @@ import java.util.List;
  */
 record Quiet(double sigma, double offsetRe, double offsetIm) {
 
-  /** Plays the receive-only scan that belongs to shots like this one. */
+  /**
+   * Plays the receive-only scan that belongs to shots like this one, after the same rest: what is
+   * left of an earlier signal would pass for an offset.
+   */
   static void play(Acquisition a, Shot like) throws BoardException {
     Receive window =
         (Receive) like.flat().stream().filter(Receive.class::isInstance).findFirst().orElseThrow();
@@ -27,7 +30,7 @@ record Quiet(double sigma, double offsetRe, double offsetIm) {
         new Shot(
             like.carrierHertz(),
             like.gainDecibels(),
-            0,
+            like.restSeconds(),
             List.of(new Receive(points, window.dwellSeconds(), 0))));
   }
 

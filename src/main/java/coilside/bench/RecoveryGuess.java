@@ -33,7 +33,7 @@ final class RecoveryGuess {
       best[t] = misfit(t1(t), rests, amplitudes);
       lowest = Math.min(lowest, best[t]);
     }
-    double model = 0.01 * largest(amplitudes);
+    double model = 0.003 * largest(amplitudes);
     double allowed = lowest + 4 * (sigma * sigma + model * model);
     double longest = t1(0);
     for (int t = 0; t < STEPS; t++) {

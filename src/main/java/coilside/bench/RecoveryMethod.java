@@ -44,8 +44,9 @@ final class RecoveryMethod implements Method {
     double longRest = Choices.rest(a, GainMethod.RECOVERED * guess);
     Quiet.play(a, single(a, longRest));
     a.play(inversion ? inversion(a, GainMethod.RECOVERED * guess, longRest) : single(a, longRest));
-    double time = (inversion ? 0.02 : 0.2) * guess;
+    double time = 0.2 * guess;
     double rest = longRest;
+    double shortest = 0;
     int fewest = 3;
     while (a.scansLeft() > 0) {
       a.play(
@@ -56,13 +57,15 @@ final class RecoveryMethod implements Method {
         time = 0.4 * guess;
         continue;
       }
-      List<RecoveryPoint> points = points(a.shots(), a.scans(), inversion);
+      CommonShape shape = CommonShape.of(a.shots(), a.scans());
+      shortest = shortest(a, shape, guess);
+      List<RecoveryPoint> points = points(a.shots(), a.scans(), shape, inversion);
       RecoveryPlan.Advice advice = plan.next(points);
       a.show(picture(points, advice.result(), new double[] {advice.recoverySeconds()}));
       if (advice.enough()) {
         break;
       }
-      time = Math.max(advice.recoverySeconds(), shortest(a));
+      time = Math.max(advice.recoverySeconds(), shortest);
       rest = Choices.rest(a, inversion ? advice.restSeconds() : 0);
       advice
           .result()
@@ -71,8 +74,13 @@ final class RecoveryMethod implements Method {
     }
   }
 
-  private static double shortest(Acquisition a) {
-    return 3 * Choices.pulse90(a) + a.limits().waitSeconds().min();
+  /**
+   * The shortest recovery time: what an imperfect inversion leaves across the field must have
+   * decayed before the reading pulse, as far as T1 allows the wait.
+   */
+  private static double shortest(Acquisition a, CommonShape shape, double guess) {
+    double across = Math.min(5 * shape.decay().t2Star().value(), 0.2 * guess);
+    return Math.max(across, 3 * Choices.pulse90(a) + a.limits().waitSeconds().min());
   }
 
   private static RecoveryFit.Options options(boolean inversion, double guess) {
@@ -106,9 +114,8 @@ final class RecoveryMethod implements Method {
             new Receive(w.points(), w.dwellSeconds(), 0)));
   }
 
-  private static List<RecoveryPoint> points(List<Shot> shots, List<Scan> scans, boolean inversion)
-      throws NotMeasurable {
-    CommonShape shape = CommonShape.of(shots, scans);
+  private static List<RecoveryPoint> points(
+      List<Shot> shots, List<Scan> scans, CommonShape shape, boolean inversion) {
     int first = 0;
     double phase = Math.atan2(shape.im()[first], shape.re()[first]);
     List<RecoveryPoint> points = new ArrayList<>();
@@ -155,7 +162,12 @@ final class RecoveryMethod implements Method {
   public Reading read(Capture capture) throws NotMeasurable {
     boolean inversion = Notes.number(capture, "inversion") != 0;
     double guess = Notes.number(capture, "guess");
-    List<RecoveryPoint> points = points(capture.shots(), capture.scans(), inversion);
+    List<RecoveryPoint> points =
+        points(
+            capture.shots(),
+            capture.scans(),
+            CommonShape.of(capture.shots(), capture.scans()),
+            inversion);
     RecoveryFit.Result fit;
     try {
       fit = RecoveryFit.fit(points, options(inversion, guess));

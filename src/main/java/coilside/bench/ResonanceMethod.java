@@ -116,11 +116,7 @@ final class ResonanceMethod implements Method {
 
   @Override
   public Reading read(Capture capture) throws NotMeasurable {
-    Averager average = new Averager();
-    for (int i = 0; i < capture.scans().size(); i++) {
-      average.add(capture.scans().get(i).fid(), BenchShots.firstPhase(capture.shots().get(i)));
-    }
-    Fid fid = average.mean();
+    Fid fid = DecayMethod.mean(capture.shots(), capture.scans());
     return Readings.resonance(fid, capture.scans());
   }
 

@@ -39,8 +39,8 @@ public record BoardLimits(
     }
 
     public boolean contains(double x) {
-      double slack = 1e-9 * Math.max(Math.abs(min), Math.abs(max));
-      return x >= min - slack && x <= max + slack;
+      // Each end has its own slack for rounding: that of 100 s would swallow an end at 1 us.
+      return x >= min - 1e-10 * Math.abs(min) - 1e-15 && x <= max + 1e-10 * Math.abs(max) + 1e-15;
     }
 
     /** The nearest allowed value. */

@@ -21,7 +21,10 @@ import picocli.CommandLine.Mixin;
       LadderCommand.class,
       ShowCommand.class,
       ExportCommand.class,
-      PortsCommand.class
+      PortsCommand.class,
+      SimulateCommand.class,
+      CheckCommand.class,
+      ReportCommand.class
     },
     footer = {
       "",

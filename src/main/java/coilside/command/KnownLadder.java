@@ -4,6 +4,7 @@ import coilside.bench.Conditions;
 import coilside.bench.Finding;
 import coilside.bench.KeepException;
 import coilside.bench.LadderView;
+import coilside.bench.LogRow;
 import coilside.bench.Rung;
 import coilside.bench.RungStatus;
 import coilside.record.BenchRecord;
@@ -11,6 +12,7 @@ import coilside.record.RecordView;
 import java.nio.file.Files;
 import java.time.Clock;
 import java.time.Instant;
+import java.util.ArrayList;
 import java.util.EnumMap;
 import java.util.List;
 import java.util.Map;
@@ -67,6 +69,17 @@ final class KnownLadder implements AutoCloseable {
             setting("coil", options.coil).orElse(last.coil()),
             last.temperatureCelsius());
     return LadderView.of(findings, now, clock.instant());
+  }
+
+  /** The rows of the newest log run, the last few thousand of them. */
+  List<LogRow> newestLog() throws KeepException {
+    List<LogRow> rows = new ArrayList<>();
+    if (view.isPresent() && !view.get().runs().isEmpty()) {
+      List<RecordView.LogRun> runs = view.get().runs();
+      view.get().rows(runs.get(runs.size() - 1).run(), rows::add);
+    }
+    int most = 5000;
+    return rows.size() <= most ? rows : rows.subList(rows.size() - most, rows.size());
   }
 
   private Optional<String> setting(String name, String given) throws KeepException {

@@ -1,44 +1,28 @@
 package coilside.command;
 
 import coilside.board.link.Link;
-import coilside.board.link.MemoryLink;
 import coilside.board.profile.DeviceProfile;
 import coilside.board.simulated.Firmware;
-import coilside.board.simulated.FirmwareFaults;
-import coilside.board.simulated.FirmwareServer;
 import coilside.board.simulated.Scenario;
 import coilside.board.simulated.ScenarioReader;
 import coilside.board.simulated.ScenarioReading;
-import coilside.board.simulated.SimulatedBench;
-import coilside.board.simulated.SimulatedDigitiser;
+import coilside.board.simulated.SimulatedBoards;
 import java.nio.file.Files;
 import java.nio.file.Path;
-import java.time.Duration;
 
 /** The simulated bench: a firmware that speaks the profile in front of the scenario's magnet. */
 final class Simulation {
-  private static final int QUEUE_BYTES = 1 << 22;
-  private static final Duration WRITE_LIMIT = Duration.ofSeconds(5);
-
   private Simulation() {}
 
   /** A simulated board in this process; closing the link ends it. */
   static Link link(DeviceProfile profile, CommonOptions options) {
-    MemoryLink.Pair pair = MemoryLink.pair("in this process", QUEUE_BYTES, WRITE_LIMIT);
-    FirmwareServer.over(
-        pair.far(),
-        firmware(profile, options.scenario, options.seed, options.paced),
-        System::nanoTime);
-    return pair.near();
+    return SimulatedBoards.inProcess(
+        firmware(profile, options.scenario, options.seed, options.paced));
   }
 
   static Firmware firmware(DeviceProfile profile, String scenario, long seed, boolean paced) {
     try {
-      return new Firmware(
-          profile,
-          new SimulatedBench(scenario(scenario), SimulatedDigitiser.of(profile.samples()), seed),
-          paced,
-          FirmwareFaults.none());
+      return SimulatedBoards.firmware(profile, scenario(scenario), seed, paced);
     } catch (IllegalArgumentException e) {
       throw new UsageException(
           "the profile '" + profile.name() + "' cannot be simulated: " + e.getMessage());

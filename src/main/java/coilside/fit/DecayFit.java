@@ -139,7 +139,10 @@ public final class DecayFit {
           "look for the resonance, or take more scans",
           OptionalLong.empty());
     }
-    Misfit misfit = Misfit.of(residualRe, residualIm, sigma, one.lambdaRe[0], one.lambdaIm[0]);
+    // Rounding leaves residuals of its own, which are not noise either.
+    double floor = 1e-9 * Math.hypot(one.cRe[0], one.cIm[0]);
+    Misfit misfit =
+        Misfit.of(residualRe, residualIm, Math.max(sigma, floor), one.lambdaRe[0], one.lambdaIm[0]);
     DecayAnswer answer = new DecayAnswer(fid, options);
     DecayResult result;
     if (misfit.passes() || options.form() == Form.ONE_EXPONENTIAL) {

@@ -84,6 +84,14 @@ public final class LeastSquares {
    */
   public static Solution solve(Model model, double[] y, double[] u, double[] start)
       throws NotDetermined {
+    return solve(model, y, u, start, TOLERANCE);
+  }
+
+  /**
+   * The same with a relative tolerance of its own, for models whose derivatives are differences.
+   */
+  static Solution solve(Model model, double[] y, double[] u, double[] start, double tolerance)
+      throws NotDetermined {
     int m = y.length;
     int p = start.length;
     if (m < p) {
@@ -111,9 +119,9 @@ public final class LeastSquares {
     Rows rows = new Rows(model, y, weights, p);
     LevenbergMarquardtOptimizer optimizer =
         new LevenbergMarquardtOptimizer()
-            .withCostRelativeTolerance(TOLERANCE)
-            .withParameterRelativeTolerance(TOLERANCE)
-            .withOrthoTolerance(TOLERANCE);
+            .withCostRelativeTolerance(tolerance)
+            .withParameterRelativeTolerance(tolerance)
+            .withOrthoTolerance(tolerance);
     try {
       optimizer.optimize(
           LeastSquaresFactory.create(

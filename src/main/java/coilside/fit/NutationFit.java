@@ -37,10 +37,15 @@ public final class NutationFit {
     /** exp(-(s theta)^2/2): B1 spread with standard deviation s (Gaussian). */
     GAUSSIAN;
 
+    /**
+     * What is left of the rotating part. Below zero the parameter is carried on by reflection, 2 -
+     * factor(-p): smooth, so that noise about zero damping does not bias, and bounded.
+     */
     double factor(double parameter, double theta) {
-      return this == EXPONENTIAL
-          ? Math.exp(-parameter * theta * 2 / Math.PI)
-          : Math.exp(-0.5 * parameter * theta * theta);
+      double exponent =
+          Math.abs(parameter) * (this == EXPONENTIAL ? theta * 2 / Math.PI : 0.5 * theta * theta);
+      double left = Math.exp(-exponent);
+      return parameter < 0 ? 2 - left : left;
     }
 
     /** The internal parameter (exponent per 90 degrees; squared deviation) of a relative spread. */
@@ -135,20 +140,15 @@ public final class NutationFit {
   public static NutationResult fit(List<NutationPoint> points, Options options)
       throws NotDetermined {
     screen(points);
-    NutationMinimum best;
-    List<NutationMinimum> minima;
-    if (options.spread() != null) {
-      minima = NutationMinimum.search(points, options, options.spread());
-      best = minima.get(0);
-    } else {
-      minima = NutationMinimum.search(points, options, Spread.GAUSSIAN);
-      best = minima.get(0);
-      if (best.dampingSignificance() > 2) {
-        List<NutationMinimum> other = NutationMinimum.search(points, options, Spread.EXPONENTIAL);
-        if (other.get(0).chiSquare() < best.chiSquare() - 2) {
-          minima = other;
-          best = other.get(0);
-        }
+    List<NutationMinimum> minima =
+        NutationMinimum.search(
+            points, options, options.spread() == null ? Spread.GAUSSIAN : options.spread());
+    NutationMinimum best = minima.get(0);
+    if (options.spread() == null && best.dampingSignificance() > 2) {
+      NutationMinimum other = best.reshaped(points, options, Spread.EXPONENTIAL);
+      if (other.chiSquare() < best.chiSquare() - 2
+          && Math.abs(other.rate() / best.rate() - 1) < 0.05) {
+        best = other;
       }
     }
     return answer(points, options, best, minima);
@@ -201,7 +201,7 @@ public final class NutationFit {
     double rivalRate = Double.NaN;
     double excess = Double.POSITIVE_INFINITY;
     for (NutationMinimum m : minima) {
-      if (m != best && Math.abs(m.rate() / best.rate() - 1) > 0.05) {
+      if (Math.abs(m.rate() - best.rate()) > 5 * Math.max(m.uRate(), best.uRate())) {
         double e = m.chiSquare() - best.chiSquare();
         if (e < excess) {
           excess = e;

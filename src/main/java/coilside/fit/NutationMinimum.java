@@ -48,12 +48,17 @@ record NutationMinimum(
     List<Candidate> candidates = grid(points, options, spread, model);
     List<NutationMinimum> minima = new ArrayList<>();
     NotDetermined failure = null;
+    double limit = Double.POSITIVE_INFINITY;
     for (Candidate c : candidates.subList(0, Math.min(REFINED, candidates.size()))) {
-      if (c.chiSquare() > candidates.get(0).chiSquare() + 100 && !minima.isEmpty()) {
-        continue;
+      if (c.chiSquare() > limit) {
+        break;
       }
       try {
-        minima.add(refine(points, options, spread, model, c));
+        NutationMinimum m = refine(points, options, spread, model, c);
+        minima.add(m);
+        // A grid point misses its minimum by about as much everywhere.
+        limit =
+            Math.min(limit, m.chiSquare() + 30 + 4 * Math.max(0, c.chiSquare() - m.chiSquare()));
       } catch (NotDetermined e) {
         failure = e;
       }
@@ -65,6 +70,21 @@ record NutationMinimum(
     }
     minima.sort(Comparator.comparingDouble(NutationMinimum::chiSquare));
     return minima;
+  }
+
+  /** This minimum refined with another shape of damping. */
+  NutationMinimum reshaped(
+      List<NutationPoint> points, NutationFit.Options options, NutationFit.Spread other)
+      throws NotDetermined {
+    // Both shapes damp alike at 180 degrees.
+    double factor = Math.max(1e-6, -Math.log(spread.factor(Math.max(damping, 0), Math.PI)));
+    double start = other == NutationFit.Spread.EXPONENTIAL ? factor / 2 : 2 * factor / 9.87;
+    return refine(
+        points,
+        options,
+        other,
+        new NutationModel(points, options.recovery(), other),
+        new Candidate(rate, start, chiSquare));
   }
 
   private static List<Candidate> grid(
@@ -212,7 +232,8 @@ record NutationMinimum(
             },
             y,
             u,
-            first);
+            first,
+            1e-9);
     double[] q = s.parameters();
     double size = Math.hypot(q[0], q[1]);
     double c = q[0] / size;

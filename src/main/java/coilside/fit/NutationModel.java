@@ -18,6 +18,10 @@ final class NutationModel {
   private final double[] t;
   private final double[] recovery;
   private final double[] offset;
+  private final double[] turnRe;
+  private final double[] turnIm;
+  private final double[] kept;
+  private double keptT1 = Double.NEGATIVE_INFINITY;
   private final NutationFit.Recovery history;
   private final NutationFit.Spread spread;
 
@@ -27,10 +31,16 @@ final class NutationModel {
     t = new double[n];
     recovery = new double[n];
     offset = new double[n];
+    turnRe = new double[n];
+    turnIm = new double[n];
+    kept = new double[n];
     for (int j = 0; j < n; j++) {
       t[j] = points.get(j).pulseSeconds();
       recovery[j] = points.get(j).recoverySeconds();
       offset[j] = points.get(j).offsetHertz();
+      double turn = Math.PI * offset[j] * t[j];
+      turnRe[j] = Math.cos(turn);
+      turnIm[j] = Math.sin(turn);
     }
     this.history = history;
     this.spread = spread;
@@ -44,9 +54,15 @@ final class NutationModel {
    * @param t1 s; NaN for full recovery before every pulse
    */
   void fill(double nu, double damping, double t1, double[] re, double[] im) {
+    if (t1 != keptT1) {
+      for (int j = 0; j < t.length; j++) {
+        kept[j] = Double.isNaN(t1) ? 0 : Math.exp(-recovery[j] / t1);
+      }
+      keptT1 = t1;
+    }
     double after = 1;
     for (int j = 0; j < t.length; j++) {
-      double e1 = Double.isNaN(t1) ? 0 : Math.exp(-recovery[j] / t1);
+      double e1 = kept[j];
       double d = offset[j];
       double effective = d == 0 ? nu : Math.sqrt(nu * nu + d * d);
       double nx = nu / effective;
@@ -68,9 +84,8 @@ final class NutationModel {
         re[j] = a;
         im[j] = b;
       } else {
-        double turn = Math.PI * d * t[j];
-        double c = Math.cos(turn);
-        double s = Math.sin(turn);
+        double c = turnRe[j];
+        double s = turnIm[j];
         re[j] = a * c + b * s;
         im[j] = b * c - a * s;
       }

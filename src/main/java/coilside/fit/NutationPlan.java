@@ -87,16 +87,29 @@ public final class NutationPlan {
     if (fit.isPresent()) {
       double t90 = fit.get().pulse90().value();
       double relative = fit.get().pulse90().relative();
-      boolean alone = posterior.outside(t90, Math.max(0.05, 4 * relative)) < 1e-3;
-      if (alone && counted.size() >= FEWEST_POINTS && relative <= target) {
+      boolean alone = posterior.outside(t90, 0.01 + 5 * relative) < 1e-3;
+      if (alone && counted.size() >= FEWEST_POINTS && relative <= target && confirmed(points)) {
         return new Advice(true, allowed(4 * t90), "the target is met", fit, relative);
       }
       if (alone && relative < CLOSE_ENOUGH && spread < 2 * CLOSE_ENOUGH) {
         return atNull(counted, fit, t90, relative);
       }
     }
-    double width = posterior.leastPredictable(candidates());
+    double width = posterior.leastPredictable(candidates(posterior.upper90()));
     return new Advice(false, width, "the pulse whose signal is least predictable", fit, spread);
+  }
+
+  /**
+   * Whether the target was met without the last scan already. Stopping at the first scan that
+   * claims it would favour runs whose uncertainty came out small by chance.
+   */
+  private boolean confirmed(List<NutationPoint> points) {
+    try {
+      return NutationFit.fit(points.subList(0, points.size() - 1), options).pulse90().relative()
+          <= target;
+    } catch (NotDetermined e) {
+      return false;
+    }
   }
 
   private Advice atNull(
@@ -123,9 +136,9 @@ public final class NutationPlan {
     return Math.max(shortestPulse, Math.min(longestPulse, width));
   }
 
-  private List<Double> candidates() {
+  private List<Double> candidates(double upper90) {
     double low = Math.max(shortestPulse, options.shortest90Seconds() / 2);
-    double high = Math.min(longestPulse, 4 * options.longest90Seconds());
+    double high = Math.min(longestPulse, 4 * upper90);
     List<Double> out = new ArrayList<>();
     for (int i = 0; i < CANDIDATES; i++) {
       out.add(low * Math.pow(high / low, i / (CANDIDATES - 1.0)));

@@ -88,6 +88,20 @@ final class NutationPosterior {
     return Math.sqrt(Math.max(0, square - mean * mean));
   }
 
+  /** The 90-degree pulse that is longer with a probability of one in ten. */
+  double upper90() {
+    double above = 0;
+    for (int g = RATES - 1; g > 0; g--) {
+      for (double w : weight[g]) {
+        above += w;
+      }
+      if (above > 0.1) {
+        return t90[g];
+      }
+    }
+    return t90[0];
+  }
+
   /** Probability that the 90-degree pulse lies farther than {@code relative} from this one. */
   double outside(double near90, double relative) {
     double sum = 0;

@@ -25,7 +25,7 @@ import java.util.OptionalDouble;
  */
 public final class CaptureReader {
   private static final long MAX_META_BYTES = 64L << 20;
-  private static final long MAX_DATA_BYTES = 1L << 30;
+  private static final long MAX_DATA_BYTES = 1L << 29;
   private static final int MAX_SCANS = 1_000_000;
   private static final int MAX_SHOTS = 1_000_000;
 
@@ -48,12 +48,16 @@ public final class CaptureReader {
           "this SigMF recording does not hold the settings of the measurement (extension"
               + " 'coilside'), so it cannot be analysed again; only captures kept by coilside can");
     }
-    Samples samples = new Samples(data, global);
     List<Shot> shots = new ArrayList<>();
     for (Node shot : global.list("coilside:shots", MAX_SHOTS)) {
       shots.add(ShotJson.read(shot));
     }
-    List<List<Fid>> windows = windows(root.list("captures", MAX_SCANS), samples);
+    List<List<Fid>> windows;
+    try (Samples samples = new Samples(data, global)) {
+      windows = windows(root.list("captures", MAX_SCANS), samples);
+    } catch (IOException e) {
+      throw new CaptureException("cannot read " + data + ": " + Trouble.words(e), e);
+    }
     List<Node> scanNodes = global.list("coilside:scans", MAX_SCANS);
     if (windows.size() != scanNodes.size() || scanNodes.isEmpty()) {
       throw global.wrong(
@@ -79,7 +83,7 @@ public final class CaptureReader {
 
   /** The capture's files share this path but for the extension. */
   static Path sibling(Path path, String extension) {
-    String name = path.getFileName().toString();
+    String name = path.getFileName() == null ? "" : path.getFileName().toString();
     for (String known : List.of(CapturesFolder.META, CapturesFolder.DATA)) {
       if (name.endsWith(known)) {
         name = name.substring(0, name.length() - known.length());
@@ -144,7 +148,7 @@ public final class CaptureReader {
 
   /** The receive windows of each scan, from segments that follow one another without a gap. */
   private static List<List<Fid>> windows(List<Node> segments, Samples samples)
-      throws CaptureException {
+      throws CaptureException, IOException {
     List<List<Fid>> scans = new ArrayList<>();
     long next = 0;
     for (Node segment : segments) {
@@ -188,15 +192,15 @@ public final class CaptureReader {
     return scans;
   }
 
-  /** The data file, whole in memory as bytes. */
-  private static final class Samples {
+  /** The data file, read window by window. */
+  private static final class Samples implements AutoCloseable {
     private final Path file;
-    private final ByteBuffer bytes;
+    private final FileChannel in;
     private final boolean single;
     private final int bytesPerSample;
     private final long count;
 
-    Samples(Path file, Node global) throws CaptureException {
+    Samples(Path file, Node global) throws CaptureException, IOException {
       this.file = file;
       String datatype = global.text("core:datatype");
       if (!datatype.equals("cf64_le") && !datatype.equals("cf32_le")) {
@@ -205,42 +209,47 @@ public final class CaptureReader {
       }
       single = datatype.equals("cf32_le");
       bytesPerSample = single ? 8 : 16;
-      try (FileChannel in = FileChannel.open(file)) {
-        long size = in.size();
-        if (size > MAX_DATA_BYTES || size % bytesPerSample != 0) {
-          throw new CaptureException(
-              file
-                  + " is "
-                  + size
-                  + " bytes long; it must be a multiple of "
-                  + bytesPerSample
-                  + " and at most "
-                  + MAX_DATA_BYTES);
-        }
-        bytes = ByteBuffer.allocate((int) size).order(ByteOrder.LITTLE_ENDIAN);
-        while (bytes.hasRemaining() && in.read(bytes) >= 0) {
-          continue;
-        }
-        bytes.flip();
-        count = bytes.limit() / bytesPerSample;
-      } catch (IOException e) {
-        throw new CaptureException("cannot read " + file + ": " + Trouble.words(e), e);
+      long size = Files.size(file);
+      if (size > MAX_DATA_BYTES || size % bytesPerSample != 0) {
+        throw new CaptureException(
+            file
+                + " is "
+                + size
+                + " bytes long; it must be a multiple of "
+                + bytesPerSample
+                + " and at most "
+                + MAX_DATA_BYTES);
       }
+      count = size / bytesPerSample;
+      in = FileChannel.open(file);
     }
 
     Fid fid(Node segment, long start, int points, double dwell, double first, double carrier)
-        throws CaptureException {
+        throws CaptureException, IOException {
+      ByteBuffer bytes = ByteBuffer.allocate(points * bytesPerSample);
+      bytes.order(ByteOrder.LITTLE_ENDIAN);
+      long at = start * bytesPerSample;
+      while (bytes.hasRemaining()) {
+        if (in.read(bytes, at + bytes.position()) < 0) {
+          throw new CaptureException(file + " became shorter while it was read");
+        }
+      }
+      bytes.flip();
       double[] re = new double[points];
       double[] im = new double[points];
-      int at = (int) start * bytesPerSample;
-      for (int k = 0; k < points; k++, at += bytesPerSample) {
-        re[k] = single ? bytes.getFloat(at) : bytes.getDouble(at);
-        im[k] = single ? bytes.getFloat(at + 4) : bytes.getDouble(at + 8);
+      for (int k = 0; k < points; k++) {
+        re[k] = single ? bytes.getFloat() : bytes.getDouble();
+        im[k] = single ? bytes.getFloat() : bytes.getDouble();
         if (!Double.isFinite(re[k]) || !Double.isFinite(im[k])) {
           throw segment.wrong("sample " + (start + k) + " is not a finite number");
         }
       }
       return new Fid(re, im, dwell, first, carrier);
+    }
+
+    @Override
+    public void close() throws IOException {
+      in.close();
     }
   }
 }

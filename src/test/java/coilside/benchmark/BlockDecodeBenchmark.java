@@ -37,7 +37,12 @@ public class BlockDecodeBenchmark {
 
   @Setup
   public void fill() {
-    new Random(1).nextBytes(bytes);
+    Random random = new Random(1);
+    for (int k = 0; k < bytes.length; k += 2) {
+      int count = (int) Math.rint(3000 * random.nextGaussian());
+      bytes[k] = (byte) (count >> 8);
+      bytes[k + 1] = (byte) count;
+    }
     format =
         new SampleFormat(
             SampleFormat.Type.I16,

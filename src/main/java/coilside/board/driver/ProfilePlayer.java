@@ -2,7 +2,7 @@ package coilside.board.driver;
 
 import coilside.board.BoardException;
 import coilside.board.BoardException.BadAnswer;
-import coilside.board.BoardException.Silent;
+import coilside.board.BoardException.Refused;
 import coilside.board.BoardException.Stopped;
 import coilside.board.BoardIdentity;
 import coilside.board.ClearedShot;
@@ -12,20 +12,14 @@ import coilside.board.link.Link;
 import coilside.board.profile.Command;
 import coilside.board.profile.CommandName;
 import coilside.board.profile.DeviceProfile;
-import coilside.board.profile.Identification;
-import coilside.board.profile.Replies;
-import coilside.board.profile.SampleBlocks;
 import coilside.board.profile.Template;
-import coilside.board.profile.ValueName;
 import coilside.board.wire.Clean;
-import coilside.board.wire.WireEvent;
 import coilside.shot.Shot;
 import coilside.signal.Scan;
 import java.time.Clock;
 import java.time.Instant;
 import java.util.ArrayList;
 import java.util.List;
-import java.util.Locale;
 import java.util.Map;
 import java.util.Optional;
 import java.util.OptionalDouble;
@@ -41,14 +35,14 @@ import java.util.function.LongSupplier;
 final class ProfilePlayer implements ShotPlayer {
   private static final double QUIET_SECONDS = 0.05;
   private static final double LONGEST_DRAIN_SECONDS = 5;
-  private static final double SLOWEST_NETWORK_BYTES_PER_SECOND = 100_000;
-  private static final int IDENTIFY_TRIES = 3;
 
   private final DeviceProfile profile;
   private final Link link;
   private final Clock wallClock;
   private final Conversation conversation;
   private final ShotWriter writer;
+  private final Recognition recognition;
+  private final SampleFetch fetch;
   private final ReentrantLock wire = new ReentrantLock();
 
   private BoardIdentity identity;
@@ -59,7 +53,7 @@ final class ProfilePlayer implements ShotPlayer {
   private volatile boolean closed;
   private long lastRunNanos;
   private double lastShotSeconds = Double.NaN;
-  private byte[] lastBlock = {};
+  private boolean aheadOfClock;
 
   ProfilePlayer(DeviceProfile profile, Link link, LongSupplier nanoClock, Clock wallClock) {
     this.profile = profile;
@@ -67,6 +61,8 @@ final class ProfilePlayer implements ShotPlayer {
     this.wallClock = wallClock;
     this.conversation = new Conversation(profile, link, nanoClock);
     this.writer = new ShotWriter(profile, conversation);
+    this.recognition = new Recognition(profile, conversation);
+    this.fetch = new SampleFetch(profile, conversation, writer);
   }
 
   /**
@@ -77,7 +73,7 @@ final class ProfilePlayer implements ShotPlayer {
   void open(boolean simulated) throws BoardException {
     wire.lock();
     try {
-      String name = identify(simulated);
+      String name = recognition.identify(simulated);
       identity =
           new BoardIdentity(name, profile.name(), profile.digest(), link.description(), simulated);
       List<Outgoing> setup = new ArrayList<>();
@@ -88,60 +84,6 @@ final class ProfilePlayer implements ShotPlayer {
     } finally {
       wire.unlock();
     }
-  }
-
-  private String identify(boolean simulated) throws BoardException {
-    Identification how = profile.identification();
-    double limit = profile.replies().timeLimitSeconds();
-    String greeted = greeting(simulated, how, limit);
-    if (how.ask().isEmpty()) {
-      return greeted;
-    }
-    Outgoing question =
-        new Outgoing(conversation.encode(how.ask().get(), Map.of()), Optional.of(how.expect()));
-    BoardException last = null;
-    for (int i = 0; i < IDENTIFY_TRIES; i++) {
-      conversation.forget();
-      try {
-        return nameIn(conversation.ask(question, limit));
-      } catch (Silent | BadAnswer e) {
-        last = e;
-      }
-    }
-    throw last;
-  }
-
-  private String greeting(boolean simulated, Identification how, double limit)
-      throws BoardException {
-    boolean mustTell = how.ask().isEmpty();
-    conversation.await(mustTell ? Optional.of(how.expect()) : profile.greeting());
-    double patience = mustTell ? profile.settleSeconds() + limit : profile.settleSeconds();
-    if (simulated && !mustTell) {
-      patience = 0;
-    }
-    long end = conversation.inSeconds(patience);
-    boolean waits = mustTell || profile.greeting().isPresent();
-    while (true) {
-      Optional<WireEvent> event = conversation.next(end);
-      if (event.isEmpty()) {
-        break;
-      }
-      if (waits && event.get() instanceof WireEvent.Answer answer) {
-        return nameIn(answer.fields());
-      }
-    }
-    if (mustTell) {
-      throw new Silent(
-          String.format(
-              Locale.ROOT,
-              "the board did not greet within %.3g s; reset it, or check port, speed and line ends",
-              patience));
-    }
-    return "";
-  }
-
-  private String nameIn(Map<String, String> fields) {
-    return Clean.text(fields.getOrDefault("name", profile.name()).strip());
   }
 
   @Override
@@ -192,16 +134,16 @@ final class ProfilePlayer implements ShotPlayer {
     conversation.await(run.answer());
     Instant started = wallClock.instant();
     long runNanos = conversation.now();
-    double rest = restAsItWas(shot, runNanos);
+    double sinceLastScan = (runNanos - lastRunNanos) * 1e-9 - lastShotSeconds;
     conversation.send(run.bytes());
     lastRunNanos = runNanos;
-    lastShotSeconds = shot.seconds();
-    long deadline = deadline(shot, builder.blockLengths());
+    lastShotSeconds = writer.hostRests(shot) ? shot.playedSeconds() : shot.seconds();
+    long deadline = fetch.deadline(shot, builder.blockLengths());
     if (run.answer().isPresent()) {
-      acknowledged(run, deadline);
+      fetch.acknowledged(run, deadline);
     }
-    fetchAll(builder, deadline);
-    return builder.scan(started, rest);
+    fetch.fetchAll(builder, deadline);
+    return builder.scan(started, restAsItWas(shot, runNanos, sinceLastScan));
   }
 
   /** What the board does not know yet. */
@@ -231,125 +173,26 @@ final class ProfilePlayer implements ShotPlayer {
   }
 
   /**
-   * The rest before this scan as it really was: what the board was told, and what the host let pass
-   * between the end of the last scan and now. A board whose time runs faster than the clock (a
-   * simulated one) has only the former.
+   * The rest before a scan as it really was: what the board was told, and what passed on the clock
+   * between the end of the last scan and this run. A board that ever gave back a scan sooner than
+   * it takes to play (a simulated one that is not paced) does not live by our clock: its rest is
+   * what it was told.
    */
-  private double restAsItWas(Shot shot, long runNanos) {
-    if (Double.isNaN(lastShotSeconds)) {
-      return shot.restSeconds();
-    }
-    double since = (runNanos - lastRunNanos) * 1e-9 - lastShotSeconds;
+  private double restAsItWas(Shot shot, long runNanos, double sinceLastScan) {
     double told = writer.hostRests(shot) ? 0 : shot.restSeconds();
-    return Math.max(shot.restSeconds(), told + Math.max(0, since));
-  }
-
-  private long deadline(Shot shot, int[] lengths) {
-    long bytes = java.util.Arrays.stream(lengths).asLongStream().sum() + 256L * lengths.length;
-    double perSecond =
-        profile.serial().map(s -> s.speedBaud() / 10.0).orElse(SLOWEST_NETWORK_BYTES_PER_SECOND);
-    double wireSeconds = 1.5 * bytes / Math.min(perSecond, SLOWEST_NETWORK_BYTES_PER_SECOND);
-    return conversation.inSeconds(
-        shot.seconds() + wireSeconds + profile.replies().timeLimitSeconds());
-  }
-
-  private void acknowledged(Outgoing run, long deadline) throws BoardException {
-    while (true) {
-      WireEvent event =
-          conversation
-              .next(deadline)
-              .orElseThrow(
-                  () ->
-                      new Silent(
-                          "the board did not answer '" + run.text() + "' in time; it may hang"));
-      if (event instanceof WireEvent.Answer) {
-        conversation.await(Optional.empty());
-        return;
-      }
-      trouble(event, run.text());
+    double least = told + shot.playedSeconds();
+    double took = (conversation.now() - runNanos) * 1e-9;
+    if (least - took > Math.max(1e-3, 0.1 * least)) {
+      aheadOfClock = true;
     }
-  }
-
-  private void fetchAll(ScanBuilder builder, long deadline) throws BoardException {
-    Optional<Command> fetch = profile.command(CommandName.FETCH);
-    boolean each =
-        fetch.map(c -> c.template().mentions(ValueName.WINDOW)).orElse(false)
-            && profile.blocks().per() == SampleBlocks.Per.WINDOW;
-    int blocks = builder.blockLengths().length;
-    long heard = conversation.bytesHeard();
-    for (int i = 0; i < blocks; i++) {
-      if (fetch.isPresent() && (each || i == 0)) {
-        conversation.send(
-            writer.named(CommandName.FETCH, Map.of(ValueName.WINDOW, (double) i)).bytes());
-      }
-      WireEvent.SampleBlock block = block(i, blocks, deadline, heard);
-      lastBlock = block.bytes();
-      builder.block(block.index(), block.bytes());
-    }
-    while (profile.blocks().endMark().isPresent()) {
-      WireEvent event =
-          conversation
-              .next(deadline)
-              .orElseThrow(() -> new BadAnswer("the end mark after the samples did not come."));
-      if (event instanceof WireEvent.EndMark) {
-        break;
-      }
-      trouble(event, "the samples");
-    }
-  }
-
-  private WireEvent.SampleBlock block(int index, int blocks, long deadline, long heardBefore)
-      throws BoardException {
-    while (true) {
-      Optional<WireEvent> event = conversation.next(deadline);
-      if (event.isEmpty()) {
-        throw missing(index, blocks, heardBefore);
-      }
-      if (event.get() instanceof WireEvent.SampleBlock block) {
-        return block;
-      }
-      trouble(event.get(), "the shot");
-    }
-  }
-
-  private static void trouble(WireEvent event, String what) throws BoardException {
-    if (event instanceof WireEvent.ErrorReply error) {
-      throw Conversation.refused("'" + what + "'", List.of(error));
-    }
-    if (event instanceof WireEvent.Damaged damaged) {
-      throw new BadAnswer("the samples came back damaged: " + damaged.why() + ".");
-    }
-    if (event instanceof WireEvent.EndMark) {
-      throw new BadAnswer("the end mark came before all samples had come.");
-    }
-  }
-
-  private BoardException missing(int index, int blocks, long heardBefore) throws BoardException {
-    if (conversation.bytesHeard() > heardBefore) {
-      String heard = conversation.lastHeard();
-      return new BadAnswer(
-          "sample block "
-              + (index + 1)
-              + " of "
-              + blocks
-              + " did not come whole"
-              + (heard.isEmpty() ? "." : "; the board said '" + heard + "'."));
-    }
-    if (profile.replies().mode() == Replies.Mode.ASKED) {
-      conversation.forget();
-      List<WireEvent.ErrorReply> errors = conversation.errors();
-      if (!errors.isEmpty()) {
-        return Conversation.refused("the shot", errors);
-      }
-    }
-    return new Silent(
-        "the board sent no samples in the time of the shot and its answer; check that it is still"
-            + " powered and has not been reset");
+    return aheadOfClock || Double.isNaN(sinceLastScan)
+        ? shot.restSeconds()
+        : Math.max(shot.restSeconds(), told + Math.max(0, sinceLastScan));
   }
 
   /** The bytes of the sample block that came last; empty before the first. Do not change. */
   byte[] lastBlock() {
-    return lastBlock;
+    return fetch.lastBlock();
   }
 
   /** Sends commands that describe, but never run, a shot; whatever the board knew is sent again. */
@@ -359,10 +202,14 @@ final class ProfilePlayer implements ShotPlayer {
       ready();
       sentSettings = List.of();
       sentBody = List.of();
+      unsettled = true;
       try {
         conversation.say(commands);
-      } finally {
-        unsettled = true;
+        unsettled = false;
+      } catch (Refused refused) {
+        // One by one, or asked until there is no error left: nothing more is on its way.
+        unsettled = profile.replies().ahead() > 1;
+        throw refused;
       }
     } finally {
       wire.unlock();
@@ -370,17 +217,11 @@ final class ProfilePlayer implements ShotPlayer {
   }
 
   /** Asks once more who is there. */
-  String identifyAgain() throws BoardException {
+  void identifyAgain() throws BoardException {
     wire.lock();
     try {
       ready();
-      Outgoing question =
-          new Outgoing(
-              conversation.encode(profile.identification().ask().orElseThrow(), Map.of()),
-              Optional.of(profile.identification().expect()));
-      String name = nameIn(conversation.ask(question, profile.replies().timeLimitSeconds()));
-      conversation.await(Optional.empty());
-      return name;
+      recognition.again();
     } finally {
       wire.unlock();
     }

@@ -174,7 +174,7 @@ final class SettingTrials {
 
   private static String text(double x, double scale) {
     return new java.math.BigDecimal(x * scale)
-        .round(new java.math.MathContext(9))
+        .round(new java.math.MathContext(12))
         .stripTrailingZeros()
         .toPlainString();
   }

@@ -262,6 +262,10 @@ public final class SerialLink extends QueuedLink {
     try {
       List<PortInfo> found = new ArrayList<>();
       for (SerialPort port : SerialPort.getCommPorts()) {
+        // The library also lists whatever was opened by its path in this program.
+        if (port.getSystemPortPath().startsWith("/dev/pts/")) {
+          continue;
+        }
         found.add(
             new PortInfo(
                 port.getSystemPortPath(),

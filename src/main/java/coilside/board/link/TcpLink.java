@@ -83,6 +83,7 @@ public final class TcpLink extends QueuedLink {
   static TcpLink adopt(Socket socket, String where, Duration writeLimit, int queueBytes)
       throws IOException {
     socket.setTcpNoDelay(true);
+    socket.setKeepAlive(true);
     TcpLink link = new TcpLink(socket, where, writeLimit, queueBytes);
     link.start();
     return link;

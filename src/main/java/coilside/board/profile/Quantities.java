@@ -1,5 +1,6 @@
 package coilside.board.profile;
 
+import java.math.BigDecimal;
 import java.util.LinkedHashMap;
 import java.util.Map;
 import java.util.OptionalDouble;
@@ -57,7 +58,6 @@ final class Quantities {
     if (!m.matches()) {
       return OptionalDouble.empty();
     }
-    double number = Double.parseDouble(m.group(1));
     String unit = m.group(2).replace('µ', 'u');
     if (unit.equals("%") && dimension == ValueName.Dimension.FRACTION) {
       unit = "percent";
@@ -68,10 +68,8 @@ final class Quantities {
     if (size == null) {
       return OptionalDouble.empty();
     }
-    // Dividing by a power of ten that is exact gives the nearest number; multiplying by its
-    // inexact inverse does not.
-    double inverse = Math.rint(1 / size);
-    double si = size < 1 && Math.abs(inverse * size - 1) < 1e-12 ? number / inverse : number * size;
+    // In decimal, so that "8.3MHz" is 8300000 Hz and not the neighbour of it.
+    double si = new BigDecimal(m.group(1)).multiply(BigDecimal.valueOf(size)).doubleValue();
     return Double.isFinite(si) ? OptionalDouble.of(si) : OptionalDouble.empty();
   }
 }

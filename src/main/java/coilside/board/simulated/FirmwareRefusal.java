@@ -38,6 +38,10 @@ final class FirmwareRefusal extends Exception {
     return new FirmwareRefusal(-222, "Data out of range;" + detail);
   }
 
+  static FirmwareRefusal queueOverflow() {
+    return new FirmwareRefusal(-350, "Queue overflow");
+  }
+
   static FirmwareRefusal tooMuch(String detail) {
     return new FirmwareRefusal(-223, "Too much data;" + detail);
   }

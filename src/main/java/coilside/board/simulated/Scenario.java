@@ -140,9 +140,21 @@ public record Scenario(
    * The transmitter.
    *
    * @param pulse90Seconds 90-degree pulse at full amplitude with the coil in tune, s
+   * @param compression c, how far the amplifier's gain at full amplitude lies below that at small
+   *     amplitudes, as a part of the former, 0..0.4
    * @param dead true when no power reaches the coil
    */
-  public record Transmitter(double pulse90Seconds, boolean dead) {}
+  public record Transmitter(double pulse90Seconds, double compression, boolean dead) {
+    /** An amplifier that follows its input exactly. */
+    public Transmitter(double pulse90Seconds, boolean dead) {
+      this(pulse90Seconds, 0, dead);
+    }
+
+    /** What reaches the coil, 1 at full amplitude: a (1 + c (1 - a^2)). */
+    double drive(double amplitude) {
+      return dead ? 0 : amplitude * (1 + compression * (1 - amplitude * amplitude));
+    }
+  }
 
   /**
    * The receiver.

@@ -116,7 +116,10 @@ final class ScenarioSections {
 
   private static Transmitter transmitter(ScenarioTable t) {
     Transmitter transmitter =
-        new Transmitter(t.required("pulse_90", TIME, 1e-8, 0.1, "\"20us\""), t.flag("dead"));
+        new Transmitter(
+            t.required("pulse_90", TIME, 1e-8, 0.1, "\"20us\""),
+            t.optional("compression", NUMBER, 0, 0.4, "0.1", 0),
+            t.flag("dead"));
     t.complainAboutTheRest();
     return transmitter;
   }

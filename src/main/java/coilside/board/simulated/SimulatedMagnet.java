@@ -59,6 +59,12 @@ final class SimulatedMagnet {
     return larmorAt(seconds + over / 2) - carrierHertz;
   }
 
+  /** A change of carrier: both carriers have phase zero at time zero, as if they had always run. */
+  void retune(double fromHertz, double toHertz) {
+    turns += (fromHertz - toHertz) * seconds;
+    turns -= Math.rint(turns);
+  }
+
   /** Lets time pass at a carrier. */
   void advance(double carrierHertz, double by) {
     double run = offsetHertz(carrierHertz, by) * by + mainsTurns(by);

@@ -3,8 +3,11 @@ package coilside.board.simulated;
 import coilside.board.profile.SampleFormat.RealSampling;
 import coilside.board.simulated.FirmwareReceiver.Counts;
 import coilside.board.simulated.Scenario.Interference;
+import coilside.board.simulated.SimulatedLineSum.Plan;
 import coilside.shot.Receive;
 import java.util.Arrays;
+import java.util.LinkedHashMap;
+import java.util.Map;
 import java.util.SplittableRandom;
 
 /**
@@ -15,8 +18,12 @@ import java.util.SplittableRandom;
  */
 final class SimulatedReceiver {
   private static final int CHUNK = 16384;
+  private static final int KEPT = 8;
+  private static final double BLOCK_SECONDS = 100e-6;
   private static final double FLAT = 0.4;
   private static final double CLOSED = 0.5;
+
+  private record WindowKind(double dwellSeconds, int samples) {}
 
   private final Scenario scenario;
   private final SimulatedDigitiser digitiser;
@@ -27,7 +34,15 @@ final class SimulatedReceiver {
   private final SimulatedLineSum sum = new SimulatedLineSum();
   private final double[] cRe;
   private final double[] cIm;
-  private final double[] step;
+  private final Map<WindowKind, Plan> plans =
+      new LinkedHashMap<>(16, 0.75f, true) {
+        private static final long serialVersionUID = 1L;
+
+        @Override
+        protected boolean removeEldestEntry(Map.Entry<WindowKind, Plan> eldest) {
+          return size() > KEPT;
+        }
+      };
 
   SimulatedReceiver(
       Scenario scenario,
@@ -46,7 +61,6 @@ final class SimulatedReceiver {
     }
     cRe = new double[spins.size()];
     cIm = new double[spins.size()];
-    step = new double[spins.size()];
   }
 
   /** What the filter lets through of a frequency, for complex samples at this dwell time. */
@@ -99,12 +113,11 @@ final class SimulatedReceiver {
       double y = pass * spins.transverseY(j);
       cRe[j] = x * coil.re() - y * coil.im();
       cIm[j] = x * coil.im() + y * coil.re();
-      double turns = spins.offsetHertz(j) * dwell;
-      step[j] = 2 * Math.PI * (turns - Math.rint(turns));
     }
     if (start != 0) {
-      shift(start / dwell);
+      shift(start);
     }
+    Plan plan = plans.computeIfAbsent(new WindowKind(dwell, Math.min(n, CHUNK)), this::plan);
     double[] a = new double[Math.min(n, CHUNK)];
     double[] b = new double[a.length];
     for (int at = 0; at < n; at += CHUNK) {
@@ -112,7 +125,7 @@ final class SimulatedReceiver {
       for (int c = 0; c < spins.components(); c++) {
         Arrays.fill(a, 0);
         Arrays.fill(b, 0);
-        sum.add(cRe, cIm, step, spins.first(c), spins.first(c + 1), a, b, 0, count);
+        sum.add(plan, cRe, cIm, spins.first(c), spins.first(c + 1), a, b, count);
         double decay = Math.exp(-dwell / spins.t2Seconds(c));
         double left = Math.exp(-(start + at * dwell) / spins.t2Seconds(c));
         for (int k = 0; k < count; k++) {
@@ -122,45 +135,64 @@ final class SimulatedReceiver {
         }
       }
       if (at + CHUNK < n) {
-        shift(CHUNK);
+        shift(CHUNK * dwell);
       }
     }
     carry(re, im, offset, dwell, start);
   }
 
-  private void shift(double samples) {
+  private Plan plan(WindowKind kind) {
+    double[] step = new double[spins.size()];
+    for (int j = 0; j < step.length; j++) {
+      double turns = spins.offsetHertz(j) * kind.dwellSeconds();
+      step[j] = 2 * Math.PI * (turns - Math.rint(turns));
+    }
+    return new Plan(step, kind.samples());
+  }
+
+  private void shift(double seconds) {
     for (int j = 0; j < cRe.length; j++) {
-      double c = Math.cos(step[j] * samples);
-      double s = Math.sin(step[j] * samples);
+      double turns = spins.offsetHertz(j) * seconds;
+      double angle = 2 * Math.PI * (turns - Math.rint(turns));
+      double c = Math.cos(angle);
+      double s = Math.sin(angle);
       double x = cRe[j] * c - cIm[j] * s;
       cIm[j] = cRe[j] * s + cIm[j] * c;
       cRe[j] = x;
     }
   }
 
-  /** From the magnet's frame to the carrier's, mains modulation and cable phase included. */
+  /**
+   * From the magnet's frame to the carrier's, mains modulation and cable phase included. The phase
+   * is exact at the ends of blocks and linear within them: for 10 Hz of swing at 50 Hz that is
+   * within 1e-5 rad.
+   */
   private void carry(double[] re, double[] im, double offset, double dwell, double start) {
-    double phase = scenario.sample().phaseRadians();
-    double turns = magnet.turns() + offset * start;
-    boolean modulated = magnet.modulated();
-    double stepRe = Math.cos(2 * Math.PI * offset * dwell);
-    double stepIm = Math.sin(2 * Math.PI * offset * dwell);
-    double c = 1;
-    double s = 0;
-    for (int k = 0; k < re.length; k++) {
-      if (modulated || k % 64 == 0) {
-        double now = turns + offset * dwell * k;
-        now += magnet.mainsTurns(start + k * dwell);
-        double angle = phase + 2 * Math.PI * (now - Math.rint(now));
-        c = Math.cos(angle);
-        s = Math.sin(angle);
+    double cable = scenario.sample().phaseRadians() / (2 * Math.PI);
+    int block = 64;
+    if (magnet.modulated()) {
+      block = (int) Math.max(1, Math.min(block, BLOCK_SECONDS / dwell));
+    }
+    double from = magnet.turns() + cable + offset * start + magnet.mainsTurns(start);
+    for (int at = 0; at < re.length; at += block) {
+      double later = start + (at + block) * dwell;
+      double to = magnet.turns() + cable + offset * later + magnet.mainsTurns(later);
+      double each = 2 * Math.PI * (to - from) / block;
+      double stepRe = Math.cos(each);
+      double stepIm = Math.sin(each);
+      double angle = 2 * Math.PI * (from - Math.rint(from));
+      double c = Math.cos(angle);
+      double s = Math.sin(angle);
+      int end = Math.min(re.length, at + block);
+      for (int k = at; k < end; k++) {
+        double x = re[k] * c - im[k] * s;
+        im[k] = re[k] * s + im[k] * c;
+        re[k] = x;
+        double t = c * stepRe - s * stepIm;
+        s = c * stepIm + s * stepRe;
+        c = t;
       }
-      double x = re[k] * c - im[k] * s;
-      im[k] = re[k] * s + im[k] * c;
-      re[k] = x;
-      double t = c * stepRe - s * stepIm;
-      s = c * stepIm + s * stepRe;
-      c = t;
+      from = to;
     }
   }
 

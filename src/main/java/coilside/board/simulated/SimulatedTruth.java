@@ -22,7 +22,8 @@ public final class SimulatedTruth {
   /** The 90-degree pulse where B1 is average, carrier on the Larmor frequency, s. */
   public double pulse90Seconds(double amplitude) {
     double response = SimulatedCoilResponse.at(scenario.coil(), larmorHertz()).magnitude();
-    return scenario.transmitter().pulse90Seconds() / (amplitude * response);
+    return scenario.transmitter().pulse90Seconds()
+        / (scenario.transmitter().drive(amplitude) * response);
   }
 
   /** T1 of the sample's components averaged with their fractions, s. */
