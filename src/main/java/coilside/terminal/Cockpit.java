@@ -216,7 +216,7 @@ final class Cockpit {
       return;
     }
     boolean live = work instanceof Work.Live || work instanceof Work.TakeFid;
-    if (work instanceof Work.Live) {
+    if (live) {
       watch.clearHeadlines();
       bestsHeard = 0;
     }
