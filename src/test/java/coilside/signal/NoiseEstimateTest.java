@@ -100,6 +100,21 @@ class NoiseEstimateTest {
   }
 
   @Test
+  void aLineIsTakenOffAndTheDecayLeft() {
+    Random random = new Random(9);
+    List<InterferenceLines.Line> lines =
+        InterferenceLines.find(with(random, 4096, 12345.6, 20 * SIGMA), 1e-3);
+    Fid decay = Synthetic.decay(4096, 1e-5, 0, 30 * SIGMA, 1, -3000, 5e-3);
+    Fid signal = Synthetic.sum(with(random, 4096, 12347, 20 * SIGMA), decay);
+    Fid clean = InterferenceLines.removed(signal, lines);
+    double left = 0;
+    for (int k = 0; k < clean.points(); k++) {
+      left += Math.pow(clean.re(k) - decay.re(k), 2) + Math.pow(clean.im(k) - decay.im(k), 2);
+    }
+    assertEquals(SIGMA, Math.sqrt(left / (2 * clean.points())), 0.05 * SIGMA);
+  }
+
+  @Test
   void refusesADeadReceiver() {
     Fid dead = new Fid(new double[64], new double[64], 1e-5, 0, 1);
     IllegalArgumentException e =
