@@ -51,6 +51,10 @@ final class Autoscale {
     double step = new Axis(0, span, "").step(8);
     low = Math.floor((dataLow - margin * span) / step) * step;
     high = Math.ceil((dataHigh + margin * span) / step) * step;
+    if (!(high > low)) {
+      low -= span / 2;
+      high += span / 2;
+    }
     tooWide = 0;
   }
 }
