@@ -39,7 +39,7 @@ class ScreenTest {
     assertShows(s, "● fresh", "all rungs fresh");
     s.now = s.now.plusSeconds(7200);
     s.turn();
-    assertShows(s, "2.0 h");
+    assertShows(s, "2 h");
   }
 
   @Test
@@ -184,7 +184,7 @@ class ScreenTest {
     s.press("e");
     s.ctrl('u');
     s.press("900MHz");
-    assertShows(s, "900.000 MHz is outside 1.00000 MHz");
+    assertShows(s, "900 MHz is outside 1 MHz to 30 MHz");
     s.press(KeyType.Enter);
     assertEquals(7.9e6, s.desk.settings().searchLowHertz());
     s.ctrl('u');
