@@ -42,7 +42,7 @@ final class Cockpit {
     boolean unicode = TextInterface.unicode(options);
     glyphs = new Glyphs(unicode);
     look = new Look(options.store(), unicode, light, options.bell());
-    pictures = new PictureView(look);
+    pictures = new PictureView(look, watch::snapshot);
     actions = Actions.of(this);
     layout = new ScreenLayout(desk, look, pictures, actions, options.clock());
     watch.ladder(desk.ladder());

@@ -311,6 +311,21 @@ class ScreenTest {
   }
 
   @Test
+  void keysFasterThanFramesMeanThePictureChosen() throws Exception {
+    Stage s = new Stage(120, 40);
+    s.press("r");
+    s.finish();
+    s.press("7");
+    s.cockpit.key(Key.of('5'));
+    s.cockpit.key(Key.of('c'));
+    s.turn();
+    s.turn();
+    assertShows(s, "nutation: amplitude", "µs  fit");
+    s.press("7");
+    assertFalse(s.shows("ms  real"));
+  }
+
+  @Test
   void lookIsKeptForTheNextStart() throws Exception {
     Stage s = new Stage(80, 24);
     s.press("5tw");
