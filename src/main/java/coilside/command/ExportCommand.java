@@ -47,7 +47,7 @@ final class ExportCommand implements CoilsideCommand {
     Capture capture = Captures.read(common.captures, name);
     Path meta = Captures.locate(common.captures, name);
     String base = Captures.baseName(name) + (spectrum ? "-spectrum" : "");
-    Path file = to != null ? to : meta.resolveSibling(base + "." + as.extension());
+    Path file = to != null ? to : meta.resolveSibling(base + as.extension());
     try {
       if (spectrum) {
         Export.spectrum(capture, as, file);
