@@ -150,11 +150,4 @@ class BadInputTest {
     assertTrue(run.err().contains("no resonance within"), run.err());
     assertTrue(run.err().contains("most likely first"), run.err());
   }
-
-  @Test
-  void aClippingReceiverIsToldNotHidden() {
-    CommandRun run =
-        run("ready", "--scenario", "src/test/resources/scenarios/faults/clipping-receiver.toml");
-    assertTrue((run.out() + run.err()).contains("clip"), run.out() + run.err());
-  }
 }
