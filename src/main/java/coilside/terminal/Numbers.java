@@ -39,6 +39,9 @@ final class Numbers {
     if (!Double.isFinite(value)) {
       return "-";
     }
+    if (value == 0) {
+      return join("0", "", unit);
+    }
     int e = exponent(value, unit);
     double scaled = value / Math.pow(10, e);
     int whole = scaled == 0 ? 1 : (int) Math.floor(Math.log10(Math.abs(scaled))) + 1;

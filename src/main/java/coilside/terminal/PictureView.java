@@ -2,6 +2,7 @@ package coilside.terminal;
 
 import coilside.bench.Picture;
 import coilside.bench.Rung;
+import coilside.bench.RungStatus;
 import java.util.ArrayList;
 import java.util.HashMap;
 import java.util.List;
@@ -78,6 +79,10 @@ final class PictureView {
             : picture
                 .map(p -> PictureModels.of(p, look.part, source == Source.LIVE ? "live." : ""))
                 .orElse(List.of());
+    boolean measuring = state.measuring().filter(r -> r == look.chosen).isPresent();
+    if (shown.isEmpty() && source == Source.RUNG && measuring && state.lastScan().isPresent()) {
+      shown = List.of(PictureModels.scan(state.lastScan().get().fid(), look.part));
+    }
     if (shown.isEmpty()) {
       empty(canvas, area, state);
       return;
@@ -159,7 +164,9 @@ final class PictureView {
       if (!busy) {
         text.add("Press m to measure it, r to bring all rungs up to date.");
       }
-      state.status(rung).reasons().forEach(r -> text.add("Because " + r));
+      if (state.status(rung).state() != RungStatus.State.MISSING) {
+        state.status(rung).reasons().forEach(r -> text.add("Because " + r));
+      }
     }
     int y = area.y() + 1;
     for (String paragraph : text) {

@@ -244,7 +244,12 @@ final class Plot {
       switch (s.form()) {
         case LINE -> line(dots, s, x, y, log);
         case BAND -> band(dots, s, x, y);
-        case POINTS -> errorBars(dots, s, x, y, log);
+        case POINTS -> {
+          errorBars(dots, s, x, y, log);
+          if (crowded(s, plot)) {
+            singleDots(dots, s, x, y, log);
+          }
+        }
         case MARKS -> {
           /* whole characters, below */
         }
@@ -252,10 +257,25 @@ final class Plot {
     }
     dots.paint();
     for (Series s : all) {
-      if (s.form() == Series.Form.POINTS) {
+      if (s.form() == Series.Form.POINTS && !crowded(s, plot)) {
         points(plot, s, x, y, log);
       } else if (s.form() == Series.Form.MARKS) {
         marks(plot, s, x);
+      }
+    }
+  }
+
+  /** More points than whole characters could tell apart. */
+  private static boolean crowded(Series s, Area plot) {
+    return s.x().length > plot.width();
+  }
+
+  private void singleDots(Dots dots, Series s, Axis x, Axis y, boolean log) {
+    for (int k = 0; k < s.x().length; k++) {
+      double column = column(dots, x, s.x()[k]);
+      double row = dotRow(dots, y, scaled(s.y()[k], log));
+      if (Double.isFinite(row)) {
+        dots.dot((int) Math.round(column), (int) Math.round(row), s.ink());
       }
     }
   }

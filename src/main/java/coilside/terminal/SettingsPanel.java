@@ -106,9 +106,9 @@ final class SettingsPanel implements Panel {
 
   @Override
   public void draw(Canvas canvas, Area area, Snapshot state) {
-    int top = Math.max(0, chosen - Math.max(1, area.height() - 4) + 1);
+    int top = Math.max(0, chosen - Math.max(1, area.height() - 5) + 1);
     int y = area.y();
-    for (int i = top; i < rows.size() && y < area.bottom() - 3; i++) {
+    for (int i = top; i < rows.size() && y < area.bottom() - 4; i++) {
       Row row = rows.get(i);
       boolean here = i == chosen;
       canvas.put(area.x(), y, here ? canvas.glyphs().pointer() : ' ', Ink.STRONG);
@@ -125,7 +125,7 @@ final class SettingsPanel implements Panel {
       y++;
     }
     Row row = rows.get(chosen);
-    canvas.put(area.x(), area.bottom() - 2, "Allowed: " + row.allowed(), Ink.FAINT, area.right());
+    canvas.put(area.x(), area.bottom() - 3, "Allowed: " + row.allowed(), Ink.FAINT, area.right());
     if (typed != null) {
       consequence(canvas, area, row);
     } else if (desk.busy()) {
@@ -153,8 +153,10 @@ final class SettingsPanel implements Panel {
       text = e.getMessage();
       ink = Ink.BAD;
     }
-    int y = area.bottom() - 1;
-    canvas.put(area.x(), y, text, ink, area.right());
+    List<String> lines = Wrap.wrap(text, area.width());
+    for (int i = 0; i < Math.min(2, lines.size()); i++) {
+      canvas.put(area.x(), area.bottom() - 2 + i, lines.get(i), ink, area.right());
+    }
   }
 
   @Override
