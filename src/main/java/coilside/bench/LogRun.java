@@ -59,7 +59,8 @@ final class LogRun {
   /** Runs to the end of the plan, or until the bench is stopped. */
   LogEnd run() throws BoardException, KeepException {
     bench.note(
-        "log started", run + ": every " + plan.every() + ", " + plan.scans() + " scans a row");
+        "log started",
+        run + ": every " + plan.every().toNanos() * 1e-9 + " s, " + plan.scans() + " scans a row");
     LogEnd end = null;
     try {
       warnOfWhatIsStale();
