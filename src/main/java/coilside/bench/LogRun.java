@@ -323,7 +323,7 @@ final class LogRun {
                 tookNanos * 1e-9,
                 plan.every().toNanos() * 1e-9)
             : trouble;
-    gap(nextUntold, bench.now(), which + ": " + why, "");
+    gap(nextUntold, schedule.due(nextUntold), which + ": " + why, "");
     nextUntold = slot;
   }
 

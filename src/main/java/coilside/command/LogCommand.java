@@ -146,11 +146,19 @@ final class LogCommand extends BenchCommand {
     return new Work.Log(
         interval,
         count,
-        Optional.ofNullable(until).map(LogCommand::moment),
+        Optional.ofNullable(until).map(LogCommand::end),
         scans,
         follow,
         !rowsOnly,
         rules);
+  }
+
+  private static Instant end(String text) {
+    Instant end = moment(text);
+    if (!end.isAfter(Instant.now())) {
+      throw new UsageException("--until '" + text + "' is over already");
+    }
+    return end;
   }
 
   private static LogRule rule(String option, String text, LogRule.Action action) {

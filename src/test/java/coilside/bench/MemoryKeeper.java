@@ -6,11 +6,11 @@ import java.util.List;
 import java.util.Optional;
 
 /** Keeps everything in memory, for tests. */
-final class MemoryKeeper implements Keeper {
-  final List<Capture> captures = new ArrayList<>();
-  final List<Finding> findings = new ArrayList<>();
-  final List<LogRow> rows = new ArrayList<>();
-  final List<String> notes = new ArrayList<>();
+public final class MemoryKeeper implements Keeper {
+  public final List<Capture> captures = new ArrayList<>();
+  public final List<Finding> findings = new ArrayList<>();
+  public final List<LogRow> rows = new ArrayList<>();
+  public final List<String> notes = new ArrayList<>();
   int failRowsFrom = Integer.MAX_VALUE;
 
   @Override
