@@ -191,7 +191,7 @@ public final class SerialLink extends QueuedLink {
     return users.isEmpty() ? "another program" : String.join(", ", users);
   }
 
-  private static String owner(Path device) {
+  static String owner(Path device) {
     try {
       Map<String, Object> found = Files.readAttributes(device, "posix:owner,group,permissions");
       return "it belongs to user " + found.get("owner") + " and group " + found.get("group");
