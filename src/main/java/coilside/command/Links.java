@@ -20,6 +20,8 @@ import java.util.List;
 
 /** Opens the line to a board where the address and its profile say it is. */
 final class Links {
+  private static final int USUAL_BAUD = 115_200;
+
   private Links() {}
 
   /** The user's own folder for what must not be shared: unpacked native libraries. */
@@ -116,15 +118,18 @@ final class Links {
 
   private static Link serial(String path, DeviceProfile profile) throws LinkException {
     prepareNatives();
-    SerialSettings settings = SerialSettings.at(115200);
-    if (profile.serial().isPresent()) {
-      SerialAttachment a = profile.serial().get();
-      settings =
-          SerialSettings.at(a.speedBaud())
-              .withLines(
-                  a.dataTerminalReady() ? LineState.ON : LineState.OFF,
-                  a.requestToSend() ? LineState.ON : LineState.OFF);
+    return SerialLink.open(path, settings(profile), locks());
+  }
+
+  /** How the profile wants its port opened; the time to settle is waited by the driver. */
+  static SerialSettings settings(DeviceProfile profile) {
+    if (profile.serial().isEmpty()) {
+      return SerialSettings.at(USUAL_BAUD);
     }
-    return SerialLink.open(path, settings, locks());
+    SerialAttachment a = profile.serial().get();
+    return SerialSettings.at(a.speedBaud())
+        .withLines(
+            a.dataTerminalReady() ? LineState.ON : LineState.OFF,
+            a.requestToSend() ? LineState.ON : LineState.OFF);
   }
 }
