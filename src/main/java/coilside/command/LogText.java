@@ -11,7 +11,6 @@ import coilside.record.JsonDocument;
 import java.math.BigDecimal;
 import java.math.MathContext;
 import java.math.RoundingMode;
-import java.time.Duration;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
@@ -65,9 +64,8 @@ final class LogText {
     if (s.retries() > 0) {
       head.append(", ").append(s.retries()).append(" answers asked for again");
     }
-    if (s.first().isPresent() && s.last().isPresent()) {
-      Duration lasted = Duration.between(s.first().get(), s.last().get());
-      head.append(", over ").append(words(lasted.toNanos() * 1e-9));
+    if (s.seconds() > 0) {
+      head.append(", over ").append(words(s.seconds()));
     }
     out.add(head.toString());
     s.larmorFrequency().ifPresent(f -> out.add("Larmor frequency, mean: " + text(f, plain)));
@@ -122,6 +120,7 @@ final class LogText {
     JsonDocument out =
         new JsonDocument()
             .put("run", s.run())
+            .put("seconds", s.seconds())
             .put("rows", s.rows())
             .put("gaps", s.gaps())
             .put("retries", s.retries());
