@@ -145,7 +145,7 @@ final class DecayMethod implements Method {
         Choices.gain(a),
         Choices.rest(a, repetition(a)),
         List.of(
-            new Pulse(Choices.pulse90(a), phase, Choices.amplitude(a)),
+            new Pulse(Choices.pulse90OrGuess(a), phase, Choices.amplitude(a)),
             new Wait(Choices.delay(a)),
             new Receive(w.points(), w.dwellSeconds(), 0)));
   }

@@ -21,7 +21,9 @@ import java.util.Optional;
 /**
  * The ring-down rung: pairs of scans with the pulse's phase turned by 180 degrees and the receiver
  * opened as early as it can be. What turns with the pulse is ring-down and signal; the signal is
- * fitted late, drawn back and taken off.
+ * fitted late, drawn back and taken off. On a board that knows no pulse phase nothing can be
+ * turned: the DC offset is taken off as the receive-only scan has it, and what remains counts as
+ * following.
  */
 final class RingDownMethod implements Method {
   private static final int PAIRS = 2;
@@ -47,7 +49,7 @@ final class RingDownMethod implements Method {
     double earliest = limits.waitSeconds().min();
     double pulse = Choices.pulse(limits, PULSE);
     for (int i = 0; i < 2 * PAIRS; i++) {
-      double phase = i % 2 * Math.PI;
+      double phase = limits.pulsePhases() ? i % 2 * Math.PI : 0;
       Shot shot =
           BenchShots.single(
               a, Choices.carrier(a), Choices.gain(a), pulse, phase, rest, earliest, window);
@@ -76,7 +78,11 @@ final class RingDownMethod implements Method {
     }
     double one = Quiet.of(capture.shots(), capture.scans()).sigma();
     double sigma = one / Math.sqrt(plus.count() + minus.count());
-    Fid following = RingDownFit.separate(plus.mean(), minus.mean()).following();
+    boolean turned = minus.count() > 0;
+    Fid following =
+        turned
+            ? RingDownFit.separate(plus.mean(), minus.mean()).following()
+            : Quiet.of(capture.shots(), capture.scans()).strip(plus.mean());
     double pulseHalf = pulseHalf(capture);
     RingDownFit.Result fit;
     try {
@@ -99,6 +105,10 @@ final class RingDownMethod implements Method {
             : Measured.withoutUncertainty(
                 delay, Unit.SECOND, fit.clearSeconds().whyNoUncertainty()));
     List<String> warnings = new ArrayList<>(fit.warnings());
+    if (!turned) {
+      warnings.add(
+          "this board knows no pulse phase: the receiver's own recovery counts as ring-down");
+    }
     if (clippedUntil > 0) {
       warnings.add(
           String.format(

@@ -2,7 +2,9 @@ package coilside.board;
 
 /**
  * What a board can do and what the operator allows; SI units. The guard holds every shot against
- * these. "min" and "max" are inclusive; a step of 0 means continuous.
+ * these. "min" and "max" are inclusive; a step of 0 means continuous. Where {@code pulsePhases} is
+ * false the board pulses with one phase only and the host turns the samples instead: the signal is
+ * as if the pulse had that phase, but the receiver's DC offset and interference turn with it.
  */
 public record BoardLimits(
     Range carrierHertz,
@@ -20,6 +22,7 @@ public record BoardLimits(
     double maxDutyCycle,
     double dutyWindowSeconds,
     boolean arbitraryShots,
+    boolean pulsePhases,
     boolean repeatLoops,
     boolean settableReceivePhase,
     boolean reportsTemperature) {

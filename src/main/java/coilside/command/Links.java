@@ -59,7 +59,7 @@ final class Links {
       }
       if (!address.port().startsWith("/") && address.port().contains(":")) {
         HostPort to = HostPort.parse(address.port());
-        return TcpLink.open(to.host(), to.port());
+        return TcpLink.open(to.host(), to.port(), locks());
       }
       return serial(address.port(), profile);
     } catch (LinkException e) {
@@ -80,7 +80,7 @@ final class Links {
       }
     }
     if (attachment.isEmpty() && profile.tcp().isPresent()) {
-      return TcpLink.open(profile.tcp().get().host(), profile.tcp().get().port());
+      return TcpLink.open(profile.tcp().get().host(), profile.tcp().get().port(), locks());
     }
     throw new BoardException.Unreachable(
         "no port shows a device that the profile '"

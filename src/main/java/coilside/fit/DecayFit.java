@@ -127,7 +127,8 @@ public final class DecayFit {
         Math.hypot(one.cRe[0], one.cIm[0])
             * Math.sqrt(Math.expm1(2 * n * one.lambdaRe[0]) / Math.expm1(2 * one.lambdaRe[0]))
             / sigma;
-    double needed = Tail.sigmaThreshold(start.trials(), FALSE_ALARM);
+    // The fit also moves frequency and decay to the noise's liking: worth six times the bins.
+    double needed = Tail.sigmaThreshold(6 * start.trials(), FALSE_ALARM);
     if (statistic < needed) {
       throw new NotDetermined(
           Reason.NO_SIGNAL,

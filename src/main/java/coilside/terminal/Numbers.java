@@ -52,6 +52,13 @@ final class Numbers {
     return join(fixed(scaled, decimals), prefix(e), unit);
   }
 
+  /** Up to six digits without trailing zeros: "7.9 MHz", "0.5". */
+  static String trimmed(double value, String unit) {
+    return si(value, unit, 6)
+        .replaceFirst("(\\.\\d*?)0+( |$)", "$1$2")
+        .replaceFirst("\\.( |$)", "$1");
+  }
+
   private static String join(String number, String prefix, String unit) {
     String u = prefix + (unit.equals("1") ? "" : unit);
     return u.isEmpty() ? number : number + " " + u;

@@ -42,7 +42,7 @@ final class SettingsPanel implements Panel {
     rows.add(
         own(
             "live memory",
-            () -> look.memoryScans + " scans",
+            () -> look.memoryScans + (look.memoryScans == 1 ? " scan" : " scans"),
             1,
             1000,
             v -> look.memoryScans = (int) v));
@@ -63,7 +63,7 @@ final class SettingsPanel implements Panel {
     rows.add(
         new Row(
             "log every",
-            () -> Numbers.si(look.logEverySeconds, "s", 4),
+            () -> Numbers.trimmed(look.logEverySeconds, "s"),
             "0.1 s to 24 h",
             t ->
                 checked(
@@ -88,8 +88,8 @@ final class SettingsPanel implements Panel {
         name,
         shown,
         Numbers.si(min, "", 1) + " to " + (long) max,
-        t -> checked(SettingField.within(t.replace("scans", ""), "", 1, range, "16")),
-        t -> set.accept(SettingField.within(t.replace("scans", ""), "", 1, range, "16")));
+        t -> checked(SettingField.within(t.replaceFirst("scans?", ""), "", 1, range, "16")),
+        t -> set.accept(SettingField.within(t.replaceFirst("scans?", ""), "", 1, range, "16")));
   }
 
   @Override

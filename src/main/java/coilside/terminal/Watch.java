@@ -82,9 +82,6 @@ final class Watch implements Consumer<Progress> {
       stepTaken = clock.instant();
     } else if (event instanceof Progress.RungEnded e) {
       measuring = null;
-      if (e.finding().refused()) {
-        note(true, e.finding().rung().id() + ": " + e.finding().refusal().get().reason());
-      }
     } else if (event instanceof Progress.LadderChanged e) {
       ladder = List.copyOf(e.ladder());
     } else if (event instanceof Progress.LogRowKept e) {

@@ -150,6 +150,7 @@ final class FakeDesk implements Desk {
         true,
         true,
         true,
+        true,
         true);
   }
 
