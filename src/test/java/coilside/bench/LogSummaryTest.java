@@ -36,8 +36,7 @@ class LogSummaryTest {
   private void gap(long slot) {
     Instant due = START.plusSeconds(slot);
     builder.add(
-        new LogRow(
-            "log-a", slot, due, due, Map.of(), OptionalDouble.empty(), 0, "link lost", ""));
+        new LogRow("log-a", slot, due, due, Map.of(), OptionalDouble.empty(), 0, "link lost", ""));
   }
 
   private static double at(LogSummary summary, double seconds) {
