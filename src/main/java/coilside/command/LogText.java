@@ -69,7 +69,7 @@ final class LogText {
     }
     out.add(head.toString());
     s.larmorFrequency().ifPresent(f -> out.add("Larmor frequency, mean: " + text(f, plain)));
-    s.driftPpmPerHour().ifPresent(d -> out.add("drift: " + slope(d) + " ppm/h"));
+    s.driftPpmPerHour().ifPresent(d -> out.add("drift: " + slope(d.value(), d.u()) + " ppm/h"));
     if (s.temperatureLowCelsius().isPresent()) {
       out.add(
           String.format(
@@ -79,7 +79,7 @@ final class LogText {
               s.temperatureHighCelsius().getAsDouble()));
     }
     s.coefficientPpmPerKelvin()
-        .ifPresent(c -> out.add("temperature coefficient: " + slope(c) + " ppm/K"));
+        .ifPresent(c -> out.add("temperature coefficient: " + slope(c.value(), c.u()) + " ppm/K"));
     for (LogSummary.Wander w : s.wander()) {
       out.add(
           String.format(
@@ -93,7 +93,7 @@ final class LogText {
     return out;
   }
 
-  private static String words(double seconds) {
+  static String words(double seconds) {
     if (seconds < 120) {
       return String.format(Locale.ROOT, "%.4g s", seconds);
     }
@@ -104,13 +104,13 @@ final class LogText {
   }
 
   /** A slope in the concise form: two digits of uncertainty, the value as many decimals. */
-  static String slope(LogSummary.Slope s) {
-    if (!(s.u() > 0) || !Double.isFinite(s.u()) || !Double.isFinite(s.value())) {
-      return String.format(Locale.ROOT, "%.4g", s.value());
+  static String slope(double slope, double itsU) {
+    if (!(itsU > 0) || !Double.isFinite(itsU) || !Double.isFinite(slope)) {
+      return String.format(Locale.ROOT, "%.4g", slope);
     }
-    BigDecimal u = new BigDecimal(s.u()).round(new MathContext(2));
+    BigDecimal u = new BigDecimal(itsU).round(new MathContext(2));
     int decimals = u.scale();
-    BigDecimal value = new BigDecimal(s.value()).setScale(decimals, RoundingMode.HALF_EVEN);
+    BigDecimal value = new BigDecimal(slope).setScale(decimals, RoundingMode.HALF_EVEN);
     String digits = decimals > 0 ? u.unscaledValue().toString() : u.toBigInteger().toString();
     return value.toPlainString() + "(" + digits + ")";
   }
