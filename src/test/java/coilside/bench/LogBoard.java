@@ -56,6 +56,7 @@ final class LogBoard implements Board, Waiter, InstantSource {
           0.5,
           1,
           true,
+          true,
           false,
           true,
           true);
