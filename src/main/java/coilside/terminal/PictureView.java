@@ -27,6 +27,7 @@ final class PictureView {
   private Boolean alone;
   private boolean shownAlone;
   private List<PlotModel> shown = List.of();
+  private List<Integer> drawnNow = List.of();
 
   PictureView(Look look, Supplier<Snapshot> latest) {
     this.look = look;
@@ -61,6 +62,16 @@ final class PictureView {
     alone = !shownAlone;
   }
 
+  /** Places the cursor of the plot at that cell and gives it the keys. */
+  void click(int column, int row) {
+    for (int i = 0; i < shown.size(); i++) {
+      if (drawnNow.contains(i) && view(shown.get(i)).placeCursor(column, row)) {
+        focus = i;
+        return;
+      }
+    }
+  }
+
   boolean several() {
     return shown.size() > 1;
   }
@@ -78,7 +89,7 @@ final class PictureView {
   }
 
   private PlotView view(PlotModel m) {
-    return views.computeIfAbsent(m.id() + look.part, k -> new PlotView());
+    return views.computeIfAbsent(m.id() + look.part + m.xUnit(), k -> new PlotView());
   }
 
   private void choosePlots(Snapshot state) {
@@ -87,7 +98,10 @@ final class PictureView {
         source == Source.LOG
             ? LogModels.of(state.log())
             : picture
-                .map(p -> PictureModels.of(p, look.part, source == Source.LIVE ? "live." : ""))
+                .map(
+                    p ->
+                        PictureModels.of(
+                            p, look.part, look.ppm, source == Source.LIVE ? "live." : ""))
                 .orElse(List.of());
     outdated = false;
   }
@@ -132,6 +146,7 @@ final class PictureView {
     Plot plot = new Plot(canvas, look.style);
     if (one) {
       PlotModel m = shown.get(focus);
+      drawnNow = List.of(focus);
       plot.draw(m, view(m), area, look.residuals, true);
       return;
     }
@@ -140,6 +155,7 @@ final class PictureView {
             ? focus - 1
             : Math.min(focus, shown.size() - 2);
     List<PlotModel> two = List.of(shown.get(first), shown.get(first + 1));
+    drawnNow = List.of(first, first + 1);
     boolean beside = area.width() >= 130;
     for (int i = 0; i < 2; i++) {
       int half = beside ? area.width() / 2 : area.height() / 2;

@@ -10,6 +10,7 @@ final class PlotView {
   private boolean touched;
   private double cursor = Double.NaN;
   private boolean logarithmic;
+  private Area drawn = new Area(0, 0, 0, 0);
 
   double from() {
     return from;
@@ -59,6 +60,20 @@ final class PlotView {
 
   void toggleCursor() {
     cursor = cursorOn() ? Double.NaN : 0.5;
+  }
+
+  /** Where it was drawn last. */
+  void drawnIn(Area area) {
+    drawn = area;
+  }
+
+  /** Places the cursor there; false when that is outside. */
+  boolean placeCursor(int column, int row) {
+    if (column < drawn.x() || column >= drawn.right() || row < drawn.y() || row >= drawn.bottom()) {
+      return false;
+    }
+    cursor = (column - drawn.x()) / Math.max(1.0, drawn.width() - 1.0);
+    return true;
   }
 
   void moveCursor(double by) {
