@@ -36,6 +36,20 @@ final class KnownLadder implements AutoCloseable {
         there ? Optional.of(BenchRecord.watch(options.captures)) : Optional.empty(), options);
   }
 
+  /** The ladder in a record that is open already, which is closed together with it. */
+  static KnownLadder on(RecordView view, CommonOptions options) {
+    return new KnownLadder(Optional.of(view), options);
+  }
+
+  /** How the bench stood at its newest finding. */
+  Optional<Conditions> lastConditions() throws KeepException {
+    Map<Rung, List<Finding>> findings = new EnumMap<>(Rung.class);
+    for (Rung rung : Rung.values()) {
+      findings.put(rung, history(rung));
+    }
+    return LadderView.last(findings);
+  }
+
   Instant now() {
     return clock.instant();
   }

@@ -12,6 +12,7 @@ import coilside.board.link.Link;
 import coilside.board.profile.Command;
 import coilside.board.profile.CommandName;
 import coilside.board.profile.DeviceProfile;
+import coilside.board.profile.Replies;
 import coilside.board.profile.Template;
 import coilside.board.wire.Clean;
 import coilside.shot.Shot;
@@ -205,15 +206,25 @@ final class ProfilePlayer implements ShotPlayer {
       unsettled = true;
       try {
         conversation.say(commands);
+        if (silentButComplains()) {
+          recognition.again();
+        }
         unsettled = false;
       } catch (Refused refused) {
         // One by one, or asked until there is no error left: nothing more is on its way.
-        unsettled = profile.replies().ahead() > 1;
+        unsettled = profile.replies().ahead() > 1 || silentButComplains();
         throw refused;
       }
     } finally {
       wire.unlock();
     }
+  }
+
+  /** The answer to a question shows that all before it was taken, or brings the complaint. */
+  private boolean silentButComplains() {
+    return profile.replies().mode() == Replies.Mode.NONE
+        && profile.replies().error().isPresent()
+        && profile.identification().ask().isPresent();
   }
 
   /** Asks once more who is there. */

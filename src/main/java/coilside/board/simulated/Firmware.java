@@ -43,6 +43,7 @@ public final class Firmware {
   private long idleSinceNanos = Long.MIN_VALUE;
   private int commands;
   private int scansPlayed;
+  private String echoed = "";
 
   /**
    * @param profile how it speaks
@@ -180,9 +181,8 @@ public final class Firmware {
     if (faults.silentAfterCommands() > 0 && commands > faults.silentAfterCommands()) {
       return;
     }
-    if (profile.framing() instanceof Framing.Lines lines && lines.echo()) {
-      voice.outgoing().add(dialect.wrap(message));
-    }
+    echoed = message;
+    echo();
     Replies replies = profile.replies();
     if (replies.question().isPresent() && matches(replies.question().get(), message)) {
       voice.answerQuestion();
@@ -190,6 +190,12 @@ public final class Firmware {
       voice.answer(identity());
     } else if (!command(message, nowNanos)) {
       settingUp(message);
+    }
+  }
+
+  private void echo() {
+    if (profile.framing() instanceof Framing.Lines lines && lines.echo()) {
+      voice.outgoing().add(dialect.wrap(echoed));
     }
   }
 
@@ -252,6 +258,7 @@ public final class Firmware {
         halt();
         idleSinceNanos = nowNanos;
         voice.outgoing().clear();
+        echo();
         voice.confirm(command);
       }
       case TEMPERATURE ->
