@@ -89,7 +89,8 @@ final class PictureView {
   }
 
   private PlotView view(PlotModel m) {
-    return views.computeIfAbsent(m.id() + look.part + m.xUnit(), k -> new PlotView());
+    return views.computeIfAbsent(
+        m.id() + look.part + m.xUnit(), k -> new PlotView(k.contains("noise.spectrum")));
   }
 
   private void choosePlots(Snapshot state) {

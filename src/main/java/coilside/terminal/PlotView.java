@@ -12,6 +12,13 @@ final class PlotView {
   private boolean logarithmic;
   private Area drawn = new Area(0, 0, 0, 0);
 
+  /**
+   * @param logarithmic whether the scale starts out logarithmic
+   */
+  PlotView(boolean logarithmic) {
+    this.logarithmic = logarithmic;
+  }
+
   double from() {
     return from;
   }

@@ -14,19 +14,23 @@ import java.util.Optional;
 /** Turns a spectrum into a plot: curve, noise level, and the list of its lines. */
 final class SpectrumModels {
   private static final double THRESHOLD_SIGMA = 6;
+  private static final int DC_POINTS = 6;
   private static final int MOST_LINES = 8;
 
   private SpectrumModels() {}
 
   /**
-   * The plot of a spectrum.
+   * The plot of a spectrum. Noise has no phase: its spectrum is shown as magnitude, and all of it.
    *
+   * @param wanted the part to show of a spectrum with a phase
    * @param phased whether the real part shows absorption, so that widths and areas mean something
    * @param ppm abscissa in ppm of the carrier instead of Hz
    */
   static PlotModel of(
-      Spectrum s, Rung rung, Part part, boolean phased, boolean ppm, String prefix) {
+      Spectrum s, Rung rung, Part wanted, boolean phased, boolean ppm, String prefix) {
     int n = s.points();
+    boolean signal = rung != Rung.NOISE;
+    Part part = signal ? wanted : Part.MAGNITUDE;
     boolean inPpm = ppm && s.carrierHertz() > 0;
     double scale = inPpm ? 1e6 / s.carrierHertz() : 1;
     double[] f = new double[n];
@@ -46,8 +50,14 @@ final class SpectrumModels {
     if (part == Part.BOTH) {
       series.add(Series.line("imaginary", Ink.SECOND, f, s.im()));
     }
-    Optional<Peak> peak = Peak.of(s, magnitude, noise);
-    double[] near = peak.map(Peak::around).orElse(new double[] {Double.NaN, Double.NaN});
+    double[] searched = magnitude.clone();
+    if (!signal) {
+      // The DC offset is told apart from interference lines.
+      Arrays.fill(searched, Math.max(0, n / 2 - DC_POINTS), Math.min(n, n / 2 + DC_POINTS + 1), 0);
+    }
+    Optional<Peak> peak = Peak.of(s, searched, noise);
+    double[] near =
+        peak.filter(p -> signal).map(Peak::around).orElse(new double[] {Double.NaN, Double.NaN});
     List<Peaks.Peak> lines = phased ? lines(s) : List.of();
     return new PlotModel(
         prefix + rung.id() + ".spectrum",
@@ -81,10 +91,7 @@ final class SpectrumModels {
   private static String title(List<Peaks.Peak> lines, Optional<Peak> peak) {
     if (lines.size() == 1) {
       Peaks.Peak p = lines.get(0);
-      return "; line at "
-          + Numbers.si(p.offsetHertz().value(), "Hz", 4)
-          + ", width "
-          + Numbers.si(p.widthHertz().value(), "Hz", 3);
+      return "; line at " + Numbers.si(p.offsetHertz().value(), "Hz", 4);
     }
     return (lines.isEmpty() ? "" : "; " + lines.size() + " lines, largest")
         + peak.map(p -> lines.isEmpty() ? p.text() : p.text().replace("; peak", "")).orElse("");

@@ -91,7 +91,7 @@ class ScreenTest {
     s.press("7");
     assertShows(s, "FID, real", "residual", "time (ms)");
     s.press("u");
-    assertShows(s, "spectrum, real", "peak at 122.1 Hz", "offset (");
+    assertShows(s, "spectrum, real", "line at 12", "offset (");
     s.press("1");
     assertShows(s, "no line above 5 sigma", "noise level");
     s.press("2");
