@@ -137,6 +137,13 @@ final class Plot {
         if (!Double.isFinite(v) || s.x()[k] < x.low() || s.x()[k] > x.high()) {
           continue;
         }
+        if (log && s.form() == Series.Form.BAND) {
+          // A band about zero has no lower edge on a logarithmic scale.
+          double edge = PlotSeries.scaled(Math.abs(v) + s.uncertainty(k), true, logFloor);
+          low = Math.min(low, edge);
+          high = Math.max(high, edge);
+          continue;
+        }
         double u = log ? 0 : s.uncertainty(k);
         low = Math.min(low, PlotSeries.scaled(v, log, logFloor) - u);
         high = Math.max(high, PlotSeries.scaled(v, log, logFloor) + u);

@@ -41,10 +41,7 @@ final class SpectrumModels {
     double noise = Peak.baseline(magnitude);
     series.add(
         Series.band(
-            "noise level",
-            new double[] {f[0], f[n - 1]},
-            new double[2],
-            new double[] {noise, noise}));
+            "noise", new double[] {f[0], f[n - 1]}, new double[2], new double[] {noise, noise}));
     double[] y = PictureModels.part(s.re(), s.im(), part);
     series.add(Series.line(part == Part.BOTH ? "real" : part.words, Ink.SIGNAL, f, y));
     if (part == Part.BOTH) {

@@ -93,7 +93,7 @@ class ScreenTest {
     s.press("u");
     assertShows(s, "spectrum, real", "line at 12", "offset (");
     s.press("1");
-    assertShows(s, "no line above 5 sigma", "noise level");
+    assertShows(s, "no line above 5 sigma", "░ noise");
     s.press("2");
     assertShows(s, "resonance: detection", "carrier (MHz)", "sigma");
   }
