@@ -21,6 +21,7 @@ import java.util.OptionalDouble;
  * @param run identity of the run
  * @param first when the first row was started, UTC; empty without rows
  * @param last when the last row was started, UTC
+ * @param seconds from the first to the last row by the schedule, s
  * @param rows rows with values
  * @param gaps rows without
  * @param retries answers that had to be asked for again
@@ -36,6 +37,7 @@ public record LogSummary(
     String run,
     Optional<Instant> first,
     Optional<Instant> last,
+    double seconds,
     long rows,
     long gaps,
     long retries,
@@ -81,11 +83,12 @@ public record LogSummary(
   public static final class Builder {
     private String run = "";
     private Instant first;
-    private Instant firstDue;
     private long firstNumber;
     private Instant last;
     private Instant lastDue;
     private long lastNumber;
+    private final double[] slotSeconds = new double[101];
+    private int steps;
     private long gaps;
     private long retries;
     private long[] number = new long[64];
@@ -100,8 +103,11 @@ public record LogSummary(
       run = row.run();
       if (first == null) {
         first = row.started();
-        firstDue = row.due();
         firstNumber = row.number();
+      }
+      if (lastDue != null && steps < slotSeconds.length && row.number() > lastNumber) {
+        slotSeconds[steps++] =
+            Duration.between(lastDue, row.due()).toNanos() * 1e-9 / (row.number() - lastNumber);
       }
       last = row.started();
       lastDue = row.due();
@@ -149,6 +155,7 @@ public record LogSummary(
           run,
           Optional.ofNullable(first),
           Optional.ofNullable(last),
+          (lastNumber - firstNumber) * interval,
           valued,
           gaps,
           retries,
@@ -161,14 +168,14 @@ public record LogSummary(
           notes);
     }
 
-    /** From one slot to the next, s, by the schedule. */
+    /** From one slot to the next, s: the usual distance, since the clock may have stepped. */
     private double interval() {
-      if (first == null || lastNumber == firstNumber) {
+      if (steps == 0) {
         return 1;
       }
-      double seconds = Duration.between(firstDue, lastDue).toNanos() * 1e-9;
-      double interval = seconds / (lastNumber - firstNumber);
-      return interval > 0 ? interval : 1;
+      double[] sorted = Arrays.copyOf(slotSeconds, steps);
+      Arrays.sort(sorted);
+      return sorted[steps / 2] > 0 ? sorted[steps / 2] : 1;
     }
 
     private static Optional<DriftFit.Line> line(

@@ -27,6 +27,48 @@ public record BoardLimits(
     boolean settableReceivePhase,
     boolean reportsTemperature) {
 
+  /** Limits of a board whose pulses have a phase of their own. */
+  public BoardLimits(
+      Range carrierHertz,
+      Range gainDecibels,
+      Range pulseSeconds,
+      Range amplitude,
+      Range waitSeconds,
+      Range dwellSeconds,
+      int minPoints,
+      int maxPoints,
+      int maxWindows,
+      int maxSteps,
+      int maxRepeats,
+      double maxReceiveSeconds,
+      double maxDutyCycle,
+      double dutyWindowSeconds,
+      boolean arbitraryShots,
+      boolean repeatLoops,
+      boolean settableReceivePhase,
+      boolean reportsTemperature) {
+    this(
+        carrierHertz,
+        gainDecibels,
+        pulseSeconds,
+        amplitude,
+        waitSeconds,
+        dwellSeconds,
+        minPoints,
+        maxPoints,
+        maxWindows,
+        maxSteps,
+        maxRepeats,
+        maxReceiveSeconds,
+        maxDutyCycle,
+        dutyWindowSeconds,
+        arbitraryShots,
+        true,
+        repeatLoops,
+        settableReceivePhase,
+        reportsTemperature);
+  }
+
   /**
    * An inclusive range with a step, in the unit of the field's name.
    *

@@ -43,11 +43,16 @@ final class KnownLadder implements AutoCloseable {
 
   /** How the bench stood at its newest finding. */
   Optional<Conditions> lastConditions() throws KeepException {
+    return LadderView.last(findings());
+  }
+
+  /** All findings by rung, oldest first. */
+  Map<Rung, List<Finding>> findings() throws KeepException {
     Map<Rung, List<Finding>> findings = new EnumMap<>(Rung.class);
     for (Rung rung : Rung.values()) {
       findings.put(rung, history(rung));
     }
-    return LadderView.last(findings);
+    return findings;
   }
 
   Instant now() {
@@ -59,10 +64,7 @@ final class KnownLadder implements AutoCloseable {
   }
 
   List<RungStatus> ladder() throws KeepException {
-    Map<Rung, List<Finding>> findings = new EnumMap<>(Rung.class);
-    for (Rung rung : Rung.values()) {
-      findings.put(rung, history(rung));
-    }
+    Map<Rung, List<Finding>> findings = findings();
     Conditions last =
         LadderView.last(findings)
             .orElse(new Conditions("", "", 1, 0, 0, "", "", OptionalDouble.empty()));

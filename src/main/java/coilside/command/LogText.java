@@ -11,7 +11,6 @@ import coilside.record.JsonDocument;
 import java.math.BigDecimal;
 import java.math.MathContext;
 import java.math.RoundingMode;
-import java.time.Duration;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
@@ -65,13 +64,12 @@ final class LogText {
     if (s.retries() > 0) {
       head.append(", ").append(s.retries()).append(" answers asked for again");
     }
-    if (s.first().isPresent() && s.last().isPresent()) {
-      Duration lasted = Duration.between(s.first().get(), s.last().get());
-      head.append(", over ").append(words(lasted.toNanos() * 1e-9));
+    if (s.seconds() > 0) {
+      head.append(", over ").append(words(s.seconds()));
     }
     out.add(head.toString());
     s.larmorFrequency().ifPresent(f -> out.add("Larmor frequency, mean: " + text(f, plain)));
-    s.driftPpmPerHour().ifPresent(d -> out.add("drift: " + slope(d) + " ppm/h"));
+    s.driftPpmPerHour().ifPresent(d -> out.add("drift: " + slope(d.value(), d.u()) + " ppm/h"));
     if (s.temperatureLowCelsius().isPresent()) {
       out.add(
           String.format(
@@ -81,7 +79,7 @@ final class LogText {
               s.temperatureHighCelsius().getAsDouble()));
     }
     s.coefficientPpmPerKelvin()
-        .ifPresent(c -> out.add("temperature coefficient: " + slope(c) + " ppm/K"));
+        .ifPresent(c -> out.add("temperature coefficient: " + slope(c.value(), c.u()) + " ppm/K"));
     for (LogSummary.Wander w : s.wander()) {
       out.add(
           String.format(
@@ -95,7 +93,7 @@ final class LogText {
     return out;
   }
 
-  private static String words(double seconds) {
+  static String words(double seconds) {
     if (seconds < 120) {
       return String.format(Locale.ROOT, "%.4g s", seconds);
     }
@@ -106,13 +104,13 @@ final class LogText {
   }
 
   /** A slope in the concise form: two digits of uncertainty, the value as many decimals. */
-  static String slope(LogSummary.Slope s) {
-    if (!(s.u() > 0) || !Double.isFinite(s.u()) || !Double.isFinite(s.value())) {
-      return String.format(Locale.ROOT, "%.4g", s.value());
+  static String slope(double slope, double itsU) {
+    if (!(itsU > 0) || !Double.isFinite(itsU) || !Double.isFinite(slope)) {
+      return String.format(Locale.ROOT, "%.4g", slope);
     }
-    BigDecimal u = new BigDecimal(s.u()).round(new MathContext(2));
+    BigDecimal u = new BigDecimal(itsU).round(new MathContext(2));
     int decimals = u.scale();
-    BigDecimal value = new BigDecimal(s.value()).setScale(decimals, RoundingMode.HALF_EVEN);
+    BigDecimal value = new BigDecimal(slope).setScale(decimals, RoundingMode.HALF_EVEN);
     String digits = decimals > 0 ? u.unscaledValue().toString() : u.toBigInteger().toString();
     return value.toPlainString() + "(" + digits + ")";
   }
@@ -122,6 +120,7 @@ final class LogText {
     JsonDocument out =
         new JsonDocument()
             .put("run", s.run())
+            .put("seconds", s.seconds())
             .put("rows", s.rows())
             .put("gaps", s.gaps())
             .put("retries", s.retries());

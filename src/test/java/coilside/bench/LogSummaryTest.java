@@ -34,9 +34,9 @@ class LogSummaryTest {
   }
 
   private void gap(long slot) {
+    Instant due = START.plusSeconds(slot);
     builder.add(
-        new LogRow(
-            "log-a", slot, START, START, Map.of(), OptionalDouble.empty(), 0, "link lost", ""));
+        new LogRow("log-a", slot, due, due, Map.of(), OptionalDouble.empty(), 0, "link lost", ""));
   }
 
   private static double at(LogSummary summary, double seconds) {
@@ -152,6 +152,27 @@ class LogSummaryTest {
     LogSummary summary = builder.build();
     assertTrue(summary.coefficientPpmPerKelvin().isEmpty());
     assertTrue(summary.notes().stream().anyMatch(s -> s.contains("no temperature coefficient")));
+  }
+
+  @Test
+  void aStepOfTheComputersClockDoesNotBendTheDrift() {
+    for (int i = 0; i < 30; i++) {
+      Instant due = START.plusSeconds(60L * i - (i < 7 ? 0 : 3600));
+      builder.add(
+          new LogRow(
+              "log-a",
+              i,
+              due,
+              due,
+              Map.of("larmor_frequency", Measured.of(8.09e6 - i, 0.01, Unit.HERTZ)),
+              OptionalDouble.empty(),
+              0,
+              "",
+              ""));
+    }
+    LogSummary summary = builder.build();
+    assertEquals(29 * 60, summary.seconds(), 1e-6);
+    assertEquals(-60 / 8.09, summary.driftPpmPerHour().orElseThrow().value(), 1e-4);
   }
 
   @Test

@@ -51,7 +51,6 @@ class GuardedBoardTest {
         DUTY,
         1,
         arbitrary,
-        true,
         loops,
         true,
         false);

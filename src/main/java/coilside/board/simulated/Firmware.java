@@ -35,6 +35,7 @@ public final class Firmware {
   private final FirmwareDialect dialect;
   private final FirmwareBlocks blocks;
   private final FirmwareShot shot;
+  private final FirmwareDuty duty;
   private final Map<String, WireValue> values = new HashMap<>();
   private final FirmwareVoice voice;
   private final Deque<Integer> fetches = new ArrayDeque<>();
@@ -65,6 +66,7 @@ public final class Firmware {
     this.voice = new FirmwareVoice(profile, dialect, faults);
     this.blocks = new FirmwareBlocks(profile, dialect);
     this.shot = new FirmwareShot(profile);
+    this.duty = new FirmwareDuty(profile.boardLimits());
     for (Map.Entry<ValueName, WireValue> value : profile.values().entrySet()) {
       values.put(value.getKey().word(), value.getValue());
     }
@@ -255,6 +257,9 @@ public final class Firmware {
       case RECEIVE_ONLY -> begin(shot.fixed(told, false), 1, command, nowNanos);
       case FETCH -> fetch(told.getOrDefault("window", -1.0).intValue());
       case STOP -> {
+        if (paced && run != null && !run.allPlayed()) {
+          duty.stopped(nowNanos * 1e-9);
+        }
         halt();
         idleSinceNanos = nowNanos;
         voice.outgoing().clear();
@@ -295,6 +300,7 @@ public final class Firmware {
     if (scans < 1 || scans > MOST_SCANS || scans != Math.rint(scans)) {
       throw FirmwareRefusal.range("scans " + scans + " outside 1.." + MOST_SCANS);
     }
+    duty.admit(whole, (long) scans, nowNanos * 1e-9);
     if (paced && idleSinceNanos != Long.MIN_VALUE) {
       receiver.idle(Math.max(0, nowNanos - idleSinceNanos) * 1e-9);
     }

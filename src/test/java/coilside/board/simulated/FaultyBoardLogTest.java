@@ -15,7 +15,9 @@ import coilside.board.profile.DeviceProfile;
 import coilside.quantity.Nucleus;
 import java.time.Clock;
 import java.time.Duration;
+import java.util.HashMap;
 import java.util.List;
+import java.util.Map;
 import java.util.Optional;
 import java.util.OptionalDouble;
 import org.junit.jupiter.api.Test;
@@ -27,13 +29,14 @@ import org.junit.jupiter.api.Timeout;
  */
 @Timeout(value = 60, threadMode = Timeout.ThreadMode.SEPARATE_THREAD)
 class FaultyBoardLogTest {
-  /** The Larmor frequency of the shipped scenario at its starting temperature, Hz. */
+  /**
+   * Drift of the shipped scenario over the test is far below this, a false average far above, Hz.
+   */
   private static final double WIDE_OF_THE_MARK = 5;
 
-  private static final int ROWS = 30;
+  private static final Map<String, MemoryKeeper> CLIMBED = new HashMap<>();
 
-  private final DeviceProfile profile = FirmwareExchangeTest.profile("scpi-console");
-  private static MemoryKeeper climbed;
+  private DeviceProfile profile = FirmwareExchangeTest.profile("scpi-console");
   private final MemoryKeeper keeper = new MemoryKeeper();
 
   private Board board(FirmwareFaults faults) throws Exception {
@@ -65,26 +68,27 @@ class FaultyBoardLogTest {
     return new Bench(board, keeper, settings, Clock.systemUTC(), (due, stop) -> {}, event -> {});
   }
 
-  private LogEnd log(FirmwareFaults faults) throws Exception {
+  private LogEnd log(FirmwareFaults faults, int rows) throws Exception {
+    MemoryKeeper climbed = CLIMBED.get(profile.name());
     if (climbed == null) {
-      MemoryKeeper fresh = new MemoryKeeper();
+      climbed = new MemoryKeeper();
       try (Board board = board(FirmwareFaults.none())) {
-        assertTrue(bench(board, fresh).ready().ready());
+        assertTrue(bench(board, climbed).ready().ready());
       }
-      climbed = fresh;
+      CLIMBED.put(profile.name(), climbed);
     }
     keeper.findings.addAll(climbed.findings);
     try (Board board = board(faults)) {
       return bench(board, keeper)
           .log(
               new Work.Log(
-                  Duration.ofSeconds(60), ROWS, Optional.empty(), 2, false, true, List.of()));
+                  Duration.ofSeconds(60), rows, Optional.empty(), 2, false, true, List.of()));
     }
   }
 
   private void assertNothingFalse() {
     double truth =
-        climbed.findings.stream()
+        keeper.findings.stream()
             .filter(f -> f.values().containsKey("t2_star"))
             .findFirst()
             .orElseThrow()
@@ -105,45 +109,48 @@ class FaultyBoardLogTest {
 
   @Test
   void oneBlockInTenDamagedIsAskedForAgain() throws Exception {
-    LogEnd end = log(FirmwareFaults.none().withDamageOneBlockIn(10));
-    assertEquals(ROWS, end.rows(), keeper.rows.toString());
+    // The SCPI console's blocks carry no checksum: only a profile with one can tell.
+    profile = FirmwareExchangeTest.profile("radio-frame");
+    LogEnd end = log(FirmwareFaults.none().withDamageOneBlockIn(10), 30);
+    assertEquals(30, end.rows(), keeper.rows.toString());
     assertTrue(retries() >= 6, retries() + " retries in 60 scans");
     assertNothingFalse();
   }
 
   @Test
   void oneBlockInTenCutShortIsAskedForAgain() throws Exception {
-    LogEnd end = log(FirmwareFaults.none().withCutOneBlockIn(10));
-    assertTrue(end.rows() >= ROWS - 1, keeper.rows.toString());
+    LogEnd end = log(FirmwareFaults.none().withCutOneBlockIn(10), 6);
+    assertEquals(6, end.rows(), keeper.rows.toString());
+    assertTrue(retries() >= 1, retries() + " retries");
     assertNothingFalse();
   }
 
   @Test
   void oneBlockInTenWithASampleTooFewIsAskedForAgain() throws Exception {
-    LogEnd end = log(FirmwareFaults.none().withShortOneBlockIn(10));
-    assertEquals(ROWS, end.rows(), keeper.rows.toString());
+    LogEnd end = log(FirmwareFaults.none().withShortOneBlockIn(10), 30);
+    assertEquals(30, end.rows(), keeper.rows.toString());
     assertTrue(retries() >= 6, retries() + " retries in 60 scans");
     assertNothingFalse();
   }
 
   @Test
   void rubbishBeforeAnswersDoesNoHarm() throws Exception {
-    LogEnd end = log(FirmwareFaults.none().withRubbishBeforeOneAnswerIn(7));
-    assertTrue(end.rows() >= ROWS - 3, keeper.rows.toString());
+    LogEnd end = log(FirmwareFaults.none().withRubbishBeforeOneAnswerIn(7), 30);
+    assertTrue(end.rows() >= 27, keeper.rows.toString());
     assertNothingFalse();
   }
 
   @Test
   void aBoardThatRestartsIsSetUpAgain() throws Exception {
-    LogEnd end = log(FirmwareFaults.none().withRestartAfterScans(21));
-    assertTrue(end.rows() >= ROWS - 1, keeper.rows.toString());
+    LogEnd end = log(FirmwareFaults.none().withRestartAfterScans(11), 12);
+    assertTrue(end.rows() >= 11, keeper.rows.toString());
     assertNothingFalse();
   }
 
   @Test
   void aBoardThatFallsSilentLeavesAGapAndNothingElse() throws Exception {
-    LogEnd end = log(FirmwareFaults.none().withSilentAfterCommands(60));
-    assertTrue(end.rows() > 0 && end.rows() < ROWS, end.toString());
+    LogEnd end = log(FirmwareFaults.none().withSilentAfterCommands(60), 6);
+    assertTrue(end.rows() > 0 && end.rows() < 6, end.toString());
     assertEquals(LogEnd.Why.PLANNED, end.why());
     assertTrue(end.gaps() <= 2, keeper.rows.toString());
     assertNothingFalse();
