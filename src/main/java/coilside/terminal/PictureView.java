@@ -41,6 +41,7 @@ final class PictureView {
   void source(Source s) {
     if (s != source) {
       source = s;
+      views.values().forEach(PlotView::rescale);
       outdated = true;
       focus = 0;
       alone = null;
@@ -49,6 +50,7 @@ final class PictureView {
 
   void rungChanged() {
     source = Source.RUNG;
+    views.values().forEach(PlotView::rescale);
     outdated = true;
     focus = 0;
     alone = null;
@@ -126,11 +128,37 @@ final class PictureView {
     String caption = shown.get(0).caption();
     List<String> lines = caption.isEmpty() ? List.of() : Wrap.wrap(caption, area.width());
     int captionRows = Math.min(area.height() > 24 ? 3 : 2, lines.size());
+    List<String> standing = standing(state, area.width());
+    for (int i = 0; i < standing.size(); i++) {
+      int y = area.bottom() - captionRows - standing.size() + i;
+      Ink ink = LadderView.ink(state.status(look.chosen).state());
+      canvas.put(area.x(), y, standing.get(i), ink, area.right());
+    }
     for (int i = 0; i < captionRows; i++) {
       canvas.put(area.x(), area.bottom() - captionRows + i, lines.get(i), Ink.STRONG, area.right());
     }
-    plots = new Area(plots.x(), plots.y(), plots.width(), plots.height() - captionRows);
+    plots =
+        new Area(
+            plots.x(), plots.y(), plots.width(), plots.height() - captionRows - standing.size());
     drawPlots(canvas, plots);
+  }
+
+  /** Why the rung shown is stale or refused, short; the details panel has all of it. */
+  private List<String> standing(Snapshot state, int width) {
+    RungStatus status = state.status(look.chosen);
+    boolean measuring = state.measuring().filter(r -> r == look.chosen).isPresent();
+    if (source != Source.RUNG
+        || measuring
+        || status.reasons().isEmpty()
+        || status.state() == RungStatus.State.FRESH
+        || status.state() == RungStatus.State.MISSING) {
+      return List.of();
+    }
+    String text = LadderView.word(status.state()) + ": " + String.join("; ", status.reasons());
+    List<String> lines = Wrap.wrap(text, width);
+    return lines.size() <= 2
+        ? lines
+        : List.of(lines.get(0), Wrap.wrap(lines.get(1), width - 14).get(0) + " (i: all of it)");
   }
 
   private void drawPlots(Canvas canvas, Area area) {

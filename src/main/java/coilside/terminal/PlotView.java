@@ -113,6 +113,11 @@ final class PlotView {
     touched = !(touched && from == 0 && to == 1);
     from = 0;
     to = 1;
+    rescale();
+  }
+
+  /** Finds its scales anew: what was shown before does not matter any more. */
+  void rescale() {
     xScale.reset();
     yScale.reset();
     residualScale.reset();

@@ -14,6 +14,10 @@ import java.util.Optional;
 /** Turns a spectrum into a plot: curve, noise level, and the list of its lines. */
 final class SpectrumModels {
   private static final double THRESHOLD_SIGMA = 6;
+
+  /** Lower bumps beside a strong line are what dead time and window left of its foot. */
+  private static final double LEAST_OF_HIGHEST = 0.02;
+
   private static final int DC_POINTS = 6;
   private static final int MOST_LINES = 8;
 
@@ -79,6 +83,8 @@ final class SpectrumModels {
       return List.of();
     }
     List<Peaks.Peak> all = new ArrayList<>(Peaks.find(s, noise, THRESHOLD_SIGMA));
+    double highest = all.stream().mapToDouble(p -> p.height().value()).max().orElse(0);
+    all.removeIf(p -> p.height().value() < LEAST_OF_HIGHEST * highest);
     all.sort(Comparator.comparingDouble(p -> -p.area().value()));
     List<Peaks.Peak> strongest = new ArrayList<>(all.subList(0, Math.min(MOST_LINES, all.size())));
     strongest.sort(Comparator.comparingDouble(p -> p.offsetHertz().value()));

@@ -173,7 +173,7 @@ class ScreenTest {
     s.press(KeyType.Enter);
     assertEquals("doped water 2", s.desk.settings().sample());
     s.press("q");
-    assertShows(s, "sample is now doped water 2.", "◐ stale");
+    assertShows(s, "sample is now doped water 2; 4 rungs are stale, r measures.", "◐ stale");
   }
 
   @Test
