@@ -17,6 +17,8 @@ import java.util.List;
  * @param offsetIm DC offset, V
  */
 record Quiet(double sigma, double offsetRe, double offsetIm) {
+  /** So many that the offset's uncertainty is small beside that of a scan's amplitude. */
+  private static final int POINTS = 16384;
 
   /**
    * Plays the receive-only scan that belongs to shots like this one, after the same rest: what is
@@ -25,7 +27,7 @@ record Quiet(double sigma, double offsetRe, double offsetIm) {
   static void play(Acquisition a, Shot like) throws BoardException {
     Receive window =
         (Receive) like.flat().stream().filter(Receive.class::isInstance).findFirst().orElseThrow();
-    int points = Math.max(window.points(), Choices.points(a.limits(), 1024));
+    int points = Math.max(window.points(), Choices.points(a.limits(), POINTS));
     a.play(
         new Shot(
             like.carrierHertz(),

@@ -91,10 +91,15 @@ final class RecoveryMethod implements Method {
   }
 
   private static Shot single(Acquisition a, double rest) {
-    return BenchShots.single(a, Choices.gain(a), Choices.pulse90(a), 0, rest);
+    return BenchShots.single(
+        a, Choices.gain(a), Choices.pulse90(a), BenchShots.alternate(a), rest);
   }
 
-  /** 180 degrees, the recovery time from centre to centre, 90 degrees, receive. */
+  /**
+   * 180 degrees, the recovery time from centre to centre, 90 degrees, receive. Both phases
+   * alternate, the second every scan, the first every other: an error of the DC offset and what the
+   * first pulse leaves across the field then do not pile up.
+   */
   private static Shot inversion(Acquisition a, double recovery, double rest) {
     double p90 = Choices.pulse90(a);
     double p180 = Choices.pulse(a.limits(), a.known().need(Rung.NUTATION, "pulse_180"));
@@ -102,14 +107,15 @@ final class RecoveryMethod implements Method {
     Choices.Window w =
         Choices.window(a.limits(), BenchShots.FIRST_SECONDS, BenchShots.FIRST_POINTS);
     double amplitude = Choices.amplitude(a);
+    double inverting = a.scans().size() / 2 % 2 * Math.PI;
     return new Shot(
         Choices.carrier(a),
         Choices.gain(a),
         rest,
         List.of(
-            new Pulse(p180, 0, amplitude),
+            new Pulse(p180, inverting, amplitude),
             new Wait(wait),
-            new Pulse(p90, 0, amplitude),
+            new Pulse(p90, BenchShots.alternate(a), amplitude),
             new Wait(Choices.delay(a)),
             new Receive(w.points(), w.dwellSeconds(), 0)));
   }

@@ -115,18 +115,6 @@ final class SimulatedSpins {
     return sum;
   }
 
-  /** Size of an FID's envelope after so many seconds, 1 at its start. */
-  double envelope(double seconds) {
-    double re = 0;
-    double im = 0;
-    double[][] p = precession(seconds);
-    for (int j = 0; j < equilibrium.length; j++) {
-      re += equilibrium[j] * p[0][j];
-      im += equilibrium[j] * p[1][j];
-    }
-    return Math.hypot(re, im);
-  }
-
   /** Free precession and relaxation. */
   void free(double seconds) {
     if (seconds <= 0) {
