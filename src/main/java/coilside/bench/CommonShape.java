@@ -71,9 +71,22 @@ record CommonShape(
       double phase = BenchShots.readingPhase(shots.get(indices.get(j)));
       re[j] = p.re(0) * Math.cos(phase) + p.im(0) * Math.sin(phase);
       im[j] = p.im(0) * Math.cos(phase) - p.re(0) * Math.sin(phase);
-      u[j] = p.uncertainty();
+      u[j] = Math.hypot(p.uncertainty(), quiet.uOffset() * constant(p.shape()));
     }
     return new CommonShape(indices, fids, re, im, u, decay, quiet);
+  }
+
+  /** What the projection on this shape makes of a constant of 1. */
+  private static double constant(Fid shape) {
+    double re = 0;
+    double im = 0;
+    double norm = 0;
+    for (int k = 0; k < shape.points(); k++) {
+      re += shape.re(k);
+      im += shape.im(k);
+      norm += Math.pow(shape.magnitude(k), 2);
+    }
+    return Math.hypot(re, im) / norm;
   }
 
   /** The decay of the strong scans, each turned so that it adds up. */

@@ -29,6 +29,9 @@ final class GainMethod implements Method {
   private static final double[] WIDTHS = {10e-6, 25e-6, 60e-6};
   private static final double GUESS_WIDTH = 15e-6;
 
+  /** So many samples at exactly the largest value are a flat top. */
+  private static final int FLAT_SAMPLES = 12;
+
   /** Rest after which the magnetisation counts as recovered, in T1: 99.3 %, common practice. */
   static final double RECOVERED = 5;
 
@@ -61,18 +64,52 @@ final class GainMethod implements Method {
     BoardLimits.Range range = a.limits().gainDecibels();
     double wanted = 20 * Math.log10(TARGET / bestPeak);
     gain = floor(range, Math.min(range.max(), Math.max(range.min(), wanted)));
-    for (int turn = 0; turn < 4; turn++) {
+    double rail = Double.NaN;
+    for (int turn = 0; turn < 12; turn++) {
       a.startAgain();
       Shot shot = BenchShots.single(a, gain, bestWidth, 0, rest);
       Scan scan = a.play(shot);
-      if (scan.peakFraction() <= 1.2 * TARGET || lower(a, gain, 3) >= gain) {
+      boolean flat = flatTopped(scan);
+      if (flat) {
+        rail = scan.peakFraction();
+      }
+      boolean lowEnough = scan.peakFraction() <= (Double.isNaN(rail) ? 1.2 * TARGET : rail / 1.4);
+      if (!flat && lowEnough || lower(a, gain, 3) >= gain) {
         break;
       }
       gain = lower(a, gain, 3);
     }
+    if (!Double.isNaN(rail)) {
+      a.note("rail_fraction", rail);
+    }
     a.note("noise_density", a.known().need(Rung.NOISE, "noise_density"));
     a.note("highest_gain", range.max());
     a.note("lowest_gain", range.min());
+  }
+
+  /**
+   * Whether the signal is cut off before the digitiser: many samples, two or three in a row among
+   * them, stand at exactly the same largest value, which noise does not let happen.
+   */
+  static boolean flatTopped(Scan scan) {
+    Fid fid = scan.fid();
+    return flatTopped(fid.re()) || flatTopped(fid.im());
+  }
+
+  private static boolean flatTopped(double[] values) {
+    double top = 0;
+    double bottom = 0;
+    for (double v : values) {
+      top = Math.max(top, v);
+      bottom = Math.min(bottom, v);
+    }
+    int up = 0;
+    int down = 0;
+    for (double v : values) {
+      up += v == top ? 1 : 0;
+      down += v == bottom ? 1 : 0;
+    }
+    return Math.max(up, down) >= FLAT_SAMPLES && top > bottom;
   }
 
   private static double floor(BoardLimits.Range range, double x) {
@@ -160,6 +197,15 @@ final class GainMethod implements Method {
               "%d samples clip at the lowest gain of %.0f dB: put an attenuator before the"
                   + " receiver or use a smaller sample",
               scan.clippedSamples(),
+              shot.gainDecibels()));
+    } else if (!Double.isNaN(Notes.number(capture, "rail_fraction", Double.NaN))) {
+      warnings.add(
+          String.format(
+              Locale.ROOT,
+              "the receiver clips before the digitiser: from %.1f %% of the digitiser's range on the"
+                  + " signal is cut off flat; an amplifier in front of it gives out. The gain was"
+                  + " lowered to %.0f dB to stay clear of that",
+              100 * Notes.number(capture, "rail_fraction", Double.NaN),
               shot.gainDecibels()));
     } else if (scan.peakFraction() < 0.1
         && shot.gainDecibels() >= Notes.number(capture, "highest_gain") - 1e-9) {

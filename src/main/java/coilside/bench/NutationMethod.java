@@ -27,6 +27,11 @@ final class NutationMethod implements Method {
   private static final double LONGEST_90 = 200e-6;
   private static final int FEWEST = 4;
 
+  /** Scans after which points that scatter this much (reduced chi-square) will not come right. */
+  private static final int HOPELESS = 24;
+
+  private static final double SCATTER = 25;
+
   @Override
   public Rung rung() {
     return Rung.NUTATION;
@@ -58,12 +63,16 @@ final class NutationMethod implements Method {
         continue;
       }
       NutationPlan.Advice advice = advice(a, options, shortest, longest, width);
-      if (advice.enough()) {
+      if (advice.enough() || a.scans().size() > HOPELESS && scatters(advice)) {
         break;
       }
       width = Choices.pulse(a.limits(), advice.pulseSeconds());
       a.step("nutation", Math.min(0.95, a.settings().pulse90Target() / advice.relative()));
     }
+  }
+
+  private static boolean scatters(NutationPlan.Advice advice) {
+    return advice.result().map(r -> r.reducedChiSquare() > SCATTER).orElse(false);
   }
 
   private static NutationPlan.Advice advice(

@@ -15,8 +15,9 @@ import java.util.List;
  * @param sigma noise of one real channel, one sample, V
  * @param offsetRe DC offset, V
  * @param offsetIm DC offset, V
+ * @param uOffset standard uncertainty of each part of the offset, V
  */
-record Quiet(double sigma, double offsetRe, double offsetIm) {
+record Quiet(double sigma, double offsetRe, double offsetIm, double uOffset) {
   /** So many that the offset's uncertainty is small beside that of a scan's amplitude. */
   private static final int POINTS = 16384;
 
@@ -43,7 +44,10 @@ record Quiet(double sigma, double offsetRe, double offsetIm) {
         try {
           NoiseEstimate noise = NoiseEstimate.of(scans.get(i).fid());
           return new Quiet(
-              noise.sigma().value(), noise.offsetRe().value(), noise.offsetIm().value());
+              noise.sigma().value(),
+              noise.offsetRe().value(),
+              noise.offsetIm().value(),
+              noise.offsetRe().u());
         } catch (IllegalArgumentException e) {
           throw new NotMeasurable(
               "the receive-only scan cannot be used: " + e.getMessage(),

@@ -6,6 +6,7 @@ import coilside.fit.NotDetermined;
 import coilside.quantity.Measured;
 import coilside.quantity.Nucleus;
 import coilside.quantity.Unit;
+import coilside.shot.Shot;
 import coilside.signal.Fid;
 import coilside.signal.Fourier;
 import coilside.signal.Scan;
@@ -21,9 +22,11 @@ final class Readings {
   private Readings() {}
 
   /** The values of the resonance rung. */
-  static Reading resonance(Fid fid, List<Scan> scans) throws NotMeasurable {
+  static Reading resonance(Fid fid, Capture capture) throws NotMeasurable {
+    List<Scan> scans = capture.scans();
     DecayResult fit = fit(fid, scans.size());
-    Measured larmor = larmor(fid, fit);
+    Wander wander = Wander.of(capture.shots(), scans);
+    Measured larmor = wander.widen(larmor(fid, fit));
     Map<String, Measured> values = new LinkedHashMap<>();
     values.put("larmor_frequency", larmor);
     values.put("field", field(larmor));
@@ -34,7 +37,14 @@ final class Readings {
             "resonance at %.6f MHz, offset %+.1f Hz",
             larmor.value() * 1e-6,
             fit.offsetHertz().value());
-    return new Reading(values, warnings(fit, scans), trace(Rung.RESONANCE, fid, fit, caption));
+    List<String> warnings = warnings(fit, scans);
+    wander.warning().ifPresent(w -> warnings.add(0, w));
+    return new Reading(values, warnings, trace(Rung.RESONANCE, fid, fit, caption));
+  }
+
+  /** The values of the T2* rung from one scan, as it came. */
+  static Reading decay(Fid fid, List<Scan> scans, double target) throws NotMeasurable {
+    return decay(fid, List.of(), List.of(), scans, target);
   }
 
   /**
@@ -42,9 +52,17 @@ final class Readings {
    *
    * @param target wanted relative uncertainty of T2*; NaN where none is
    */
-  static Reading decay(Fid fid, List<Scan> scans, double target) throws NotMeasurable {
+  static Reading decay(Fid fid, List<Shot> shots, List<Scan> scans, double target)
+      throws NotMeasurable {
+    return decay(fid, shots, scans, scans, target);
+  }
+
+  private static Reading decay(
+      Fid fid, List<Shot> shots, List<Scan> single, List<Scan> scans, double target)
+      throws NotMeasurable {
     DecayResult fit = fit(fid, scans.size());
-    Measured larmor = larmor(fid, fit);
+    Wander wander = Wander.of(shots, single);
+    Measured larmor = wander.widen(larmor(fid, fit));
     Map<String, Measured> values = new LinkedHashMap<>();
     values.put("t2_star", fit.t2Star());
     values.put("linewidth", fit.linewidthHertz());
@@ -54,6 +72,7 @@ final class Readings {
     values.put("field_spread", fit.fieldSpread(larmor.value()));
     values.put("field", field(larmor));
     List<String> warnings = warnings(fit, scans);
+    wander.warning().ifPresent(w -> warnings.add(0, w));
     double reached = fit.t2Star().relative();
     if (reached > target) {
       warnings.add(

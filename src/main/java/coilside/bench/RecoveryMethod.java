@@ -27,6 +27,9 @@ final class RecoveryMethod implements Method {
   private static final double REST_IN_T1 = 3;
   private static final double SHORTEST_T1 = 1e-3;
 
+  /** Scans after which points that scatter without measure will not come right. */
+  private static final int HOPELESS = 24;
+
   @Override
   public Rung rung() {
     return Rung.T1;
@@ -62,7 +65,8 @@ final class RecoveryMethod implements Method {
       List<RecoveryPoint> points = points(a.shots(), a.scans(), shape, inversion);
       RecoveryPlan.Advice advice = plan.next(points);
       a.show(picture(points, advice.result(), new double[] {advice.recoverySeconds()}));
-      if (advice.enough()) {
+      boolean scatters = advice.result().map(r -> r.reducedChiSquare() > 25).orElse(true);
+      if (advice.enough() || a.scans().size() > HOPELESS && scatters) {
         break;
       }
       time = Math.max(advice.recoverySeconds(), shortest);

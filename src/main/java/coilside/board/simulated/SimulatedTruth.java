@@ -1,6 +1,7 @@
 package coilside.board.simulated;
 
 import coilside.board.simulated.Scenario.Component;
+import java.util.function.ToDoubleFunction;
 
 /** What the simulated bench really is at this moment: for tests, never for the measuring side. */
 public final class SimulatedTruth {
@@ -28,23 +29,42 @@ public final class SimulatedTruth {
         / (scenario.transmitter().drive(amplitude) * response);
   }
 
-  /** T1 of the sample's components averaged with their fractions, s. */
+  /** The time in which the sample recovers from saturation to 1 - 1/e, s: T1 of one component. */
   public double t1Seconds() {
-    double sum = 0;
-    double all = 0;
-    for (Component c : scenario.sample().components()) {
-      sum += c.fraction() * c.t1Seconds();
-      all += c.fraction();
-    }
-    return sum / all;
+    return oneOverE(Component::t1Seconds);
   }
 
-  /** T2 of the sample's components averaged with their fractions, s. */
+  /** The time in which the echoes of the sample fall to 1/e, s: T2 of one component. */
   public double t2Seconds() {
+    return oneOverE(Component::t2Seconds);
+  }
+
+  private double oneOverE(ToDoubleFunction<Component> time) {
+    double low = 0;
+    double high = scenario.sample().components().stream().mapToDouble(time).max().orElseThrow();
+    for (int i = 0; i < 60; i++) {
+      double middle = (low + high) / 2;
+      double left = 0;
+      double all = 0;
+      for (Component c : scenario.sample().components()) {
+        left += c.fraction() * Math.exp(-middle / time.applyAsDouble(c));
+        all += c.fraction();
+      }
+      if (left / all > Math.exp(-1)) {
+        low = middle;
+      } else {
+        high = middle;
+      }
+    }
+    return (low + high) / 2;
+  }
+
+  /** Middle of the sample's line above the magnet's Larmor frequency, Hz. */
+  public double lineHertz() {
     double sum = 0;
     double all = 0;
     for (Component c : scenario.sample().components()) {
-      sum += c.fraction() * c.t2Seconds();
+      sum += c.fraction() * c.shiftHertz();
       all += c.fraction();
     }
     return sum / all;
@@ -72,13 +92,22 @@ public final class SimulatedTruth {
   }
 
   private double envelope(SimulatedFieldSpread spread, double seconds) {
+    double width = scenario.magnet().widthHertz();
     double re = 0;
     double im = 0;
+    if (scenario.magnet().shape() == Scenario.Shape.LORENTZIAN) {
+      // The wings that the isochromats leave out belong to the start of the envelope.
+      return Math.exp(-Math.PI * width * seconds) * components(seconds);
+    }
     for (int j = 0; j < spread.hertz().length; j++) {
       double angle = 2 * Math.PI * spread.hertz()[j] * seconds;
       re += spread.weight()[j] * Math.cos(angle);
       im += spread.weight()[j] * Math.sin(angle);
     }
+    return Math.hypot(re, im) * components(seconds);
+  }
+
+  private double components(double seconds) {
     double all = 0;
     double sumRe = 0;
     double sumIm = 0;
@@ -89,7 +118,7 @@ public final class SimulatedTruth {
       sumIm += left * Math.sin(angle);
       all += c.fraction();
     }
-    return Math.hypot(re, im) * Math.hypot(sumRe, sumIm) / all;
+    return Math.hypot(sumRe, sumIm) / all;
   }
 
   /** Amplitude right after a perfect 90-degree pulse on recovered spins at the input, V. */
