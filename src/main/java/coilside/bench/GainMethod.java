@@ -5,6 +5,7 @@ import coilside.board.BoardLimits;
 import coilside.quantity.Measured;
 import coilside.quantity.Unit;
 import coilside.shot.Shot;
+import coilside.signal.Averager;
 import coilside.signal.Fid;
 import coilside.signal.Fourier;
 import coilside.signal.MatchedProjection;
@@ -31,6 +32,9 @@ final class GainMethod implements Method {
 
   /** So many samples at exactly the largest value are a flat top. */
   private static final int FLAT_SAMPLES = 12;
+
+  /** ... where the signal spans more steps of the digitiser than this. */
+  private static final int FEWEST_STEPS = 100;
 
   /** Rest after which the magnetisation counts as recovered, in T1: 99.3 %, common practice. */
   static final double RECOVERED = 5;
@@ -88,6 +92,32 @@ final class GainMethod implements Method {
   }
 
   /**
+   * A phase that grows quadratically with the number of the scan, in quarter turns, so that echoes
+   * of earlier pulses do not add up (Zur, Wood and Neuringer, Magn. Reson. Med. 21, 251, 1991).
+   */
+  private static double spoiling(int scan) {
+    return scan * (scan + 1) / 2 % 4 * Math.PI / 2;
+  }
+
+  /** The receiver's DC offset at this gain, by a scan without a pulse. */
+  private static Quiet quiet(Acquisition a, double gain) throws BoardException, NotMeasurable {
+    Shot like = BenchShots.single(a, gain, Choices.pulse(a.limits(), GUESS_WIDTH), 0, 0);
+    Shot shot =
+        new Shot(
+            like.carrierHertz(),
+            gain,
+            Choices.rest(a, GUESS_RESTS[0]),
+            List.of(like.steps().get(like.steps().size() - 1)));
+    return Quiet.of(List.of(shot), List.of(a.playAside(shot)));
+  }
+
+  private static Fid turned(Fid fid, double phase) {
+    Averager one = new Averager();
+    one.add(fid, phase);
+    return one.mean();
+  }
+
+  /**
    * Whether the signal is cut off before the digitiser: many samples, two or three in a row among
    * them, stand at exactly the same largest value, which noise does not let happen.
    */
@@ -97,19 +127,24 @@ final class GainMethod implements Method {
   }
 
   private static boolean flatTopped(double[] values) {
-    double top = 0;
-    double bottom = 0;
-    for (double v : values) {
-      top = Math.max(top, v);
-      bottom = Math.min(bottom, v);
+    double[] sorted = values.clone();
+    java.util.Arrays.sort(sorted);
+    int n = sorted.length;
+    double step = Double.POSITIVE_INFINITY;
+    for (int k = 1; k < n; k++) {
+      double d = sorted[k] - sorted[k - 1];
+      if (d > 0) {
+        step = Math.min(step, d);
+      }
     }
     int up = 0;
     int down = 0;
-    for (double v : values) {
-      up += v == top ? 1 : 0;
-      down += v == bottom ? 1 : 0;
+    for (double v : sorted) {
+      up += v == sorted[n - 1] ? 1 : 0;
+      down += v == sorted[0] ? 1 : 0;
     }
-    return Math.max(up, down) >= FLAT_SAMPLES && top > bottom;
+    double size = Math.max(sorted[n - 1], -sorted[0]);
+    return Math.max(up, down) >= FLAT_SAMPLES && size > FEWEST_STEPS * step;
   }
 
   private static double floor(BoardLimits.Range range, double x) {
@@ -124,7 +159,7 @@ final class GainMethod implements Method {
   }
 
   /** T1 as it may be at the longest, from what is known, told, or a few scans with rising rests. */
-  static double guessT1(Acquisition a) throws BoardException {
+  static double guessT1(Acquisition a) throws BoardException, NotMeasurable {
     if (a.known().finding(Rung.T1).isPresent()
         && a.known().finding(Rung.T1).get().conditions().sample().equals(a.settings().sample())) {
       return 1.1 * a.known().need(Rung.T1, "t1");
@@ -139,16 +174,20 @@ final class GainMethod implements Method {
     List<Double> rests = new ArrayList<>();
     double gain = Choices.gain(a);
     double guess = 0;
+    Quiet quiet = quiet(a, gain);
     for (double rest : GUESS_RESTS) {
       double width = Choices.pulse(a.limits(), GUESS_WIDTH);
-      Scan scan = a.playAside(BenchShots.single(a, gain, width, 0, Choices.rest(a, rest)));
-      if (scan.clippedSamples() > 0 && lower(a, gain, 10) < gain) {
+      double phase = spoiling(a.scansPlayed());
+      Scan scan = a.playAside(BenchShots.single(a, gain, width, phase, Choices.rest(a, rest)));
+      while ((scan.clippedSamples() > 0 || flatTopped(scan)) && lower(a, gain, 10) < gain) {
         gain = lower(a, gain, 10);
         fids.clear();
         rests.clear();
-        scan = a.playAside(BenchShots.single(a, gain, width, 0, Choices.rest(a, rest)));
+        quiet = quiet(a, gain);
+        phase = spoiling(a.scansPlayed());
+        scan = a.playAside(BenchShots.single(a, gain, width, phase, Choices.rest(a, rest)));
       }
-      fids.add(scan.fid());
+      fids.add(turned(quiet.strip(scan.fid()), phase));
       rests.add(scan.restSeconds());
       if (fids.size() < 3) {
         continue;

@@ -30,6 +30,12 @@ final class RecoveryMethod implements Method {
   /** Scans after which points that scatter without measure will not come right. */
   private static final int HOPELESS = 24;
 
+  /** Scans spent on telling two T1 from one. */
+  private static final int MOST_FOR_TWO = 16;
+
+  /** Steps of the golden section fill an interval evenly, however many there are. */
+  private static final double GOLDEN = 0.6180339887;
+
   @Override
   public Rung rung() {
     return Rung.T1;
@@ -66,10 +72,17 @@ final class RecoveryMethod implements Method {
       RecoveryPlan.Advice advice = plan.next(points);
       a.show(picture(points, advice.result(), new double[] {advice.recoverySeconds()}));
       boolean scatters = advice.result().map(r -> r.reducedChiSquare() > 25).orElse(true);
-      if (advice.enough() || a.scans().size() > HOPELESS && scatters) {
+      boolean another = advice.enough() && advice.result().get().scatters();
+      if (advice.enough() && (!another || points.size() >= MOST_FOR_TWO)
+          || a.scans().size() > HOPELESS && scatters) {
         break;
       }
-      time = Math.max(advice.recoverySeconds(), shortest);
+      // Points all over the recovery show whether it is another T1 that makes them scatter.
+      double spread = 0.1 * Math.pow(50, points.size() * GOLDEN % 1);
+      time =
+          Math.max(
+              another ? spread * advice.result().get().t1().value() : advice.recoverySeconds(),
+              shortest);
       rest = Choices.rest(a, inversion ? advice.restSeconds() : 0);
       advice
           .result()
@@ -189,8 +202,8 @@ final class RecoveryMethod implements Method {
     values.put(
         "repetition_time",
         Measured.of(
-            GainMethod.RECOVERED * fit.t1().value(),
-            GainMethod.RECOVERED * fit.t1().u(),
+            GainMethod.RECOVERED * fit.longestT1Seconds(),
+            GainMethod.RECOVERED * fit.longestT1Seconds() * fit.t1().relative(),
             Unit.SECOND));
     List<String> warnings = new ArrayList<>(fit.warnings());
     double target = Notes.number(capture, "target");

@@ -1,0 +1,58 @@
+package coilside.bench;
+
+import java.time.Instant;
+import java.util.ArrayList;
+import java.util.HashMap;
+import java.util.List;
+import java.util.Map;
+import java.util.Optional;
+
+/** Keeps everything in memory, for tests. */
+final class MemoryKeeper implements Keeper {
+  final List<Capture> captures = new ArrayList<>();
+  final List<Finding> findings = new ArrayList<>();
+  private final Map<String, String> settings = new HashMap<>();
+
+  @Override
+  public synchronized String keep(Capture capture) {
+    captures.add(capture);
+    return capture.purpose() + "-" + captures.size();
+  }
+
+  @Override
+  public synchronized void keep(Finding finding) {
+    findings.add(finding);
+  }
+
+  @Override
+  public synchronized void keep(LogRow row) {}
+
+  @Override
+  public synchronized void note(Instant when, String kind, String text) {}
+
+  /** The capture of this name. */
+  synchronized Capture capture(String name) {
+    return captures.get(Integer.parseInt(name.substring(name.lastIndexOf('-') + 1)) - 1);
+  }
+
+  @Override
+  public synchronized List<Finding> findings(Rung rung) {
+    return findings.stream().filter(f -> f.rung() == rung).toList();
+  }
+
+  @Override
+  public synchronized Optional<Finding> newest(Rung rung) {
+    List<Finding> all = findings(rung);
+    return all.isEmpty() ? Optional.empty() : Optional.of(all.get(all.size() - 1));
+  }
+
+  @Override
+  public synchronized Optional<String> setting(String name) {
+    return Optional.ofNullable(settings.get(name));
+  }
+
+  @Override
+  public synchronized void setSetting(String name, String value) {
+    settings.put(name, value);
+  }
+}
