@@ -73,7 +73,8 @@ final class DecayMethod implements Method {
 
   private static void show(Acquisition a) {
     try {
-      a.show(Readings.decay(mean(a.shots(), a.scans()), a.shots(), a.scans(), Double.NaN).picture());
+      a.show(
+          Readings.decay(mean(a.shots(), a.scans()), a.shots(), a.scans(), Double.NaN).picture());
     } catch (NotMeasurable e) {
       a.say(e.getMessage());
     }

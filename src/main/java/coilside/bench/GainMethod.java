@@ -100,7 +100,7 @@ final class GainMethod implements Method {
   }
 
   /** The receiver's DC offset at this gain, by a scan without a pulse. */
-  private static Quiet quiet(Acquisition a, double gain) throws BoardException, NotMeasurable {
+  private static Quiet quiet(Acquisition a, double gain) throws BoardException {
     Shot like = BenchShots.single(a, gain, Choices.pulse(a.limits(), GUESS_WIDTH), 0, 0);
     Shot shot =
         new Shot(
@@ -108,7 +108,14 @@ final class GainMethod implements Method {
             gain,
             Choices.rest(a, GUESS_RESTS[0]),
             List.of(like.steps().get(like.steps().size() - 1)));
-    return Quiet.of(List.of(shot), List.of(a.playAside(shot)));
+    Fid fid = a.playAside(shot).fid();
+    double re = 0;
+    double im = 0;
+    for (int k = 0; k < fid.points(); k++) {
+      re += fid.re(k) / fid.points();
+      im += fid.im(k) / fid.points();
+    }
+    return new Quiet(0, re, im, 0);
   }
 
   private static Fid turned(Fid fid, double phase) {
@@ -159,7 +166,7 @@ final class GainMethod implements Method {
   }
 
   /** T1 as it may be at the longest, from what is known, told, or a few scans with rising rests. */
-  static double guessT1(Acquisition a) throws BoardException, NotMeasurable {
+  static double guessT1(Acquisition a) throws BoardException {
     if (a.known().finding(Rung.T1).isPresent()
         && a.known().finding(Rung.T1).get().conditions().sample().equals(a.settings().sample())) {
       return 1.1 * a.known().need(Rung.T1, "t1");

@@ -19,6 +19,9 @@ import java.util.Optional;
 
 /** What a fitted decay says, under the value names of the ladder. */
 final class Readings {
+  /** Part of its width by which a line without a simple form has no definite middle. */
+  private static final double FORM = 0.01;
+
   private Readings() {}
 
   /** The values of the resonance rung. */
@@ -26,7 +29,7 @@ final class Readings {
     List<Scan> scans = capture.scans();
     DecayResult fit = fit(fid, scans.size());
     Wander wander = Wander.of(capture.shots(), scans);
-    Measured larmor = wander.widen(larmor(fid, fit));
+    Measured larmor = wander.widen(middle(larmor(fid, fit), fit));
     Map<String, Measured> values = new LinkedHashMap<>();
     values.put("larmor_frequency", larmor);
     values.put("field", field(larmor));
@@ -62,9 +65,9 @@ final class Readings {
       throws NotMeasurable {
     DecayResult fit = fit(fid, scans.size());
     Wander wander = Wander.of(shots, single);
-    Measured larmor = wander.widen(larmor(fid, fit));
+    Measured larmor = wander.widen(middle(larmor(fid, fit), fit));
     Map<String, Measured> values = new LinkedHashMap<>();
-    values.put("t2_star", fit.t2Star());
+    values.put("t2_star", effective(fit));
     values.put("linewidth", fit.linewidthHertz());
     values.put("amplitude", fit.amplitude());
     values.put("snr", fit.snr());
@@ -109,6 +112,27 @@ final class Readings {
             ? "; about " + e.scansNeeded().getAsLong() + " scans would do"
             : "";
     return new NotMeasurable(what + ": " + e.getMessage() + scans, List.of(e.remedy()));
+  }
+
+  /**
+   * The middle of a line that is not one exponential's is uncertain by a part of its width,
+   * whichever form is fitted to it.
+   */
+  private static Measured middle(Measured larmor, DecayResult fit) {
+    return fit.envelope() == DecayResult.Envelope.EXPONENTIAL
+        ? larmor
+        : Measured.of(
+            larmor.value(),
+            Math.hypot(larmor.u(), FORM * fit.linewidthHertz().value()),
+            larmor.unit());
+  }
+
+  /** T2*; the 1/e time of a decay that is not one exponential depends on the form fitted to it. */
+  private static Measured effective(DecayResult fit) {
+    Measured t = fit.t2Star();
+    return fit.envelope() == DecayResult.Envelope.EXPONENTIAL
+        ? t
+        : Measured.of(t.value(), Math.hypot(t.u(), FORM / 2 * t.value()), t.unit());
   }
 
   static Measured larmor(Fid fid, DecayResult fit) {

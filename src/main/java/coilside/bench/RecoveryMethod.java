@@ -108,8 +108,7 @@ final class RecoveryMethod implements Method {
   }
 
   private static Shot single(Acquisition a, double rest) {
-    return BenchShots.single(
-        a, Choices.gain(a), Choices.pulse90(a), BenchShots.alternate(a), rest);
+    return BenchShots.single(a, Choices.gain(a), Choices.pulse90(a), BenchShots.alternate(a), rest);
   }
 
   /**

@@ -67,8 +67,8 @@ final class ResonanceMethod implements Method {
   /**
    * Looks at the line from a little beside it, clear of the receiver's DC offset, then plays the
    * scans that count with the carrier on it, on all four phases of the pulse and after different
-   * rests, so that DC offset, the receiver's mirror image, the mains and echoes of earlier pulses do
-   * not all pull the same way.
+   * rests, so that DC offset, the receiver's mirror image, the mains and echoes of earlier pulses
+   * do not all pull the same way.
    */
   private static void settle(Acquisition a, Seen first) throws BoardException, NotMeasurable {
     a.startAgain();
@@ -288,8 +288,7 @@ final class ResonanceMethod implements Method {
           out.add(new Detection.Excluded(f - carrier, 500));
         }
       }
-      return Detection.of(
-          fid, sigma, out, carriers.size() * MOST_PASSES, FALSE_ALARM_PROBABILITY);
+      return Detection.of(fid, sigma, out, carriers.size() * MOST_PASSES, FALSE_ALARM_PROBABILITY);
     }
 
     private boolean isThereWithoutPulse(Shot shot, Detection d) throws BoardException {

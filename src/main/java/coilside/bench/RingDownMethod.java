@@ -21,8 +21,8 @@ import java.util.Optional;
 /**
  * The ring-down rung: pairs of scans with the pulse's phase turned by 180 degrees and the receiver
  * opened as early as it can be. What turns with the pulse is ring-down and signal; the signal is
- * fitted late, drawn back and taken off. The second pair is played a quarter turn from the first, so
- * that the mirror image which unequal receiver channels make drops out.
+ * fitted late, drawn back and taken off. The second pair is played a quarter turn from the first,
+ * so that the mirror image which unequal receiver channels make drops out.
  */
 final class RingDownMethod implements Method {
   private static final int PAIRS = 2;
@@ -110,7 +110,8 @@ final class RingDownMethod implements Method {
               (following.time(clippedUntil) - pulseHalf) * 1e6));
     }
     if (fit.visible()) {
-      offTune(following, clippedUntil, one, fit.timeConstant().value()).ifPresent(w -> warnings.add(0, w));
+      offTune(following, clippedUntil, one, fit.timeConstant().value())
+          .ifPresent(w -> warnings.add(0, w));
     }
     String caption =
         fit.visible()

@@ -21,6 +21,12 @@ import java.util.OptionalLong;
 public final class RecoveryFit {
   private static final double GRID_STEP = 0.04;
 
+  /**
+   * Part of the distance between two T1 by which their common 1/e time is uncertain: the amplitudes
+   * weigh the components by their FIDs, too, by some percent.
+   */
+  private static final double WEIGHTS = 0.01;
+
   /** So much must chi-square fall before two T1 are believed. */
   private static final double CLEARLY = 25;
 
@@ -244,9 +250,10 @@ public final class RecoveryFit {
         || t.oneOverE().relative() > options.largestRelative()) {
       return Optional.empty();
     }
+    double weights = WEIGHTS * (t.longer().value() - t.shorter().value());
     return Optional.of(
         new Result(
-            t.oneOverE(),
+            Measured.of(t.oneOverE().value(), Math.hypot(t.oneOverE().u(), weights), Unit.SECOND),
             t.amplitude(),
             t.preparation(),
             reduced,

@@ -46,9 +46,7 @@ record TwoRecoveries(
     }
     LeastSquares.Solution best = null;
     for (double apart : new double[] {1.5, 2, 3}) {
-      double[] start = {
-        one[0], one[1] / one[0], 0, one[2] + Math.log(apart) / 2, Math.log(apart)
-      };
+      double[] start = {one[0], one[1] / one[0], 0, one[2] + Math.log(apart) / 2, Math.log(apart)};
       try {
         LeastSquares.Solution s =
             LeastSquares.solve(

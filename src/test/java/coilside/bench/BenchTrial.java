@@ -7,7 +7,6 @@ import coilside.board.simulated.Scenario;
 import coilside.quantity.Nucleus;
 import coilside.shot.Shot;
 import java.time.Instant;
-import java.time.ZoneOffset;
 import java.util.ArrayList;
 import java.util.EnumMap;
 import java.util.List;
@@ -48,8 +47,7 @@ final class BenchTrial implements AutoCloseable {
 
   static BenchTrial of(Scenario scenario, String profile, long seed)
       throws BoardException, KeepException {
-    return new BenchTrial(
-        ObservedBoard.open(scenario, profile, seed), OptionalDouble.empty(), 400);
+    return new BenchTrial(ObservedBoard.open(scenario, profile, seed), OptionalDouble.empty(), 400);
   }
 
   static BenchSettings settings(DeviceProfile profile, OptionalDouble expectedT1, int budget) {

@@ -7,8 +7,9 @@ import coilside.board.simulated.Scenario.Shape;
  *
  * <p>Offsets lie on x(u) with u uniform, weights are density times spacing. For the Lorentzian x =
  * w sinh(b u), which is dense in the middle and still reaches 3000 half widths: what is cut off is
- * 2e-4 of the line, and the sum follows the exponential decay within 1e-4 while it lasts. Equal-weight quantiles do
- * worse, since their few isochromats in the wings beat visibly against each other.
+ * 2e-4 of the line, and the sum follows the exponential decay within 1e-4 while it lasts.
+ * Equal-weight quantiles do worse, since their few isochromats in the wings beat visibly against
+ * each other.
  */
 record SimulatedFieldSpread(double[] hertz, double[] weight) {
   private static final double WING = 3000;
