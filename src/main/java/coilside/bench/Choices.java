@@ -81,6 +81,6 @@ final class Choices {
   }
 
   static double rest(Acquisition a, double seconds) {
-    return a.limits().waitSeconds().snap(seconds);
+    return a.limits().restSeconds().snap(seconds);
   }
 }

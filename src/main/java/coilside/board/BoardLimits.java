@@ -12,6 +12,7 @@ public record BoardLimits(
     Range pulseSeconds,
     Range amplitude,
     Range waitSeconds,
+    Range restSeconds,
     Range dwellSeconds,
     int minPoints,
     int maxPoints,
@@ -27,7 +28,7 @@ public record BoardLimits(
     boolean settableReceivePhase,
     boolean reportsTemperature) {
 
-  /** Limits of a board whose pulses have a phase of their own. */
+  /** Limits of a board whose rest is a wait like any other. */
   public BoardLimits(
       Range carrierHertz,
       Range gainDecibels,
@@ -44,6 +45,7 @@ public record BoardLimits(
       double maxDutyCycle,
       double dutyWindowSeconds,
       boolean arbitraryShots,
+      boolean pulsePhases,
       boolean repeatLoops,
       boolean settableReceivePhase,
       boolean reportsTemperature) {
@@ -52,6 +54,7 @@ public record BoardLimits(
         gainDecibels,
         pulseSeconds,
         amplitude,
+        waitSeconds,
         waitSeconds,
         dwellSeconds,
         minPoints,
@@ -63,7 +66,7 @@ public record BoardLimits(
         maxDutyCycle,
         dutyWindowSeconds,
         arbitraryShots,
-        true,
+        pulsePhases,
         repeatLoops,
         settableReceivePhase,
         reportsTemperature);

@@ -36,8 +36,8 @@ final class ShotCheck {
     within("carrier", shot.carrierHertz(), limits.carrierHertz(), 1e-6, "MHz", "tune within it");
     within(
         "receiver gain", shot.gainDecibels(), limits.gainDecibels(), 1, "dB", "choose within it");
-    if (shot.restSeconds() > 0 && limits.arbitraryShots()) {
-      within("rest", shot.restSeconds(), limits.waitSeconds(), 1, "s", "choose within it");
+    if (shot.restSeconds() > 0) {
+      within("rest", shot.restSeconds(), limits.restSeconds(), 1, "s", "choose within it");
     }
     steps(shot.steps(), 1);
     atMost("repeats written out make", flatSteps, MOST_FLAT_STEPS, "steps");

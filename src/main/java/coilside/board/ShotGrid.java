@@ -22,7 +22,7 @@ public final class ShotGrid {
     return new Shot(
         round(shot.carrierHertz(), limits.carrierHertz().step()),
         round(shot.gainDecibels(), limits.gainDecibels().step()),
-        round(shot.restSeconds(), limits.waitSeconds().step()),
+        round(shot.restSeconds(), limits.restSeconds().step()),
         steps(shot.steps(), limits));
   }
 

@@ -51,6 +51,7 @@ class GuardedBoardTest {
         DUTY,
         1,
         arbitrary,
+        true,
         loops,
         true,
         false);

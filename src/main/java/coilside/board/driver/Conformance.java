@@ -170,7 +170,7 @@ public final class Conformance {
   private void abort() {
     String tried = "abort in mid-run";
     String expected = "it stops, and answers again";
-    double rest = Math.min(ABORT_REST_SECONDS, limits.waitSeconds().max());
+    double rest = Math.min(ABORT_REST_SECONDS, limits.restSeconds().max());
     if (profile.command(coilside.board.profile.CommandName.STOP).isEmpty()) {
       trials.row(tried, expected, "the profile has no stop command", Verdict.SKIPPED);
       return;

@@ -109,6 +109,7 @@ final class LimitsReader {
         pulse,
         amplitude,
         wait,
+        hostRests(commands) ? new Range(0, LONGEST, 0) : wait,
         dwell,
         (int) points.min(),
         (int) points.max(),
@@ -123,6 +124,12 @@ final class LimitsReader {
         commands.containsKey(CommandName.REPEAT),
         commands.values().stream().anyMatch(c -> c.template().mentions(ValueName.RECEIVE_PHASE)),
         commands.containsKey(CommandName.TEMPERATURE));
+  }
+
+  /** A fixed command without a rest leaves it to the host, which may rest as long as it likes. */
+  private static boolean hostRests(Map<CommandName, Command> commands) {
+    Command fixed = commands.get(CommandName.PULSE_AND_RECEIVE);
+    return fixed != null && !fixed.template().mentions(ValueName.REST);
   }
 
   private Range need(String key, Dimension dimension, double least, double most, String example) {
@@ -168,6 +175,7 @@ final class LimitsReader {
         pulse,
         amplitude,
         b.waitSeconds(),
+        b.restSeconds(),
         b.dwellSeconds(),
         b.minPoints(),
         b.maxPoints(),

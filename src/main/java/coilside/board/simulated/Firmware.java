@@ -12,6 +12,8 @@ import coilside.board.profile.WireValue;
 import coilside.board.simulated.FirmwareReceiver.Counts;
 import coilside.shot.Shot;
 import java.util.ArrayDeque;
+import java.util.Arrays;
+import java.util.Comparator;
 import java.util.Deque;
 import java.util.HashMap;
 import java.util.List;
@@ -28,6 +30,12 @@ import java.util.Optional;
  */
 public final class Firmware {
   private static final double MOST_SCANS = 1e6;
+
+  /** As they are looked for: receiving may be the pulse's own command with a width of 0. */
+  private static final List<CommandName> COMMANDS =
+      Arrays.stream(CommandName.values())
+          .sorted(Comparator.comparing(name -> name != CommandName.RECEIVE_ONLY))
+          .toList();
 
   private final DeviceProfile profile;
   private final FirmwareReceiver receiver;
@@ -216,7 +224,7 @@ public final class Firmware {
   private boolean command(String message, long nowNanos) throws FirmwareRefusal {
     FirmwareRefusal nearly = null;
     boolean building = false;
-    for (CommandName name : CommandName.values()) {
+    for (CommandName name : COMMANDS) {
       Optional<Command> command = profile.command(name);
       if (command.isEmpty()) {
         continue;

@@ -154,6 +154,17 @@ class ProfileReaderTest {
     assertTrue(p.fixedShotOnly());
     assertFalse(p.limits().arbitraryShots());
     assertEquals(1, p.limits().maxWindows());
+    assertFalse(p.limits().pulsePhases());
+    assertEquals(20, p.limits().restSeconds().max());
+  }
+
+  @Test
+  void whereTheHostRestsTheBoardsWaitIsNoLimitOfTheRest() throws IOException {
+    DeviceProfile p =
+        sound(shipped("pulse-and-receive").replace(" {rest}", "").replace("\"20s\"", "\"10ms\""));
+    assertEquals(0.01, p.limits().waitSeconds().max());
+    assertTrue(p.limits().restSeconds().contains(100));
+    assertTrue(sound(shipped("scpi-console")).limits().pulsePhases());
   }
 
   @ParameterizedTest

@@ -110,6 +110,31 @@ class FirmwareTest {
   }
 
   @Test
+  void receivingMayBeThePulsesOwnCommandWithAWidthOfNothing() throws Exception {
+    String text =
+        java.nio.file.Files.readString(
+            java.nio.file.Path.of("device-profiles", "pulse-and-receive.toml"));
+    DeviceProfile profile =
+        coilside.board.profile.ProfileReader.read(
+                "same-command.toml",
+                text.replace(
+                        "\"listen {points} {dwell} {rest}\"",
+                        "\"shoot 0 0 {points} {dwell} {rest}\"")
+                    .getBytes(StandardCharsets.UTF_8))
+            .profile()
+            .orElseThrow();
+    Firmware f =
+        new Firmware(
+            profile,
+            new FirmwareAdc(profile, new ToneBench(1e-3, 8.09e6, 20)),
+            false,
+            FirmwareFaults.none());
+    assertTrue(answer(f, "shoot 0 0 16 10.0 1.000\n").startsWith("yes\nsamples 16\n"));
+    assertTrue(answer(f, "shoot 10.0 5.0 16 10.0 1.000\n").startsWith("yes\nsamples 16\n"));
+    assertTrue(answer(f, "shoot 0.0 5.0 16 10.0 1.000\n").startsWith("no "));
+  }
+
+  @Test
   void numbersOfTheWrongFormAreRefused() {
     Firmware f = plain(FirmwareFaults.none());
     for (String wrong :
