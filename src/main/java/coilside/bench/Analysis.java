@@ -1,6 +1,7 @@
 package coilside.bench;
 
 import coilside.shot.Shot;
+import coilside.signal.Averager;
 import coilside.signal.Fid;
 import coilside.signal.Scan;
 import java.util.ArrayList;
@@ -59,6 +60,13 @@ public final class Analysis {
       throw new IllegalArgumentException("the capture holds only receive-only scans");
     }
     return DecayMethod.mean(shots, scans);
+  }
+
+  /** The plain mean of the scans' first windows: what there is to see of receive-only scans. */
+  public static Fid plainMean(List<Scan> scans) {
+    Averager average = new Averager();
+    scans.forEach(s -> average.add(s.fid()));
+    return average.mean();
   }
 
   private static Method method(String purpose) {

@@ -340,7 +340,7 @@ public final class Bench {
     }
   }
 
-  Taken take(
+  private Taken take(
       int scans, int points, double dwell, String cycle, OptionalDouble carrier, String purpose)
       throws BoardException, KeepException, NotMeasurable {
     Acquisition acquisition = acquisition();
@@ -352,19 +352,50 @@ public final class Bench {
     return new Taken(capture, name, reading);
   }
 
+  /**
+   * One repetition of the log.
+   *
+   * @param capture what was played
+   * @param name base name of the capture; empty when it was not kept
+   * @param reading empty when nothing can be read from it
+   * @param why why not; empty otherwise
+   */
+  record Repetition(Capture capture, String name, Optional<Reading> reading, String why) {}
+
+  Repetition repeat(int scans, OptionalDouble carrier, boolean keep)
+      throws BoardException, KeepException, NotMeasurable {
+    Acquisition acquisition = acquisition();
+    DecayMethod.play(acquisition, scans, 0, 0, "", carrier);
+    Capture capture = acquisition.capture("log");
+    String name = keep ? keeper.keep(capture) : "";
+    try {
+      Reading reading = new DecayMethod().read(capture);
+      acquisition.show(reading.picture());
+      return new Repetition(capture, name, Optional.of(reading), "");
+    } catch (NotMeasurable e) {
+      return new Repetition(capture, name, Optional.empty(), e.getMessage());
+    }
+  }
+
+  /** The board's temperature now, degree Celsius, where it reports one. */
+  OptionalDouble askTemperature() throws BoardException {
+    OptionalDouble celsius = board.temperature();
+    if (celsius.isPresent()) {
+      temperature = celsius;
+    }
+    return celsius;
+  }
+
   /** Runs over and over until stopped, keeping nothing. */
   public void live(Work.Live request) throws BoardException {
     new LiveRun(acquisition(), request, () -> stopped).run();
   }
 
-  /** Repeats an acquisition at fixed times until the plan ends or it is stopped. */
-  public void log(Work.Log plan) throws BoardException, KeepException {
-    try {
-      new LogRun(this, plan, waiter).run();
-    } catch (InterruptedException e) {
-      Thread.currentThread().interrupt();
-      throw new BoardException.Stopped("interrupted");
-    }
+  /**
+   * Repeats an acquisition at fixed times until the plan ends, a rule ends it, or it is stopped.
+   */
+  public LogEnd log(Work.Log plan) throws BoardException, KeepException {
+    return new LogRun(this, plan, waiter).run();
   }
 
   Instant now() {
@@ -373,6 +404,10 @@ public final class Bench {
 
   void note(String kind, String text) throws KeepException {
     keeper.note(clock.instant(), kind, text);
+  }
+
+  void say(boolean warning, String text) {
+    out.accept(new Progress.Message(warning, text));
   }
 
   void keepRow(LogRow row) throws KeepException {

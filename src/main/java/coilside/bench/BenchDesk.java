@@ -165,7 +165,7 @@ public final class BenchDesk implements Desk {
       end = new Progress.WorkEnded(false, Optional.of("stopped; what was finished is kept"));
     } catch (BoardException | KeepException e) {
       end = new Progress.WorkEnded(false, Optional.of(e.getMessage()));
-    } catch (RuntimeException e) {
+    } catch (RuntimeException | LinkageError | OutOfMemoryError e) {
       end =
           new Progress.WorkEnded(
               false, Optional.of("a mistake in coilside itself ended the work: " + e));

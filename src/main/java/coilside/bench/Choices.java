@@ -10,6 +10,8 @@ final class Choices {
   /** Spectral width looked at while searching, Hz. */
   static final double WIDE_HERTZ = 200e3;
 
+  private static final double GUESSED_PULSE = 15e-6;
+
   private Choices() {}
 
   static double carrier(Acquisition a) {
@@ -67,6 +69,11 @@ final class Choices {
   /** The 90-degree pulse as the ladder knows it, on the board's grain, s. */
   static double pulse90(Acquisition a) {
     return pulse(a.limits(), a.known().need(Rung.NUTATION, "pulse_90"));
+  }
+
+  /** The same for live running, which may start on a cold bench: a useful flip for most coils. */
+  static double pulse90OrGuess(Acquisition a) {
+    return pulse(a.limits(), a.known().value(Rung.NUTATION, "pulse_90").orElse(GUESSED_PULSE));
   }
 
   static double amplitude(Acquisition a) {

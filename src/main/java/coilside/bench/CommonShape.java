@@ -32,6 +32,9 @@ record CommonShape(
     DecayResult decay,
     Quiet quiet) {
 
+  /** u(T2*)/T2* at which a shape still projects well: its error enters amplitudes squared. */
+  private static final double LOOSE = 0.5;
+
   /**
    * The rate at which the FIDs decay as the projection sees it, 1/s: minus the derivative of the
    * shape projected on the shape. For an exponential 1/T2*, for any other form the weighted mean,
@@ -114,7 +117,9 @@ record CommonShape(
       }
     }
     try {
-      return DecayFit.fit(average.mean(), DecayFit.Options.usual().withScans(average.count()));
+      return DecayFit.fit(
+          average.mean(),
+          DecayFit.Options.usual().withScans(average.count()).withLargestRelative(LOOSE));
     } catch (NotDetermined e) {
       throw Readings.refused("the decay that the scans share is not determined", e);
     }

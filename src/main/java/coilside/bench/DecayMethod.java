@@ -12,6 +12,7 @@ import coilside.signal.Averager;
 import coilside.signal.Fid;
 import coilside.signal.Scan;
 import java.util.List;
+import java.util.Optional;
 import java.util.OptionalDouble;
 
 /**
@@ -67,6 +68,9 @@ final class DecayMethod implements Method {
       if (wanted > a.scans().size() + a.scansLeft()) {
         wanted = CYCLE * ((a.scans().size() + a.scansLeft()) / CYCLE);
       }
+    }
+    if (Quiet.needed(a)) {
+      Quiet.play(a, a.shots().get(0));
     }
     a.note("target", target);
   }
@@ -146,7 +150,7 @@ final class DecayMethod implements Method {
         Choices.gain(a),
         Choices.rest(a, repetition(a)),
         List.of(
-            new Pulse(Choices.pulse90(a), phase, Choices.amplitude(a)),
+            new Pulse(Choices.pulse90OrGuess(a), phase, Choices.amplitude(a)),
             new Wait(Choices.delay(a)),
             new Receive(w.points(), w.dwellSeconds(), 0)));
   }
@@ -157,11 +161,20 @@ final class DecayMethod implements Method {
         .orElse(GainMethod.RECOVERED * a.guesses().t1Seconds().orElse(0.3));
   }
 
-  /** The average of scans, each turned back by the phase of its first pulse. */
+  /**
+   * The average of scans, each turned back by the phase of its first pulse, without the
+   * interference that a receive-only scan among them shows.
+   */
   static Fid mean(List<Shot> shots, List<Scan> scans) {
+    Optional<Quiet> quiet = Quiet.find(shots, scans);
     Averager average = new Averager();
     for (int i = 0; i < scans.size(); i++) {
-      average.add(scans.get(i).fid(), BenchShots.firstPhase(shots.get(i)));
+      if (!shots.get(i).receiveOnly()) {
+        Fid fid = scans.get(i).fid();
+        average.add(
+            quiet.isPresent() ? quiet.get().strip(fid) : fid,
+            BenchShots.firstPhase(shots.get(i)));
+      }
     }
     return average.mean();
   }

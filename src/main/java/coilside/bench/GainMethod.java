@@ -184,14 +184,14 @@ final class GainMethod implements Method {
     Quiet quiet = quiet(a, gain);
     for (double rest : GUESS_RESTS) {
       double width = Choices.pulse(a.limits(), GUESS_WIDTH);
-      double phase = spoiling(a.scansPlayed());
+      double phase = BenchShots.phase(a, spoiling(a.scansPlayed()));
       Scan scan = a.playAside(BenchShots.single(a, gain, width, phase, Choices.rest(a, rest)));
       while ((scan.clippedSamples() > 0 || flatTopped(scan)) && lower(a, gain, 10) < gain) {
         gain = lower(a, gain, 10);
         fids.clear();
         rests.clear();
         quiet = quiet(a, gain);
-        phase = spoiling(a.scansPlayed());
+        phase = BenchShots.phase(a, spoiling(a.scansPlayed()));
         scan = a.playAside(BenchShots.single(a, gain, width, phase, Choices.rest(a, rest)));
       }
       fids.add(turned(quiet.strip(scan.fid()), phase));

@@ -1,7 +1,7 @@
 package coilside.bench;
 
 /** The data could not be kept: what, where, what to do. */
-public final class KeepException extends Exception {
+public class KeepException extends Exception {
   private static final long serialVersionUID = 1L;
 
   public KeepException(String message) {

@@ -33,4 +33,10 @@ public record LogRow(
   public LogRow {
     values = Collections.unmodifiableMap(new LinkedHashMap<>(values));
   }
+
+  /** The same row with another note. */
+  LogRow withNote(String text) {
+    return new LogRow(
+        run, number, due, started, values, temperatureCelsius, retries, text, capture);
+  }
 }

@@ -22,6 +22,10 @@ import java.util.Optional;
 /**
  * The T1 rung: inversion recovery, or on boards that play only "pulse then receive" saturation
  * recovery by 90-degree pulses with different rests; recovery times chosen by what they would tell.
+ *
+ * <p>Saturation goes in pairs: a pulse after a long rest, which saturates and is itself a point
+ * near full recovery, and the pulse that reads. Short rests in a row would let each pulse refocus
+ * what the ones before left across the field, and echoes would pass for recovery.
  */
 final class RecoveryMethod implements Method {
   private static final double REST_IN_T1 = 3;
@@ -53,21 +57,27 @@ final class RecoveryMethod implements Method {
     double longRest = Choices.rest(a, GainMethod.RECOVERED * guess);
     Quiet.play(a, single(a, longRest));
     a.play(inversion ? inversion(a, GainMethod.RECOVERED * guess, longRest) : single(a, longRest));
-    double time = 0.2 * guess;
+    double time = (inversion ? 0.2 : 0.4) * guess;
     double rest = longRest;
     double shortest = 0;
     int fewest = 3;
+    boolean saturated = true;
     while (a.scansLeft() > 0) {
-      a.play(
-          inversion
-              ? inversion(a, time, rest)
-              : single(a, Choices.rest(a, Math.max(0, time - BenchShots.FIRST_SECONDS))));
+      if (inversion) {
+        a.play(inversion(a, time, rest));
+      } else {
+        if (!saturated) {
+          a.play(single(a, Choices.rest(a, REST_IN_T1 * guess)));
+        }
+        a.play(single(a, Choices.rest(a, Math.max(0, time - played(a)))));
+        saturated = false;
+      }
       if (a.scans().size() < fewest + 1) {
-        time = 0.4 * guess;
+        time = (inversion ? 0.4 : 1) * guess;
         continue;
       }
       CommonShape shape = CommonShape.of(a.shots(), a.scans());
-      shortest = shortest(a, shape, guess);
+      shortest = inversion ? shortest(a, shape, guess) : afterEcho(a, shape, guess);
       List<RecoveryPoint> points = points(a.shots(), a.scans(), shape, inversion);
       RecoveryPlan.Advice advice = plan.next(points);
       a.show(picture(points, advice.result(), new double[] {advice.recoverySeconds()}));
@@ -100,6 +110,20 @@ final class RecoveryMethod implements Method {
     return Math.max(across, 3 * Choices.pulse90(a) + a.limits().waitSeconds().min());
   }
 
+  /**
+   * The shortest recovery time of saturation: the echo of the two pulses comes after as long again,
+   * and must rise only when the window is over, as far as T1 allows the wait.
+   */
+  private static double afterEcho(Acquisition a, CommonShape shape, double guess) {
+    double t2Star = shape.decay().t2Star().value();
+    return Math.min(played(a) + 5 * t2Star, 0.6 * guess);
+  }
+
+  /** From the start of a reading pulse to the end of its window, s. */
+  private static double played(Acquisition a) {
+    return single(a, 0).playedSeconds();
+  }
+
   private static RecoveryFit.Options options(boolean inversion, double guess) {
     return RecoveryFit.Options.of(
         inversion ? RecoveryFit.Kind.INVERSION : RecoveryFit.Kind.SATURATION,
@@ -123,7 +147,7 @@ final class RecoveryMethod implements Method {
     Choices.Window w =
         Choices.window(a.limits(), BenchShots.FIRST_SECONDS, BenchShots.FIRST_POINTS);
     double amplitude = Choices.amplitude(a);
-    double inverting = a.scans().size() / 2 % 2 * Math.PI;
+    double inverting = BenchShots.phase(a, a.scans().size() / 2 % 2 * Math.PI);
     return new Shot(
         Choices.carrier(a),
         Choices.gain(a),

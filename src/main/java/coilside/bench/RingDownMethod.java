@@ -22,7 +22,9 @@ import java.util.Optional;
  * The ring-down rung: pairs of scans with the pulse's phase turned by 180 degrees and the receiver
  * opened as early as it can be. What turns with the pulse is ring-down and signal; the signal is
  * fitted late, drawn back and taken off. The second pair is played a quarter turn from the first,
- * so that the mirror image which unequal receiver channels make drops out.
+ * so that the mirror image which unequal receiver channels make drops out. On a board that knows no
+ * pulse phase nothing can be turned: the DC offset is taken off as the receive-only scan has it, and
+ * what remains counts as following.
  */
 final class RingDownMethod implements Method {
   private static final int PAIRS = 2;
@@ -48,7 +50,7 @@ final class RingDownMethod implements Method {
     double earliest = limits.waitSeconds().min();
     double pulse = Choices.pulse(limits, PULSE);
     for (int i = 0; i < 2 * PAIRS; i++) {
-      double phase = i % 2 * Math.PI + i / 2 % 2 * Math.PI / 2;
+      double phase = BenchShots.phase(a, i % 2 * Math.PI + i / 2 % 2 * Math.PI / 2);
       Shot shot =
           BenchShots.single(
               a, Choices.carrier(a), Choices.gain(a), pulse, phase, rest, earliest, window);
@@ -63,6 +65,7 @@ final class RingDownMethod implements Method {
 
   @Override
   public Reading read(Capture capture) throws NotMeasurable {
+    Quiet quiet = Quiet.of(capture.shots(), capture.scans());
     Averager plus = new Averager();
     Averager minus = new Averager();
     int clippedUntil = 0;
@@ -74,12 +77,16 @@ final class RingDownMethod implements Method {
       Scan scan = capture.scans().get(i);
       double phase = BenchShots.firstPhase(shot);
       boolean turned = phase > Math.PI - 0.01;
-      (turned ? minus : plus).add(scan.fid(), turned ? phase - Math.PI : phase);
+      (turned ? minus : plus).add(quiet.strip(scan.fid()), turned ? phase - Math.PI : phase);
       clippedUntil = Math.max(clippedUntil, clippedUntil(scan));
     }
-    double one = Quiet.of(capture.shots(), capture.scans()).sigma();
+    double one = quiet.sigma();
     double sigma = one / Math.sqrt(plus.count() + minus.count());
-    Fid following = RingDownFit.separate(plus.mean(), minus.mean()).following();
+    boolean turned = minus.count() > 0;
+    Fid following =
+        turned
+            ? RingDownFit.separate(plus.mean(), minus.mean()).following()
+            : plus.mean();
     double pulseHalf = pulseHalf(capture);
     RingDownFit.Result fit;
     try {
@@ -102,6 +109,10 @@ final class RingDownMethod implements Method {
             : Measured.withoutUncertainty(
                 delay, Unit.SECOND, fit.clearSeconds().whyNoUncertainty()));
     List<String> warnings = new ArrayList<>(fit.warnings());
+    if (!turned) {
+      warnings.add(
+          "this board knows no pulse phase: the receiver's own recovery counts as ring-down");
+    }
     if (clippedUntil > 0) {
       warnings.add(
           String.format(

@@ -1,25 +1,30 @@
 package coilside.bench;
 
-import java.time.Duration;
-import java.time.Instant;
-import java.time.InstantSource;
 import java.util.function.BooleanSupplier;
 
-/** How the bench waits for a moment; injected, so that tests need not sleep. */
+/**
+ * How the bench waits for a moment; injected, so that tests need not sleep. Moments are those of a
+ * steady clock, so that a step of the computer's clock neither holds a run up nor hurries it.
+ */
 @FunctionalInterface
 public interface Waiter {
-  /** Returns at {@code due}, or soon after {@code stop} turned true. */
-  void await(Instant due, BooleanSupplier stop) throws InterruptedException;
+  /** Returns at {@code dueNanos} of the steady clock, or soon after {@code stop} turned true. */
+  void await(long dueNanos, BooleanSupplier stop) throws InterruptedException;
 
-  /** Waits by this clock on the calling thread. */
-  static Waiter by(InstantSource clock) {
+  /** The steady clock, ns from any origin. */
+  default long nanos() {
+    return System.nanoTime();
+  }
+
+  /** Waits on the calling thread, by the steady clock of this computer. */
+  static Waiter steady() {
     return (due, stop) -> {
       while (!stop.getAsBoolean()) {
-        long left = Duration.between(clock.instant(), due).toMillis();
+        long left = due - System.nanoTime();
         if (left <= 0) {
           return;
         }
-        Thread.sleep(Math.min(left, 50));
+        Thread.sleep(Math.max(1, Math.min(left / 1_000_000, 50)));
       }
     };
   }

@@ -2,6 +2,7 @@ package coilside.bench;
 
 import java.time.Duration;
 import java.time.Instant;
+import java.util.List;
 import java.util.Optional;
 
 /** Something the bench can be asked to do: a closed set. */
@@ -39,7 +40,29 @@ public sealed interface Work {
    * @param until when to end
    * @param scans scans averaged a row
    * @param follow whether the carrier follows the resonance
+   * @param keepCaptures whether each row's samples are kept, not only its values
+   * @param rules bounds on the values
    */
-  record Log(Duration every, long count, Optional<Instant> until, int scans, boolean follow)
-      implements Work {}
+  record Log(
+      Duration every,
+      long count,
+      Optional<Instant> until,
+      int scans,
+      boolean follow,
+      boolean keepCaptures,
+      List<LogRule> rules)
+      implements Work {
+    public Log {
+      if (every.isNegative() || every.isZero() || count < 0 || scans < 1) {
+        throw new IllegalArgumentException(
+            "a log of " + scans + " scans every " + every + ", " + count + " times");
+      }
+      rules = List.copyOf(rules);
+    }
+
+    /** A log that keeps everything and has no rules. */
+    public Log(Duration every, long count, Optional<Instant> until, int scans, boolean follow) {
+      this(every, count, until, scans, follow, true, List.of());
+    }
+  }
 }

@@ -27,8 +27,9 @@ final class WorkRunner {
       return new Progress.WorkEnded(true, Optional.empty());
     }
     if (work instanceof Work.Log log) {
-      bench.log(log);
-      return new Progress.WorkEnded(true, Optional.empty());
+      LogEnd end = bench.log(log);
+      return new Progress.WorkEnded(
+          end.asWished(), end.reason().isEmpty() ? Optional.empty() : Optional.of(end.reason()));
     }
     throw new IllegalStateException("no way to do " + work);
   }

@@ -2,7 +2,9 @@ package coilside.board;
 
 /**
  * What a board can do and what the operator allows; SI units. The guard holds every shot against
- * these. "min" and "max" are inclusive; a step of 0 means continuous.
+ * these. "min" and "max" are inclusive; a step of 0 means continuous. Where {@code pulsePhases} is
+ * false the board pulses with one phase only and the host turns the samples instead: the signal is
+ * as if the pulse had that phase, but the receiver's DC offset and interference turn with it.
  */
 public record BoardLimits(
     Range carrierHertz,
@@ -20,9 +22,52 @@ public record BoardLimits(
     double maxDutyCycle,
     double dutyWindowSeconds,
     boolean arbitraryShots,
+    boolean pulsePhases,
     boolean repeatLoops,
     boolean settableReceivePhase,
     boolean reportsTemperature) {
+
+  /** Limits of a board whose pulses have a phase of their own. */
+  public BoardLimits(
+      Range carrierHertz,
+      Range gainDecibels,
+      Range pulseSeconds,
+      Range amplitude,
+      Range waitSeconds,
+      Range dwellSeconds,
+      int minPoints,
+      int maxPoints,
+      int maxWindows,
+      int maxSteps,
+      int maxRepeats,
+      double maxReceiveSeconds,
+      double maxDutyCycle,
+      double dutyWindowSeconds,
+      boolean arbitraryShots,
+      boolean repeatLoops,
+      boolean settableReceivePhase,
+      boolean reportsTemperature) {
+    this(
+        carrierHertz,
+        gainDecibels,
+        pulseSeconds,
+        amplitude,
+        waitSeconds,
+        dwellSeconds,
+        minPoints,
+        maxPoints,
+        maxWindows,
+        maxSteps,
+        maxRepeats,
+        maxReceiveSeconds,
+        maxDutyCycle,
+        dutyWindowSeconds,
+        arbitraryShots,
+        true,
+        repeatLoops,
+        settableReceivePhase,
+        reportsTemperature);
+  }
 
   /**
    * An inclusive range with a step, in the unit of the field's name.

@@ -10,14 +10,20 @@ abstract class BenchCommand implements CoilsideCommand {
   /** Refuses wrong arguments before the bench is opened. */
   void check() {}
 
+  /** True when a hang-up of the terminal does not end the work. */
+  boolean survivesHangUp() {
+    return false;
+  }
+
   /** The work on the open bench. */
   abstract int work(OpenBench open, Output output) throws Exception;
 
   @Override
-  public final int run(Output output) throws Exception {
+  public int run(Output output) throws Exception {
     check();
     OpenBench open = OpenBench.open(common(), output);
-    try (Interrupt interrupt = Interrupt.calls(open::stop);
+    try (Interrupt interrupt =
+            survivesHangUp() ? Interrupt.ignoringHangUp(open::stop) : Interrupt.calls(open::stop);
         open) {
       try {
         int status = work(open, output);

@@ -23,6 +23,8 @@ import picocli.CommandLine.Parameters;
     },
     mixinStandardHelpOptions = true)
 final class CheckCommand implements CoilsideCommand {
+  private static final String COLUMNS = "%-8s %-30s %-30s %s";
+
   @Mixin CommonOptions common;
 
   @Parameters(paramLabel = "PROFILE[@PORT]", description = "a profile file or name, and a port")
@@ -35,6 +37,10 @@ final class CheckCommand implements CoilsideCommand {
 
   @Override
   public int run(Output output) throws Exception {
+    if (common.board != null) {
+      throw new UsageException(
+          "check takes the board as its argument, not by --board: coilside check " + common.board);
+    }
     BoardAddress at = BoardAddress.parse(address);
     ProfileReading reading = Profiles.reading(at.profile());
     if (reading.profile().isEmpty()) {
@@ -46,12 +52,17 @@ final class CheckCommand implements CoilsideCommand {
       tellSound(profile, output);
       return ExitStatus.DONE;
     }
-    if (transmit) {
+    if (transmit && !at.simulated()) {
       output.aside(
-          "Caution: one pulse will be sent. Put a 50-ohm dummy load in place of the coil, keep"
-              + " hands off, start at the lowest amplitude, and follow your local rules.");
+          "Caution: "
+              + Conformance.whatIsSent(profile)
+              + " will be sent. Put a 50 ohm dummy load in place of the coil, turn the amplifier"
+              + " down, keep hands off, and follow your local rules for transmitting.");
     }
-    Link link = at.simulated() ? Simulation.link(profile, common) : Links.open(at, profile);
+    Link link = OpenBoard.line(at, profile, common);
+    if (!common.json) {
+      output.line(String.format(Locale.ROOT, COLUMNS, "verdict", "tried", "expected", "seen"));
+    }
     List<Conformance.Row> rows =
         Conformance.run(
             profile,
@@ -73,9 +84,24 @@ final class CheckCommand implements CoilsideCommand {
               .putAll("rows", rows.stream().map(CheckCommand::json).toList())
               .text());
     } else {
-      output.line(good ? "the board does what the profile says" : "the board does not conform");
+      output.line(summary(rows, good));
     }
-    return good ? ExitStatus.DONE : ExitStatus.REFUSED;
+    boolean met = rows.size() > 1 || good;
+    return good ? ExitStatus.DONE : met ? ExitStatus.REFUSED : ExitStatus.OUT_OF_REACH;
+  }
+
+  private static String summary(List<Conformance.Row> rows, boolean good) {
+    StringBuilder text = new StringBuilder();
+    for (Conformance.Row.Verdict verdict : Conformance.Row.Verdict.values()) {
+      text.append(text.length() == 0 ? "" : ", ")
+          .append(rows.stream().filter(r -> r.verdict() == verdict).count())
+          .append(' ')
+          .append(verdict.name().toLowerCase(Locale.ROOT));
+    }
+    return text
+        + (good
+            ? ": the board does what the profile says"
+            : ": the board does not do what the profile says");
   }
 
   private static JsonDocument json(Conformance.Row row) {
@@ -89,9 +115,12 @@ final class CheckCommand implements CoilsideCommand {
   private static void print(Conformance.Row row, Output output) {
     output.line(
         String.format(
-            Locale.ROOT, "%-7s %s", row.verdict().name().toLowerCase(Locale.ROOT), row.tried()));
-    output.line("        expected: " + row.expected());
-    output.line("        seen:     " + row.seen());
+            Locale.ROOT,
+            COLUMNS,
+            row.verdict().name().toLowerCase(Locale.ROOT),
+            row.tried(),
+            row.expected(),
+            row.seen()));
   }
 
   private void tellProblems(ProfileReading reading, Output output) {

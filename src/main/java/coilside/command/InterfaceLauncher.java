@@ -3,6 +3,7 @@ package coilside.command;
 import coilside.bench.BenchDesk;
 import coilside.bench.KeepException;
 import coilside.record.BenchRecord;
+import coilside.record.RecordHeld;
 import coilside.terminal.SettingsStore;
 import coilside.terminal.TerminalOptions;
 import coilside.terminal.TextInterface;
@@ -21,11 +22,25 @@ final class InterfaceLauncher {
     if (!options.plain && unusable.isPresent()) {
       throw new UsageException(unusable.get());
     }
-    OpenBench.Parts parts = OpenBench.Parts.open(options, clock);
+    OpenBench.Parts parts;
+    try {
+      parts = OpenBench.Parts.open(options, clock);
+    } catch (RecordHeld e) {
+      return watch(options, clock, e);
+    }
     try (BenchDesk desk = parts.desk(clock)) {
       return TextInterface.run(desk, look(options, clock, new Kept(parts.record())));
     } finally {
       parts.close();
+    }
+  }
+
+  /** Another coilside holds the bench: what it does is shown, and nothing else. */
+  private static int watch(CommonOptions options, Clock clock, RecordHeld held)
+      throws KeepException {
+    try (WatchDesk desk = WatchDesk.open(options, held, clock)) {
+      desk.start();
+      return TextInterface.run(desk, look(options, clock, SettingsStore.none()));
     }
   }
 

@@ -36,6 +36,25 @@ final class KnownLadder implements AutoCloseable {
         there ? Optional.of(BenchRecord.watch(options.captures)) : Optional.empty(), options);
   }
 
+  /** The ladder in a record that is open already, which is closed together with it. */
+  static KnownLadder on(RecordView view, CommonOptions options) {
+    return new KnownLadder(Optional.of(view), options);
+  }
+
+  /** How the bench stood at its newest finding. */
+  Optional<Conditions> lastConditions() throws KeepException {
+    return LadderView.last(findings());
+  }
+
+  /** All findings by rung, oldest first. */
+  Map<Rung, List<Finding>> findings() throws KeepException {
+    Map<Rung, List<Finding>> findings = new EnumMap<>(Rung.class);
+    for (Rung rung : Rung.values()) {
+      findings.put(rung, history(rung));
+    }
+    return findings;
+  }
+
   Instant now() {
     return clock.instant();
   }
@@ -45,10 +64,7 @@ final class KnownLadder implements AutoCloseable {
   }
 
   List<RungStatus> ladder() throws KeepException {
-    Map<Rung, List<Finding>> findings = new EnumMap<>(Rung.class);
-    for (Rung rung : Rung.values()) {
-      findings.put(rung, history(rung));
-    }
+    Map<Rung, List<Finding>> findings = findings();
     Conditions last =
         LadderView.last(findings)
             .orElse(new Conditions("", "", 1, 0, 0, "", "", OptionalDouble.empty()));

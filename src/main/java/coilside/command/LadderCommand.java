@@ -1,9 +1,7 @@
 package coilside.command;
 
-import coilside.bench.Finding;
 import coilside.bench.Rung;
 import coilside.record.Json;
-import java.util.List;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Option;
@@ -19,7 +17,7 @@ final class LadderCommand implements CoilsideCommand {
   @Option(
       names = "--history",
       paramLabel = "RUNG",
-      description = "all findings of one rung, oldest first")
+      description = "all findings of one rung, oldest first, and the drift learned")
   String history;
 
   @Override
@@ -27,7 +25,7 @@ final class LadderCommand implements CoilsideCommand {
     Rung rung = history == null ? null : MeasureCommand.rungNamed(history);
     try (KnownLadder known = KnownLadder.open(common)) {
       if (rung != null) {
-        printHistory(known.history(rung), output);
+        RungHistory.of(known.findings(), rung).print(common, output);
       } else if (common.json) {
         output.line(Json.ladder(known.ladder()).text());
       } else {
@@ -35,19 +33,5 @@ final class LadderCommand implements CoilsideCommand {
       }
     }
     return ExitStatus.DONE;
-  }
-
-  private void printHistory(List<Finding> findings, Output output) {
-    if (common.json) {
-      output.line(Json.history(findings).text());
-      return;
-    }
-    for (Finding finding : findings) {
-      output.line(finding.started() + "  sample '" + finding.conditions().sample() + "'");
-      FindingText.of(finding, common.plain).forEach(line -> output.line("  " + line));
-    }
-    if (findings.isEmpty()) {
-      output.line("nothing was measured yet");
-    }
   }
 }

@@ -17,10 +17,11 @@ import coilside.board.profile.SerialAttachment;
 import java.nio.file.Path;
 import java.time.InstantSource;
 import java.util.List;
-import java.util.Optional;
 
 /** Opens the line to a board where the address and its profile say it is. */
 final class Links {
+  private static final int USUAL_BAUD = 115_200;
+
   private Links() {}
 
   /** The user's own folder for what must not be shared: unpacked native libraries. */
@@ -59,7 +60,7 @@ final class Links {
       }
       if (!address.port().startsWith("/") && address.port().contains(":")) {
         HostPort to = HostPort.parse(address.port());
-        return TcpLink.open(to.host(), to.port());
+        return TcpLink.open(to.host(), to.port(), locks());
       }
       return serial(address.port(), profile);
     } catch (LinkException e) {
@@ -70,37 +71,65 @@ final class Links {
   }
 
   private static Link byProfile(DeviceProfile profile) throws LinkException, BoardException {
-    Optional<SerialAttachment> attachment = profile.serial();
-    if (attachment.isPresent() && !attachment.get().usbIds().isEmpty()) {
-      prepareNatives();
-      for (PortInfo port : new Ports(locks()).list()) {
-        if (attachment.get().usbIds().contains(port.usbId())) {
-          return serial(port.path(), profile);
-        }
-      }
+    if (profile.serial().isEmpty() && profile.tcp().isPresent()) {
+      return TcpLink.open(profile.tcp().get().host(), profile.tcp().get().port(), locks());
     }
-    if (attachment.isEmpty() && profile.tcp().isPresent()) {
-      return TcpLink.open(profile.tcp().get().host(), profile.tcp().get().port());
+    prepareNatives();
+    List<PortInfo> ports = new Ports(locks()).list();
+    return serial(choose(profile, ports).path(), profile);
+  }
+
+  /**
+   * The one port that the profile means: by USB id, else by its path pattern.
+   *
+   * @throws BoardException none fits, or several do
+   */
+  static PortInfo choose(DeviceProfile profile, List<PortInfo> ports) throws BoardException {
+    List<Profiles.Known> only = List.of(new Profiles.Known(profile.name(), profile));
+    List<PortInfo> sure =
+        ports.stream().filter(p -> Fit.of(p, only).stream().anyMatch(Fit::sure)).toList();
+    List<PortInfo> fitting =
+        sure.isEmpty() ? ports.stream().filter(p -> !Fit.of(p, only).isEmpty()).toList() : sure;
+    if (fitting.size() == 1) {
+      return fitting.get(0);
     }
+    String wanted =
+        profile
+            .serial()
+            .map(
+                a ->
+                    "USB ids "
+                        + (a.usbIds().isEmpty() ? "none" : String.join(", ", a.usbIds()))
+                        + ", path "
+                        + a.path().orElse("none"))
+            .orElse("no [serial] section");
     throw new BoardException.Unreachable(
-        "no port shows a device that the profile '"
-            + profile.name()
-            + "' names ("
-            + attachment.map(a -> String.join(", ", a.usbIds())).orElse("no USB ids")
+        (fitting.isEmpty()
+                ? "no port shows a device that the profile '" + profile.name() + "' names ("
+                : fitting.size()
+                    + " ports ("
+                    + String.join(", ", fitting.stream().map(PortInfo::path).toList())
+                    + ") fit the profile '"
+                    + profile.name()
+                    + "' (")
+            + wanted
             + "): 'coilside ports' lists what is attached; give the port as --board PROFILE@PORT");
   }
 
   private static Link serial(String path, DeviceProfile profile) throws LinkException {
     prepareNatives();
-    SerialSettings settings = SerialSettings.at(115200);
-    if (profile.serial().isPresent()) {
-      SerialAttachment a = profile.serial().get();
-      settings =
-          SerialSettings.at(a.speedBaud())
-              .withLines(
-                  a.dataTerminalReady() ? LineState.ON : LineState.OFF,
-                  a.requestToSend() ? LineState.ON : LineState.OFF);
+    return SerialLink.open(path, settings(profile), locks());
+  }
+
+  /** How the profile wants its port opened; the time to settle is waited by the driver. */
+  static SerialSettings settings(DeviceProfile profile) {
+    if (profile.serial().isEmpty()) {
+      return SerialSettings.at(USUAL_BAUD);
     }
-    return SerialLink.open(path, settings, locks());
+    SerialAttachment a = profile.serial().get();
+    return SerialSettings.at(a.speedBaud())
+        .withLines(
+            a.dataTerminalReady() ? LineState.ON : LineState.OFF,
+            a.requestToSend() ? LineState.ON : LineState.OFF);
   }
 }

@@ -1,12 +1,9 @@
 package coilside.command;
 
-import coilside.bench.LogRow;
-import coilside.bench.Progress;
+import coilside.bench.LogEnd;
+import coilside.bench.LogRule;
 import coilside.bench.Work;
-import coilside.quantity.ConciseFormat;
-import coilside.quantity.Measured;
 import coilside.quantity.Unit;
-import coilside.record.Json;
 import coilside.record.LogCsv;
 import java.nio.file.Path;
 import java.time.Duration;
@@ -16,6 +13,8 @@ import java.time.LocalTime;
 import java.time.OffsetDateTime;
 import java.time.ZoneId;
 import java.time.format.DateTimeParseException;
+import java.util.ArrayList;
+import java.util.List;
 import java.util.Optional;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
@@ -24,21 +23,27 @@ import picocli.CommandLine.Option;
 /** {@code coilside log}: repeats an acquisition at fixed times. */
 @Command(
     name = "log",
-    description = "Repeat an acquisition at fixed times and keep a row for each.",
+    description = {
+      "Repeat an acquisition at fixed times and keep a row for each.",
+      "Rows and captures are kept in the bench record; each row is printed once it is kept."
+    },
     mixinStandardHelpOptions = true)
 final class LogCommand extends BenchCommand {
   private static final Duration SHORTEST = Duration.ofMillis(10);
+  private static final Duration LONGEST = Duration.ofDays(30);
 
   @Mixin CommonOptions common;
 
   @Option(
       names = "--every",
       paramLabel = "TIME",
-      required = true,
       description = "from one start to the next, such as 30s")
   String every;
 
-  @Option(names = "--count", paramLabel = "N", description = "how many rows")
+  @Option(
+      names = "--count",
+      paramLabel = "N",
+      description = "how many times, missed ones included (default: until stopped)")
   long count;
 
   @Option(
@@ -63,9 +68,43 @@ final class LogCommand extends BenchCommand {
       description = "append the rows to this file as they come")
   Path csv;
 
+  @Option(
+      names = "--rows-only",
+      description = "keep the rows but not the captures they come from (default: keep both)")
+  boolean rowsOnly;
+
+  @Option(
+      names = "--keep-running",
+      description = "go on when the terminal hangs up, as when an SSH session is lost")
+  boolean keepRunning;
+
+  @Option(
+      names = "--warn-when",
+      paramLabel = "RULE",
+      description = {
+        "warn when a value is out of bounds by more than its standard uncertainty,",
+        "such as \"linewidth > 80Hz\" or \"snr < 20\"; may be given again.",
+        "Values: larmor_frequency, field, amplitude, linewidth, t2_star, snr, temperature"
+      })
+  List<String> warnWhen = new ArrayList<>();
+
+  @Option(
+      names = "--stop-when",
+      paramLabel = "RULE",
+      description = "end the log then, with exit status 4; may be given again")
+  List<String> stopWhen = new ArrayList<>();
+
+  @Option(names = "--list", description = "list the logs in the record and do nothing else")
+  boolean list;
+
   @Override
   CommonOptions common() {
     return common;
+  }
+
+  @Override
+  boolean survivesHangUp() {
+    return keepRunning;
   }
 
   @Override
@@ -73,9 +112,25 @@ final class LogCommand extends BenchCommand {
     plan();
   }
 
+  @Override
+  public int run(Output output) throws Exception {
+    if (list) {
+      return LogList.print(common, output);
+    }
+    try (LastingOutput lasting = LastingOutput.over(output)) {
+      return super.run(lasting.output());
+    }
+  }
+
   private Work.Log plan() {
-    Duration interval =
-        Duration.ofNanos((long) (1e9 * Values.positive("--every", every, Unit.SECOND)));
+    if (every == null) {
+      throw new UsageException("--every is missing: say from one start to the next, such as 30s");
+    }
+    double seconds = Values.positive("--every", every, Unit.SECOND);
+    if (seconds > LONGEST.toSeconds()) {
+      throw new UsageException("--every '" + every + "' is longer than 30 d");
+    }
+    Duration interval = Duration.ofNanos(Math.round(1e9 * seconds));
     if (interval.compareTo(SHORTEST) < 0) {
       throw new UsageException("--every '" + every + "' is shorter than 10 ms");
     }
@@ -85,8 +140,33 @@ final class LogCommand extends BenchCommand {
     if (scans < 1 || scans > 100_000) {
       throw new UsageException("--scans " + scans + " must be 1 to 100000");
     }
+    List<LogRule> rules = new ArrayList<>();
+    warnWhen.forEach(text -> rules.add(rule("--warn-when", text, LogRule.Action.WARN)));
+    stopWhen.forEach(text -> rules.add(rule("--stop-when", text, LogRule.Action.STOP)));
     return new Work.Log(
-        interval, count, Optional.ofNullable(until).map(LogCommand::moment), scans, follow);
+        interval,
+        count,
+        Optional.ofNullable(until).map(LogCommand::end),
+        scans,
+        follow,
+        !rowsOnly,
+        rules);
+  }
+
+  private static Instant end(String text) {
+    Instant end = moment(text);
+    if (!end.isAfter(Instant.now())) {
+      throw new UsageException("--until '" + text + "' is over already");
+    }
+    return end;
+  }
+
+  private static LogRule rule(String option, String text, LogRule.Action action) {
+    try {
+      return LogRule.parse(text, action);
+    } catch (IllegalArgumentException e) {
+      throw new UsageException(option + " '" + text + "': " + e.getMessage());
+    }
   }
 
   /** A moment to come: a time of day is the next such time. */
@@ -115,42 +195,24 @@ final class LogCommand extends BenchCommand {
 
   @Override
   int work(OpenBench open, Output output) throws Exception {
-    open.armForThisRun("log");
-    try (LogCsv file = csv == null ? null : LogCsv.open(csv)) {
-      open.listen(event -> row(event, file, output));
-      open.bench().log(plan());
-    }
-    return ExitStatus.DONE;
-  }
-
-  private void row(Progress event, LogCsv file, Output output) {
-    if (!(event instanceof Progress.LogRowKept kept)) {
-      return;
-    }
-    output.clearProgress();
-    LogRow row = kept.row();
-    output.line(common.json ? Json.logRow(row).line() : text(row));
-    if (file != null) {
-      try {
-        file.add(row);
-      } catch (coilside.bench.KeepException e) {
-        output.aside(e.getMessage());
-      }
+    Work.Log plan = plan();
+    Optional<LogCsv> file = csv == null ? Optional.empty() : Optional.of(LogCsv.open(csv));
+    try (LogReporter reporter = new LogReporter(output, common.json, common.plain, file)) {
+      open.armForThisRun("log");
+      open.listen(reporter);
+      LogEnd end = open.bench().log(plan);
+      reporter.ended(LogList.summary(open.view(), end.run()), end);
+      return reporter.csvFailed() ? ExitStatus.NOT_KEPT : status(end);
     }
   }
 
-  private String text(LogRow row) {
-    StringBuilder line = new StringBuilder(row.started().toString());
-    line.append("  ").append(row.number());
-    for (String name : new String[] {"larmor_frequency", "t2_star", "amplitude", "snr"}) {
-      Measured m = row.values().get(name);
-      if (m != null) {
-        line.append("  ").append(common.plain ? ConciseFormat.ascii(m) : ConciseFormat.text(m));
-      }
-    }
-    if (!row.note().isEmpty()) {
-      line.append("  ").append(row.note());
-    }
-    return line.toString();
+  private static int status(LogEnd end) {
+    return switch (end.why()) {
+      case PLANNED -> end.rows() == 0 && end.gaps() > 0 ? ExitStatus.OUT_OF_REACH : ExitStatus.DONE;
+      case STOPPED -> ExitStatus.INTERRUPTED;
+      case RULE, LIMIT -> ExitStatus.LIMIT;
+      case RESONANCE_LOST, NOT_READY -> ExitStatus.REFUSED;
+      case BOARD_REFUSED -> ExitStatus.OUT_OF_REACH;
+    };
   }
 }

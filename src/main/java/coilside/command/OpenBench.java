@@ -9,6 +9,7 @@ import coilside.bench.Waiter;
 import coilside.board.Board;
 import coilside.board.BoardException;
 import coilside.record.BenchRecord;
+import coilside.record.RecordView;
 import java.time.Clock;
 import java.time.Instant;
 import java.util.List;
@@ -50,7 +51,7 @@ final class OpenBench implements AutoCloseable {
               parts.record(),
               parts.settings(),
               clock,
-              Waiter.by(clock),
+              Waiter.steady(),
               event -> listeners.forEach(listener -> listener.accept(event)));
       return new OpenBench(parts.board(), parts.record(), bench, clock, listeners);
     } catch (KeepException | RuntimeException e) {
@@ -74,7 +75,7 @@ final class OpenBench implements AutoCloseable {
     }
 
     BenchDesk desk(Clock clock) throws KeepException {
-      return new BenchDesk(board, record, settings, clock, Waiter.by(clock));
+      return new BenchDesk(board, record, settings, clock, Waiter.steady());
     }
 
     void close() {
@@ -85,6 +86,11 @@ final class OpenBench implements AutoCloseable {
 
   Bench bench() {
     return bench;
+  }
+
+  /** The record as it is being written. */
+  RecordView view() {
+    return record.view();
   }
 
   Instant now() {

@@ -10,6 +10,7 @@ import coilside.board.link.Reopening;
 import coilside.board.link.WireLog;
 import coilside.board.profile.DeviceProfile;
 import java.io.IOException;
+import java.nio.file.Files;
 import java.time.Clock;
 import java.time.InstantSource;
 
@@ -22,14 +23,14 @@ final class OpenBoard {
     Board open() throws BoardException {
       Board board =
           Boards.open(
-              profile, logged(line()), System::nanoTime, Clock.systemUTC(), address.simulated());
+              profile,
+              line(address, profile, options),
+              System::nanoTime,
+              Clock.systemUTC(),
+              address.simulated());
       return address.simulated()
           ? board
           : new ReconnectingBoard(board, profile, reopening(), System::nanoTime, Clock.systemUTC());
-    }
-
-    private Link line() throws BoardException {
-      return address.simulated() ? Simulation.link(profile, options) : Links.open(address, profile);
     }
 
     private Reopening reopening() {
@@ -43,18 +44,32 @@ final class OpenBoard {
           },
           System::nanoTime);
     }
+  }
 
-    private Link logged(Link link) throws BoardException {
-      if (options.wireLog == null) {
-        return link;
-      }
-      try {
-        return WireLog.over(link, options.wireLog, InstantSource.system(), System::nanoTime);
-      } catch (IOException e) {
-        link.close();
-        throw new UsageException(
-            "--wire-log " + options.wireLog + " cannot be written: " + e.getMessage());
-      }
+  /** Opens the line to a board, or to the simulated one, and logs it where that is asked for. */
+  static Link line(BoardAddress address, DeviceProfile profile, CommonOptions options)
+      throws BoardException {
+    if (options.wireLog != null && Files.exists(options.wireLog)) {
+      throw new UsageException(
+          "--wire-log "
+              + options.wireLog
+              + " exists already and is not written over: give another name, or move it away");
+    }
+    Link link =
+        address.simulated() ? Simulation.link(profile, options) : Links.open(address, profile);
+    if (options.wireLog == null) {
+      return link;
+    }
+    try {
+      return WireLog.over(link, options.wireLog, InstantSource.system(), System::nanoTime);
+    } catch (IOException e) {
+      link.close();
+      throw new UsageException(
+          "--wire-log "
+              + options.wireLog
+              + " cannot be written ("
+              + e.getClass().getSimpleName().replace("Exception", "")
+              + "): give a file in a folder that exists and is yours");
     }
   }
 

@@ -1,6 +1,5 @@
 package coilside.command;
 
-import coilside.board.link.PortInfo;
 import coilside.board.profile.DeviceProfile;
 import coilside.board.profile.ProfileProblem;
 import coilside.board.profile.ProfileReader;
@@ -9,7 +8,9 @@ import java.io.IOException;
 import java.io.InputStream;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.ArrayList;
 import java.util.List;
+import java.util.stream.Stream;
 
 /** Finds device profiles: a file, or one of those shipped with the program. */
 final class Profiles {
@@ -21,6 +22,8 @@ final class Profiles {
           "radio-frame",
           "direct-sampling",
           "pulse-and-receive");
+
+  private static final int MOST_FILES = 1000;
 
   private Profiles() {}
 
@@ -67,16 +70,59 @@ final class Profiles {
     return text.toString();
   }
 
-  /** The shipped profiles that name this port's device. */
-  static List<String> fitting(PortInfo port) {
-    return SHIPPED.stream()
-        .filter(name -> Profiles.class.getResource("/device-profiles/" + name + ".toml") != null)
-        .filter(
-            name ->
-                read(name)
-                    .serial()
-                    .map(a -> !port.usbId().isEmpty() && a.usbIds().contains(port.usbId()))
-                    .orElse(false))
-        .toList();
+  /**
+   * A sound profile.
+   *
+   * @param name what --board calls it: a shipped name, or the path of its file
+   * @param profile what it says
+   */
+  record Known(String name, DeviceProfile profile) {}
+
+  /** The shipped profiles and the sound ones in a folder; a folder that is not there has none. */
+  static List<Known> known(Path folder) {
+    List<Known> out = new ArrayList<>();
+    for (String name : SHIPPED) {
+      out.add(new Known(name, read(name)));
+    }
+    for (Path file : files(folder)) {
+      ProfileReader.read(file)
+          .profile()
+          // The shipped ones lie in a folder as well where the program is run from its source.
+          .filter(own -> out.stream().noneMatch(k -> k.profile().digest().equals(own.digest())))
+          .ifPresent(own -> out.add(new Known(file.toString(), own)));
+    }
+    return out;
+  }
+
+  /** Files in a folder that look like profiles and are not sound: each with its first problem. */
+  static List<String> unsound(Path folder) {
+    List<String> out = new ArrayList<>();
+    for (Path file : files(folder)) {
+      ProfileReading reading = ProfileReader.read(file);
+      if (reading.profile().isEmpty()) {
+        out.add(
+            file
+                + " is not sound ("
+                + reading.problems().size()
+                + " problems): coilside check "
+                + file);
+      }
+    }
+    return out;
+  }
+
+  private static List<Path> files(Path folder) {
+    if (!Files.isDirectory(folder)) {
+      return List.of();
+    }
+    try (Stream<Path> files = Files.list(folder)) {
+      return files
+          .filter(f -> f.getFileName().toString().endsWith(".toml"))
+          .sorted()
+          .limit(MOST_FILES)
+          .toList();
+    } catch (IOException e) {
+      throw new UsageException("the profiles in " + folder + " cannot be read: " + e.getMessage());
+    }
   }
 }

@@ -107,7 +107,7 @@ public final class DecayFit {
       throw NotDetermined.of(
           Reason.NO_SIGNAL, "all samples are zero", "check that the receiver samples");
     }
-    Exponentials.Start start = Exponentials.start(fid.re(), fid.im());
+    ExponentialStart start = ExponentialStart.of(fid.re(), fid.im());
     Exponentials one =
         new Exponentials(
             fid.re(),
@@ -119,15 +119,16 @@ public final class DecayFit {
       throw NotDetermined.of(
           Reason.NO_CONVERGENCE, "the fit of one exponential did not settle", "take more scans");
     }
-    double[] residualRe = new double[n];
-    double[] residualIm = new double[n];
+    double[] residualRe = Scratch.residualRe(n);
+    double[] residualIm = Scratch.residualIm(n);
     double rss = one.residuals(residualRe, residualIm);
     double sigma = Math.sqrt(rss / (2.0 * n - 2 * (one.terms + one.poles)));
     double statistic =
         Math.hypot(one.cRe[0], one.cIm[0])
             * Math.sqrt(Math.expm1(2 * n * one.lambdaRe[0]) / Math.expm1(2 * one.lambdaRe[0]))
             / sigma;
-    double needed = Tail.sigmaThreshold(start.trials(), FALSE_ALARM);
+    // The fit also moves frequency and decay to the noise's liking: worth six times the bins.
+    double needed = Tail.sigmaThreshold(6 * start.trials(), FALSE_ALARM);
     if (statistic < needed) {
       throw new NotDetermined(
           Reason.NO_SIGNAL,
@@ -139,7 +140,11 @@ public final class DecayFit {
           "look for the resonance, or take more scans",
           OptionalLong.empty());
     }
-    Misfit misfit = Misfit.of(residualRe, residualIm, sigma, one.lambdaRe[0], one.lambdaIm[0]);
+    // Rounding leaves residuals of its own, which are not noise either.
+    double floor = 1e-9 * Math.hypot(one.cRe[0], one.cIm[0]);
+    Misfit misfit =
+        Misfit.of(
+            residualRe, residualIm, n, Math.max(sigma, floor), one.lambdaRe[0], one.lambdaIm[0]);
     DecayAnswer answer = new DecayAnswer(fid, options);
     DecayResult result;
     if (misfit.passes() || options.form() == Form.ONE_EXPONENTIAL) {

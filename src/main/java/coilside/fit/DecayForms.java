@@ -16,6 +16,8 @@ import java.util.Optional;
  * its residuals still are not noise, the averaged envelope answers.
  */
 final class DecayForms {
+  private static final double CLEARLY = 1.5;
+
   private DecayForms() {}
 
   private record Tried(DecayResult result, double criterion, String name) {}
@@ -68,7 +70,9 @@ final class DecayForms {
             misfit.threshold(),
             gain);
     DecayResult r = best.result();
-    if (r.misfitSigma() > r.misfitThresholdSigma()) {
+    // Near the threshold it may be the one false alarm in a thousand: a form with a warning is
+    // better.
+    if (r.misfitSigma() > CLEARLY * r.misfitThresholdSigma()) {
       Optional<DecayResult> free = FreeEnvelope.of(fid, r, why);
       if (free.isPresent()) {
         return free.get();
@@ -108,11 +112,11 @@ final class DecayForms {
     if (!fit.run() || !fit.converged) {
       return;
     }
-    double[] r = new double[fid.points()];
-    double[] i = new double[fid.points()];
+    double[] r = Scratch.residualRe(fid.points());
+    double[] i = Scratch.residualIm(fid.points());
     double rss = fit.residuals(r, i);
     double sigma = Math.sqrt(rss / (2.0 * fid.points() - 2 * (fit.terms + fit.poles)));
-    Misfit misfit = Misfit.of(r, i, sigma, fit.lambdaRe[0], fit.lambdaIm[0]);
+    Misfit misfit = Misfit.of(r, i, fid.points(), sigma, fit.lambdaRe[0], fit.lambdaIm[0]);
     tried.add(
         new Tried(
             answer.of(fit, rss, misfit, "", List.of()),

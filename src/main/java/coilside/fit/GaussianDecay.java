@@ -22,7 +22,7 @@ final class GaussianDecay {
     int n = fid.points();
     double dt = fid.dwellSeconds();
     int block = Misfit.block(n, lambdaRe);
-    double[][] z = Misfit.blocks(fid.re(), fid.im(), block, lambdaIm);
+    double[][] z = Misfit.blocks(fid.re(), fid.im(), n, block, lambdaIm);
     int blocks = z[0].length;
     double[] t = new double[blocks];
     double[] y = new double[2 * blocks];
@@ -137,8 +137,8 @@ final class GaussianDecay {
     // The blocks were turned from the first sample on, not from time zero.
     double phase = Math.atan2(p[1], p[0]) - turn * fid.startSeconds();
     phase = Math.IEEEremainder(phase, 2 * Math.PI);
-    double[] re = new double[n];
-    double[] im = new double[n];
+    double[] re = Scratch.residualRe(n);
+    double[] im = Scratch.residualIm(n);
     double rss = 0;
     for (int k = 0; k < n; k++) {
       double t = fid.time(k);
@@ -166,7 +166,7 @@ final class GaussianDecay {
       }
     }
     Misfit misfit =
-        Misfit.of(re, im, sigma, -fid.dwellSeconds() / unit, omega * fid.dwellSeconds());
+        Misfit.of(re, im, n, sigma, -fid.dwellSeconds() / unit, omega * fid.dwellSeconds());
     Measured rate =
         pure
             ? Measured.withoutUncertainty(

@@ -4,7 +4,7 @@ import coilside.signal.Tail;
 
 /**
  * What residuals hold near a line: they are turned to the line's frequency, averaged in blocks of
- * about T2*&#47;64, and searched as {@link Exponentials#start} does for a signal.
+ * about T2*&#47;64, and searched as {@link ExponentialStart} does for a signal.
  *
  * @param statistic largest |X|/sigma_X
  * @param threshold what noise exceeds once in a thousand times
@@ -22,12 +22,12 @@ record Misfit(double statistic, double threshold, double lambdaRe, double lambda
     return (int) Math.max(1, Math.min(most, Math.floor(-1 / (64 * lambdaRe))));
   }
 
-  static Misfit of(double[] re, double[] im, double sigma, double lambdaRe, double lambdaIm) {
-    int n = re.length;
+  static Misfit of(
+      double[] re, double[] im, int n, double sigma, double lambdaRe, double lambdaIm) {
     int block = block(n, lambdaRe);
     int blocks = n / block;
-    double[][] z = blocks(re, im, block, lambdaIm);
-    Exponentials.Start start = Exponentials.start(z[0], z[1]);
+    double[][] z = blocks(re, im, n, block, lambdaIm);
+    ExponentialStart start = ExponentialStart.of(z[0], z[1]);
     double sigmaBlock = sigma / Math.sqrt(block);
     return new Misfit(
         Math.sqrt(start.powerOverSamples()) / sigmaBlock,
@@ -37,8 +37,8 @@ record Misfit(double statistic, double threshold, double lambdaRe, double lambda
   }
 
   /** Block means of y_k exp(-i omega k); each stands at the middle of its block. */
-  static double[][] blocks(double[] re, double[] im, int block, double omega) {
-    int blocks = re.length / block;
+  static double[][] blocks(double[] re, double[] im, int n, int block, double omega) {
+    int blocks = n / block;
     double[] outRe = new double[blocks];
     double[] outIm = new double[blocks];
     double stepRe = Math.cos(omega);

@@ -8,6 +8,9 @@ import coilside.quantity.Unit;
  * zero, its 1/e time and linewidth, with uncertainties by numerical derivatives.
  */
 final class TwoExponentials {
+  /** Narrowest line beside the widest: one that does not decay at all has no width to step in. */
+  private static final double NARROWEST = 1e-9;
+
   private interface Quantity {
     double of(double[] p);
   }
@@ -101,8 +104,8 @@ final class TwoExponentials {
   private double linewidth(double[] p) {
     double[] z0 = at(p, 0);
     double phase = Math.atan2(z0[1], z0[0]);
-    double narrow = Math.min(-p[2], -p[6]) / dt;
     double wide = Math.max(-p[2], -p[6]) / dt;
+    double narrow = Math.max(Math.min(-p[2], -p[6]) / dt, NARROWEST * wide);
     double low = Math.min(p[3], p[7]) / dt;
     double high = Math.max(p[3], p[7]) / dt;
     double top = -1;
@@ -121,7 +124,8 @@ final class TwoExponentials {
       double out = narrow / 4;
       while (absorption(p, centre + side * out, phase) > top / 2 && out < 100 * wide) {
         in = out;
-        out += narrow / 4;
+        // In proportion: even steps would take wide/narrow of them, which has no bound.
+        out *= 1.1;
       }
       for (int i = 0; i < 50; i++) {
         double mid = (in + out) / 2;

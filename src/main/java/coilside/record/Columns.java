@@ -80,12 +80,18 @@ final class Columns {
     Map<String, Measured> out = new LinkedHashMap<>();
     try (ResultSet r = s.executeQuery()) {
       while (r.next()) {
-        out.put(
-            r.getString(1),
-            new Measured(
-                number(r, 2), number(r, 3), Unit.ofSymbol(r.getString(4)), r.getString(5)));
+        out.put(r.getString(1), measured(r, 2));
       }
     }
     return out;
+  }
+
+  /** A measured value from four columns: value, u, unit, why there is no u. */
+  static Measured measured(ResultSet r, int first) throws SQLException {
+    return new Measured(
+        number(r, first),
+        number(r, first + 1),
+        Unit.ofSymbol(r.getString(first + 2)),
+        r.getString(first + 3));
   }
 }

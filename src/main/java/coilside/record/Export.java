@@ -1,5 +1,6 @@
 package coilside.record;
 
+import coilside.bench.Analysis;
 import coilside.bench.Capture;
 import coilside.bench.KeepException;
 import coilside.shot.Pulse;
@@ -89,18 +90,17 @@ public final class Export {
   }
 
   /**
-   * The mean of the first windows of all scans.
+   * The mean of the first windows of all scans with a pulse, each turned back by the phase of its
+   * first pulse: the receiver side of the phase cycle.
    *
    * @throws IllegalArgumentException when they were not all played alike but for phases and rest
    */
   public static Fid average(Capture capture) {
     List<Scan> scans = capture.scans();
     Fid first = scans.get(0).fid();
-    double[] re = new double[first.points()];
-    double[] im = new double[first.points()];
     for (int i = 0; i < scans.size(); i++) {
-      Fid fid = scans.get(i).fid();
-      if (!sameShape(first, fid) || !alike(capture.shots().get(0), capture.shots().get(i))) {
+      if (!sameShape(first, scans.get(i).fid())
+          || !alike(capture.shots().get(0), capture.shots().get(i))) {
         throw new IllegalArgumentException(
             "scan "
                 + i
@@ -109,16 +109,10 @@ public final class Export {
                 + " capture was played otherwise than scan 0, so there is no average to export;"
                 + " csv and npy hold every scan");
       }
-      for (int k = 0; k < re.length; k++) {
-        re[k] += fid.re(k);
-        im[k] += fid.im(k);
-      }
     }
-    for (int k = 0; k < re.length; k++) {
-      re[k] /= scans.size();
-      im[k] /= scans.size();
-    }
-    return new Fid(re, im, first.dwellSeconds(), first.startSeconds(), first.carrierHertz());
+    return capture.shots().get(0).receiveOnly()
+        ? Analysis.plainMean(scans)
+        : Analysis.average(capture);
   }
 
   private static List<Fid> rows(Capture capture) {

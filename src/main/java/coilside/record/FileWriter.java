@@ -1,10 +1,13 @@
 package coilside.record;
 
 import java.io.IOException;
+import java.io.RandomAccessFile;
 import java.nio.ByteBuffer;
+import java.nio.channels.ClosedByInterruptException;
 import java.nio.channels.FileChannel;
 import java.nio.channels.WritableByteChannel;
 import java.nio.charset.StandardCharsets;
+import java.nio.file.AccessDeniedException;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.nio.file.StandardCopyOption;
@@ -20,16 +23,36 @@ class FileWriter {
     void writeTo(WritableByteChannel out) throws IOException;
   }
 
-  /** Writes and syncs a new file; an older one of the same name is replaced. */
+  /**
+   * Writes and syncs a new file; an older one of the same name is replaced. An interrupt of the
+   * calling thread does not disturb it, as it would a file channel.
+   */
   void write(Path file, Body body) throws IOException {
-    try (FileChannel out =
-        FileChannel.open(
-            file,
-            StandardOpenOption.CREATE,
-            StandardOpenOption.TRUNCATE_EXISTING,
-            StandardOpenOption.WRITE)) {
-      body.writeTo(out);
-      out.force(true);
+    try (RandomAccessFile out = new RandomAccessFile(file.toFile(), "rw")) {
+      out.setLength(0);
+      body.writeTo(new Uninterrupted(out));
+      out.getFD().sync();
+    }
+  }
+
+  /** The writing end of an open file. */
+  private record Uninterrupted(RandomAccessFile file) implements WritableByteChannel {
+    @Override
+    public int write(ByteBuffer bytes) throws IOException {
+      int n = bytes.remaining();
+      file.write(bytes.array(), bytes.arrayOffset() + bytes.position(), n);
+      bytes.position(bytes.limit());
+      return n;
+    }
+
+    @Override
+    public boolean isOpen() {
+      return true;
+    }
+
+    @Override
+    public void close() throws IOException {
+      file.close();
     }
   }
 
@@ -57,11 +80,23 @@ class FileWriter {
 
   /** Makes the names in a folder survive a power cut; where the system cannot, nothing happens. */
   void syncFolder(Path folder) throws IOException {
-    try (FileChannel channel = FileChannel.open(folder, StandardOpenOption.READ)) {
-      channel.force(true);
-    } catch (java.nio.file.AccessDeniedException e) {
-      // Some systems do not open folders; their renames are ordered by the file system itself.
-      return;
+    boolean interrupted = Thread.interrupted();
+    try {
+      while (true) {
+        try (FileChannel channel = FileChannel.open(folder, StandardOpenOption.READ)) {
+          channel.force(true);
+          return;
+        } catch (ClosedByInterruptException e) {
+          interrupted = Thread.interrupted() || interrupted;
+        } catch (AccessDeniedException e) {
+          // Some systems do not open folders; their renames are ordered by the file system itself.
+          return;
+        }
+      }
+    } finally {
+      if (interrupted) {
+        Thread.currentThread().interrupt();
+      }
     }
   }
 

@@ -5,11 +5,12 @@ import coilside.bench.LogRow;
 import coilside.quantity.Measured;
 import coilside.quantity.Unit;
 import java.io.IOException;
-import java.nio.ByteBuffer;
-import java.nio.channels.FileChannel;
+import java.io.RandomAccessFile;
 import java.nio.charset.StandardCharsets;
+import java.nio.file.FileAlreadyExistsException;
+import java.nio.file.Files;
 import java.nio.file.Path;
-import java.nio.file.StandardOpenOption;
+import java.util.Arrays;
 import java.util.LinkedHashMap;
 import java.util.Map;
 
@@ -24,11 +25,11 @@ public final class LogCsv implements AutoCloseable {
   private static final Map<String, Unit> COLUMNS = columns();
 
   private final Path file;
-  private final FileChannel channel;
+  private final RandomAccessFile out;
 
-  private LogCsv(Path file, FileChannel channel) {
+  private LogCsv(Path file, RandomAccessFile out) {
     this.file = file;
-    this.channel = channel;
+    this.out = out;
   }
 
   private static Map<String, Unit> columns() {
@@ -50,15 +51,13 @@ public final class LogCsv implements AutoCloseable {
    */
   public static LogCsv open(Path file) throws KeepException {
     try {
-      FileChannel channel =
-          FileChannel.open(
-              file, StandardOpenOption.CREATE, StandardOpenOption.READ, StandardOpenOption.WRITE);
+      RandomAccessFile out = new RandomAccessFile(file.toFile(), "rw");
       try {
-        LogCsv csv = new LogCsv(file, channel);
+        LogCsv csv = new LogCsv(file, out);
         csv.start();
         return csv;
       } catch (IOException | KeepException e) {
-        channel.close();
+        out.close();
         throw e;
       }
     } catch (IOException e) {
@@ -68,40 +67,36 @@ public final class LogCsv implements AutoCloseable {
 
   private void start() throws IOException, KeepException {
     byte[] header = header().getBytes(StandardCharsets.UTF_8);
-    ByteBuffer there = ByteBuffer.allocate((int) Math.min(header.length, channel.size()));
-    while (there.hasRemaining() && channel.read(there, there.position()) >= 0) {
-      continue;
-    }
-    if (!ByteBuffer.wrap(header, 0, there.position()).equals(there.flip())) {
+    byte[] there = new byte[(int) Math.min(header.length, out.length())];
+    out.readFully(there);
+    if (!Arrays.equals(header, 0, there.length, there, 0, there.length)) {
       throw new KeepException(
           "cannot append the log to "
               + file
               + ": it holds something other than a log of this form; name a new file");
     }
-    if (there.limit() < header.length) {
-      channel.truncate(0);
+    if (there.length < header.length) {
+      out.setLength(0);
       write(header());
       return;
     }
-    long end = channel.size();
-    ByteBuffer one = ByteBuffer.allocate(1);
+    long end = out.length();
     while (end > header.length) {
-      one.clear();
-      channel.read(one, end - 1);
-      if (one.get(0) == '\n') {
+      out.seek(end - 1);
+      if (out.read() == '\n') {
         break;
       }
       end--;
     }
-    channel.truncate(end);
-    channel.position(end);
+    out.setLength(end);
+    out.seek(end);
   }
 
   /** Appends a row. */
   public void add(LogRow row) throws KeepException {
     try {
       write(line(row));
-      channel.force(false);
+      out.getFD().sync();
     } catch (IOException e) {
       throw Trouble.with("cannot write the log to", file, e);
     }
@@ -109,9 +104,16 @@ public final class LogCsv implements AutoCloseable {
 
   /** Writes all rows of a run to a new file. */
   public static void export(RecordView view, String run, Path file) throws KeepException {
-    try (FileChannel channel =
-        FileChannel.open(file, StandardOpenOption.CREATE_NEW, StandardOpenOption.WRITE)) {
-      LogCsv csv = new LogCsv(file, channel);
+    try {
+      Files.createFile(file);
+    } catch (FileAlreadyExistsException e) {
+      throw new KeepException(
+          "cannot export to " + file + ": that file exists; name another or remove it", e);
+    } catch (IOException e) {
+      throw Trouble.with("cannot export the log to", file, e);
+    }
+    try (RandomAccessFile out = new RandomAccessFile(file.toFile(), "rw")) {
+      LogCsv csv = new LogCsv(file, out);
       csv.write(header());
       StringBuilder page = new StringBuilder();
       IOException[] failed = new IOException[1];
@@ -132,17 +134,14 @@ public final class LogCsv implements AutoCloseable {
         throw failed[0];
       }
       csv.write(page.toString());
-      channel.force(true);
+      out.getFD().sync();
     } catch (IOException e) {
       throw Trouble.with("cannot export the log to", file, e);
     }
   }
 
   private void write(String text) throws IOException {
-    ByteBuffer bytes = ByteBuffer.wrap(text.getBytes(StandardCharsets.UTF_8));
-    while (bytes.hasRemaining()) {
-      channel.write(bytes);
-    }
+    out.write(text.getBytes(StandardCharsets.UTF_8));
   }
 
   /** The header line. */
@@ -175,7 +174,7 @@ public final class LogCsv implements AutoCloseable {
   @Override
   public void close() throws KeepException {
     try {
-      channel.close();
+      out.close();
     } catch (IOException e) {
       throw Trouble.with("cannot close the log", file, e);
     }

@@ -1,12 +1,16 @@
 package coilside.record;
 
 import coilside.bench.LogRow;
+import coilside.quantity.Measured;
 import java.sql.PreparedStatement;
 import java.sql.ResultSet;
 import java.sql.SQLException;
 import java.time.Instant;
 import java.util.ArrayList;
+import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.Map;
+import java.util.OptionalDouble;
 
 /** Log rows and the list of log runs in and out of the record's tables. */
 final class LogTable {
@@ -48,22 +52,28 @@ final class LogTable {
   }
 
   List<RecordView.Kept<LogRow>> after(long cursor, int limit) throws SQLException {
-    PreparedStatement s =
-        database.statement(
-            "SELECT " + COLUMNS + " FROM log_row WHERE seq > ? ORDER BY seq LIMIT ?");
+    PreparedStatement s = database.statement(withValues("seq > ?"));
     s.setLong(1, cursor);
     s.setInt(2, limit);
     return read(s);
   }
 
   List<RecordView.Kept<LogRow>> ofRun(String run, long cursor, int limit) throws SQLException {
-    PreparedStatement s =
-        database.statement(
-            "SELECT " + COLUMNS + " FROM log_row WHERE run = ? AND seq > ? ORDER BY seq LIMIT ?");
+    PreparedStatement s = database.statement(withValues("run = ? AND seq > ?"));
     s.setString(1, run);
     s.setLong(2, cursor);
     s.setInt(3, limit);
     return read(s);
+  }
+
+  /** Rows and their values in one go: a query a row would cost ten times as much. */
+  private static String withValues(String condition) {
+    return "SELECT r.*, v.name, v.value, v.u, v.unit, v.why_no_u FROM (SELECT "
+        + COLUMNS
+        + " FROM log_row WHERE "
+        + condition
+        + " ORDER BY seq LIMIT ?) r LEFT JOIN log_value v ON v.row = r.seq"
+        + " ORDER BY r.seq, v.position";
   }
 
   List<RecordView.LogRun> runs() throws SQLException {
@@ -86,24 +96,30 @@ final class LogTable {
     return out;
   }
 
-  private List<RecordView.Kept<LogRow>> read(PreparedStatement s) throws SQLException {
+  private static List<RecordView.Kept<LogRow>> read(PreparedStatement s) throws SQLException {
     List<RecordView.Kept<LogRow>> out = new ArrayList<>();
     try (ResultSet r = s.executeQuery()) {
-      while (r.next()) {
+      boolean more = r.next();
+      while (more) {
         long seq = r.getLong(1);
-        out.add(
-            new RecordView.Kept<>(
-                seq,
-                new LogRow(
-                    r.getString(2),
-                    r.getLong(3),
-                    Instant.parse(r.getString(4)),
-                    Instant.parse(r.getString(5)),
-                    Columns.values(database, "log_value", "row", seq),
-                    Columns.optional(r, 6),
-                    r.getInt(7),
-                    r.getString(8),
-                    r.getString(9))));
+        String run = r.getString(2);
+        long number = r.getLong(3);
+        Instant due = Instant.parse(r.getString(4));
+        Instant started = Instant.parse(r.getString(5));
+        OptionalDouble temperature = Columns.optional(r, 6);
+        int retries = r.getInt(7);
+        String note = r.getString(8);
+        String capture = r.getString(9);
+        Map<String, Measured> values = new LinkedHashMap<>();
+        while (more && r.getLong(1) == seq) {
+          if (r.getString(10) != null) {
+            values.put(r.getString(10), Columns.measured(r, 11));
+          }
+          more = r.next();
+        }
+        LogRow row =
+            new LogRow(run, number, due, started, values, temperature, retries, note, capture);
+        out.add(new RecordView.Kept<>(seq, row));
       }
     }
     return out;

@@ -10,6 +10,7 @@ import java.nio.charset.StandardCharsets;
 import java.nio.file.Path;
 import java.nio.file.StandardOpenOption;
 import java.time.Instant;
+import java.time.temporal.ChronoUnit;
 import java.util.HashMap;
 import java.util.Map;
 
@@ -55,7 +56,11 @@ final class RecordLock implements AutoCloseable {
             channel.close();
             throw refused(folder, holder);
           }
-          String text = "process " + ProcessHandle.current().pid() + " since " + now;
+          String text =
+              "process "
+                  + ProcessHandle.current().pid()
+                  + " since "
+                  + now.truncatedTo(ChronoUnit.SECONDS);
           channel.truncate(0);
           channel.write(ByteBuffer.wrap(text.getBytes(StandardCharsets.UTF_8)), 0);
           HELD_HERE.put(key, text);
@@ -70,13 +75,9 @@ final class RecordLock implements AutoCloseable {
     }
   }
 
-  private static KeepException refused(Path folder, String holder) {
-    return new KeepException(
-        "the bench record in "
-            + folder
-            + " is being written by "
-            + (holder.isBlank() ? "another process" : Words.oneLine(holder, 100))
-            + ": end that one, watch it instead, or choose another folder with --captures DIR");
+  private static RecordHeld refused(Path folder, String holder) {
+    return new RecordHeld(
+        folder, holder.isBlank() ? "another process" : Words.oneLine(holder, 100));
   }
 
   private static String read(FileChannel channel) throws IOException {

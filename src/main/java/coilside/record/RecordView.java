@@ -116,6 +116,25 @@ public final class RecordView implements AutoCloseable {
     }
   }
 
+  /** The number of the finding kept last; 0 without any. */
+  public long lastFinding() throws KeepException {
+    return lastNumber("SELECT max(seq) FROM finding");
+  }
+
+  /** The number of the log row kept last; 0 without any. */
+  public long lastRow() throws KeepException {
+    return lastNumber("SELECT max(seq) FROM log_row");
+  }
+
+  private long lastNumber(String sql) throws KeepException {
+    return locked(
+        () -> {
+          try (ResultSet r = database.statement(sql).executeQuery()) {
+            return r.next() ? r.getLong(1) : 0;
+          }
+        });
+  }
+
   /** The runs of {@code log}, in the order they were begun. */
   public List<LogRun> runs() throws KeepException {
     return locked(log::runs);

@@ -50,6 +50,69 @@ public final class InterferenceLines {
     return lines;
   }
 
+  /**
+   * A record without these lines: each is located anew within a bin and a half, its complex
+   * amplitude found with the same window, and taken off. Only lines that stand well away from the
+   * resonance should be named: what lies at their frequency goes with them.
+   */
+  public static Fid removed(Fid fid, List<Line> lines) {
+    int n = fid.points();
+    double[] re = fid.re().clone();
+    double[] im = fid.im().clone();
+    double[] window = Windows.lowSideLobes(n);
+    double bin = 1 / (n * fid.dwellSeconds());
+    for (Line line : lines) {
+      double centre = line.offsetHertz().value();
+      double low = centre - 1.5 * bin;
+      double high = centre + 1.5 * bin;
+      for (int i = 0; i < 24; i++) {
+        double left = low + (high - low) / 3;
+        double right = high - (high - low) / 3;
+        double[] a = amplitude(re, im, window, left * fid.dwellSeconds());
+        double[] b = amplitude(re, im, window, right * fid.dwellSeconds());
+        if (Math.hypot(a[0], a[1]) > Math.hypot(b[0], b[1])) {
+          high = right;
+        } else {
+          low = left;
+        }
+      }
+      double cycles = (low + high) / 2 * fid.dwellSeconds();
+      double[] c = amplitude(re, im, window, cycles);
+      for (int k = 0; k < n; k++) {
+        double angle = 2 * Math.PI * cycles * k;
+        double cos = Math.cos(angle);
+        double sin = Math.sin(angle);
+        re[k] -= c[0] * cos - c[1] * sin;
+        im[k] -= c[0] * sin + c[1] * cos;
+      }
+    }
+    return new Fid(re, im, fid.dwellSeconds(), fid.startSeconds(), fid.carrierHertz());
+  }
+
+  private static double[] amplitude(double[] re, double[] im, double[] window, double cycles) {
+    double r = 0;
+    double i = 0;
+    double sum = 0;
+    double stepRe = Math.cos(2 * Math.PI * cycles);
+    double stepIm = -Math.sin(2 * Math.PI * cycles);
+    double wr = 1;
+    double wi = 0;
+    for (int k = 0; k < re.length; k++) {
+      if (k % 512 == 0) {
+        double angle = -2 * Math.PI * cycles * k;
+        wr = Math.cos(angle);
+        wi = Math.sin(angle);
+      }
+      r += window[k] * (re[k] * wr - im[k] * wi);
+      i += window[k] * (re[k] * wi + im[k] * wr);
+      sum += window[k];
+      double s = wr * stepRe - wi * stepIm;
+      wi = wr * stepIm + wi * stepRe;
+      wr = s;
+    }
+    return new double[] {r / sum, i / sum};
+  }
+
   /** One search: kept for {@link NoiseEstimate}, which needs the bins that are free of lines. */
   static final class Search {
     final List<Line> lines = new ArrayList<>();

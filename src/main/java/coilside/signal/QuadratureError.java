@@ -38,7 +38,32 @@ public record QuadratureError(
    *     spectrum
    */
   public static QuadratureError measure(Fid fid, double sigma) {
-    int n = fid.points();
+    if (!(sigma > 0) || !Double.isFinite(sigma)) {
+      throw new IllegalArgumentException("noise of " + sigma + " V must be above 0 V");
+    }
+    // The window is centred on its stretch, the signal decays: the best stretch is a few T2*.
+    QuadratureError best = null;
+    IllegalArgumentException refusal = null;
+    for (int length = fid.points(); length >= 64; length /= 2) {
+      try {
+        QuadratureError q = over(fid, length, sigma);
+        if (best == null || q.imageRatio.u() < best.imageRatio.u()) {
+          best = q;
+        }
+      } catch (IllegalArgumentException e) {
+        refusal = refusal == null ? e : refusal;
+      }
+    }
+    if (best == null) {
+      throw refusal == null
+          ? new IllegalArgumentException(
+              "an FID of " + fid.points() + " points is too short: at least 64")
+          : refusal;
+    }
+    return best;
+  }
+
+  private static QuadratureError over(Fid fid, int n, double sigma) {
     double lastRe = 0;
     double lastIm = 0;
     double sumW = 0;
@@ -53,7 +78,6 @@ public record QuadratureError(
     double dcRe = lastRe / sumW;
     double dcIm = lastIm / sumW;
     int points = Fourier.powerOfTwoAtLeast(n);
-    // Half of the same window, from the first sample on: low side lobes keep line and image apart.
     double[] z = new double[2 * points];
     for (int k = 0; k < n; k++) {
       z[2 * k] = window[k] * (fid.re(k) - dcRe);
@@ -96,7 +120,18 @@ public record QuadratureError(
     }
     double rRe = re / norm;
     double rIm = im / norm;
-    double u = sigma * Math.sqrt(sumW2 * points / (double) n / norm);
+    // The windowed noise against the windowed signal, in time.
+    double signal = 0;
+    double crossed = 0;
+    for (int k = 0; k < n; k++) {
+      double w2 = window[k] * window[k];
+      double r = fid.re(k) - dcRe;
+      double i = fid.im(k) - dcIm;
+      double size = Math.max(0, r * r + i * i - 2 * sigma * sigma);
+      signal += w2 * size;
+      crossed += w2 * w2 * size;
+    }
+    double u = sigma * Math.sqrt(crossed) / signal;
     double denominator = (1 + rRe) * (1 + rRe) + rIm * rIm;
     double wRe = ((1 - rRe) * (1 + rRe) - rIm * rIm) / denominator;
     double wIm = (-rIm * (1 + rRe) - rIm * (1 - rRe)) / denominator;

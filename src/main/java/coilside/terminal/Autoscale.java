@@ -38,7 +38,7 @@ final class Autoscale {
     }
     double span = dataHigh - dataLow;
     if (!(span > 0)) {
-      span = Math.max(Math.abs(dataHigh) * 0.1, 1e-12);
+      span = dataHigh == 0 ? 1 : Math.abs(dataHigh) * 0.1;
     }
     boolean outside = !(dataLow >= low - 1e-9 * span && dataHigh <= high + 1e-9 * span);
     tooWide = span < 0.5 * (high - low) ? tooWide + 1 : 0;
@@ -51,6 +51,10 @@ final class Autoscale {
     double step = new Axis(0, span, "").step(8);
     low = Math.floor((dataLow - margin * span) / step) * step;
     high = Math.ceil((dataHigh + margin * span) / step) * step;
+    if (!(high > low)) {
+      low -= span / 2;
+      high += span / 2;
+    }
     tooWide = 0;
   }
 }

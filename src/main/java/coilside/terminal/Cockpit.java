@@ -5,7 +5,6 @@ import coilside.bench.Picture;
 import coilside.bench.Rung;
 import coilside.bench.Work;
 import java.util.ArrayDeque;
-import java.util.ArrayList;
 import java.util.Deque;
 import java.util.List;
 import java.util.Optional;
@@ -43,7 +42,7 @@ final class Cockpit {
     boolean unicode = TextInterface.unicode(options);
     glyphs = new Glyphs(unicode);
     look = new Look(options.store(), unicode, light, options.bell());
-    pictures = new PictureView(look);
+    pictures = new PictureView(look, watch::snapshot);
     actions = Actions.of(this);
     layout = new ScreenLayout(desk, look, pictures, actions, options.clock());
     watch.ladder(desk.ladder());
@@ -207,7 +206,7 @@ final class Cockpit {
   }
 
   void begin(Work work) {
-    if (transmits(work) && !desk.armed()) {
+    if (ScreenTexts.transmits(work) && !desk.armed()) {
       arm(() -> begin(work));
       return;
     }
@@ -216,7 +215,7 @@ final class Cockpit {
       return;
     }
     boolean live = work instanceof Work.Live || work instanceof Work.TakeFid;
-    if (work instanceof Work.Live) {
+    if (live) {
       watch.clearHeadlines();
       bestsHeard = 0;
     }
@@ -232,13 +231,6 @@ final class Cockpit {
       watch.workRefused();
       watch.note(true, e.getMessage());
     }
-  }
-
-  private static boolean transmits(Work work) {
-    if (work instanceof Work.Measure m) {
-      return m.rung() != Rung.NOISE;
-    }
-    return !(work instanceof Work.Live live) || live.transmit();
   }
 
   /** Starts or changes live running, after the live running in hand has ended. */
@@ -386,44 +378,11 @@ final class Cockpit {
   }
 
   void openMessages() {
-    panels.push(
-        new TextPanel(
-            "Messages, newest last",
-            state -> {
-              List<TextPanel.Line> lines = new ArrayList<>();
-              state
-                  .notes()
-                  .forEach(
-                      n ->
-                          lines.add(
-                              new TextPanel.Line(
-                                  ScreenLayout.noteText(n), n.warning() ? Ink.CARE : Ink.PLAIN)));
-              if (lines.isEmpty()) {
-                lines.add(new TextPanel.Line("No messages yet.", Ink.FAINT));
-              }
-              return lines;
-            },
-            true));
+    panels.push(ScreenTexts.messages());
   }
 
   void openHelp() {
-    panels.push(
-        new TextPanel(
-            "Keys that work now",
-            state -> {
-              List<TextPanel.Line> lines = new ArrayList<>();
-              for (Action a : actions) {
-                if (a.works().getAsBoolean()) {
-                  lines.add(
-                      new TextPanel.Line(
-                          String.format("%7s  %s", a.keyText(), a.what()), Ink.PLAIN));
-                }
-              }
-              lines.add(
-                  new TextPanel.Line(" Ctrl-C  Quit at once; work in hand is stopped", Ink.PLAIN));
-              return lines;
-            },
-            false));
+    panels.push(ScreenTexts.help(actions));
   }
 
   void openActions() {

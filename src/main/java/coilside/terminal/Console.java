@@ -24,6 +24,7 @@ final class Console {
   private final TerminalScreen screen;
   private final AtomicReference<String> signal = new AtomicReference<>("");
   private final AtomicBoolean closed = new AtomicBoolean();
+  private volatile boolean leftInTime;
 
   Console(Charset charset) throws IOException {
     keys = new EscapeFilter(System.in, System::nanoTime);
@@ -40,7 +41,12 @@ final class Console {
   }
 
   private void signalled(String name) {
-    if (!signal.compareAndSet("", name)) {
+    // After a hang-up the run goes on without a terminal, until TERM or INT ends it too.
+    boolean first = signal.compareAndSet("", name);
+    if (!first && (name.equals("HUP") || !signal.compareAndSet("HUP", name))) {
+      return;
+    }
+    if (name.equals("HUP")) {
       return;
     }
     Thread watchdog = new Thread(this::haltWhenStuck, "exit watchdog");
@@ -59,9 +65,14 @@ final class Console {
       Thread.currentThread().interrupt();
       return;
     }
-    if (!closed.get() && !signal.get().equals("HUP")) {
+    if (!leftInTime) {
       Runtime.getRuntime().halt(130);
     }
+  }
+
+  /** Tells the watchdog that the program is on its way out. */
+  void leaving() {
+    leftInTime = true;
   }
 
   /** "TERM", "HUP" or "INT" once one came; else empty. */

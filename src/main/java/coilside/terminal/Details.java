@@ -49,9 +49,6 @@ final class Details {
                 + (age.isEmpty() ? "" : ", measured " + age + " ago"),
             LadderView.ink(s.state())));
     s.reasons().forEach(r -> out.add(line("  because " + r, LadderView.ink(s.state()))));
-    if (s.state() == RungStatus.State.MISSING && s.reasons().isEmpty()) {
-      out.add(line("  It has not been measured yet.", Ink.FAINT));
-    }
     s.finding().ifPresent(f -> finding(out, f, g));
     out.add(line("", Ink.PLAIN));
     out.add(line("Rests on", Ink.TITLE));

@@ -11,6 +11,7 @@ final class HeadlineHistory {
   private int count;
   private Measured latest;
   private Measured best;
+  private Measured announced;
   private long bests;
 
   HeadlineHistory(Headline headline) {
@@ -23,6 +24,7 @@ final class HeadlineHistory {
     c.count = count;
     c.latest = latest;
     c.best = best;
+    c.announced = announced;
     c.bests = bests;
     return c;
   }
@@ -31,17 +33,21 @@ final class HeadlineHistory {
     recent[count % KEPT] = m.value();
     count++;
     latest = m;
-    if (headline.better != 0 && (best == null || betterThanBest(m))) {
+    if (headline.better == 0) {
+      return;
+    }
+    if (best == null || gain(m, best) > 0) {
       best = m;
+    }
+    double noise = m.hasUncertainty() ? m.u() : 0;
+    if (announced == null || gain(m, announced) > noise) {
+      announced = m;
       bests++;
     }
   }
 
-  /** A new best must beat the old one by more than its own noise. */
-  private boolean betterThanBest(Measured m) {
-    double gain = (m.value() - best.value()) * headline.better;
-    double noise = Double.isNaN(m.u()) ? 0 : m.u();
-    return gain > noise;
+  private double gain(Measured now, Measured before) {
+    return (now.value() - before.value()) * headline.better;
   }
 
   Optional<Measured> latest() {
@@ -52,7 +58,7 @@ final class HeadlineHistory {
     return Optional.ofNullable(best);
   }
 
-  /** How many times a new best was reached; the first value counts. */
+  /** How many times a best beat the last such by more than its noise; the first value counts. */
   long bests() {
     return bests;
   }

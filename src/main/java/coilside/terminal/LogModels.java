@@ -29,7 +29,9 @@ final class LogModels {
         title = name + " less " + Numbers.si(first, "Hz", 8);
       }
       String caption =
-          log.size() + " rows" + (log.gaps() > 0 ? ", " + log.gaps() + " of them gaps" : "");
+          log.size()
+              + (log.size() == 1 ? " row" : " rows")
+              + (log.gaps() > 0 ? ", " + log.gaps() + " of them gaps" : "");
       out.add(
           new PlotModel(
               "log." + LogSeries.NAMES.get(i),

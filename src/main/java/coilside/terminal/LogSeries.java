@@ -13,6 +13,7 @@ final class LogSeries {
   private final double[][] values = new double[NAMES.size() + 1][];
   private int count;
   private int gaps;
+  private String run = "";
 
   LogSeries() {
     for (int i = 0; i < values.length; i++) {
@@ -21,6 +22,11 @@ final class LogSeries {
   }
 
   synchronized void add(LogRow row) {
+    if (!row.run().equals(run)) {
+      run = row.run();
+      count = 0;
+      gaps = 0;
+    }
     if (count == KEPT) {
       // Drop the older half at once, so that adding stays cheap.
       for (double[] v : values) {

@@ -39,6 +39,9 @@ final class Numbers {
     if (!Double.isFinite(value)) {
       return "-";
     }
+    if (value == 0) {
+      return join("0", "", unit);
+    }
     int e = exponent(value, unit);
     double scaled = value / Math.pow(10, e);
     int whole = scaled == 0 ? 1 : (int) Math.floor(Math.log10(Math.abs(scaled))) + 1;
@@ -47,6 +50,13 @@ final class Numbers {
       decimals = Math.min(9, digits - whole);
     }
     return join(fixed(scaled, decimals), prefix(e), unit);
+  }
+
+  /** Up to six digits without trailing zeros: "7.9 MHz", "0.5". */
+  static String trimmed(double value, String unit) {
+    return si(value, unit, 6)
+        .replaceFirst("(\\.\\d*?)0+( |$)", "$1$2")
+        .replaceFirst("\\.( |$)", "$1");
   }
 
   private static String join(String number, String prefix, String unit) {

@@ -15,7 +15,9 @@ final class Phased {
   private Phased() {}
 
   static boolean applies(Picture.Trace t) {
-    return t.rung() == Rung.T2STAR && t.fit().isPresent() && t.fit().get().points() > 2;
+    return (t.rung() == Rung.T2STAR || t.rung() == Rung.RESONANCE)
+        && t.fit().isPresent()
+        && t.fit().get().points() > 2;
   }
 
   static Picture.Trace of(Picture.Trace t) {

@@ -25,6 +25,25 @@ final class PictureModels {
     return out;
   }
 
+  /** The samples of one scan as they came, for where nothing better can be shown yet. */
+  static PlotModel scan(Fid fid, Part part) {
+    double[] time = new double[fid.points()];
+    Arrays.setAll(time, fid::time);
+    return new PlotModel(
+        "scan",
+        "last scan, " + part.words,
+        "time",
+        "s",
+        "amplitude",
+        "V",
+        List.of(Series.line("", Ink.SIGNAL, time, part(fid.re(), fid.im(), part))),
+        List.of(),
+        0,
+        Double.NaN,
+        Double.NaN,
+        "The picture of this rung comes with its first points.");
+  }
+
   private static PlotModel curve(Picture.Curve c, String prefix) {
     List<Series> series = new ArrayList<>();
     List<Series> residuals = new ArrayList<>();
@@ -45,14 +64,16 @@ final class PictureModels {
       series.add(Series.line("", Ink.FAINT, sx, sy));
     }
     if (c.fitX().length > 1) {
-      series.add(Series.line("fit", Ink.FIT, c.fitX(), c.fitY()));
+      series.add(
+          Series.line(
+              c.rung() == Rung.RESONANCE ? "threshold" : "fit", Ink.FIT, c.fitX(), c.fitY()));
     }
     series.add(
         Series.points(x.length == 1 ? "1 point" : x.length + " points", Ink.SIGNAL, x, y, u));
     if (c.nextX().length > 0) {
       series.add(Series.marks("next", c.nextX()));
     }
-    if (c.fitX().length > 1 && x.length > 0) {
+    if (!search && c.fitX().length > 1 && x.length > 0) {
       double[] r = new double[x.length];
       for (int k = 0; k < x.length; k++) {
         r[k] = y[k] - interpolate(c.fitX(), c.fitY(), x[k]);

@@ -2,11 +2,13 @@ package coilside.terminal;
 
 import coilside.bench.Picture;
 import coilside.bench.Rung;
+import coilside.bench.RungStatus;
 import java.util.ArrayList;
 import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.Optional;
+import java.util.function.Supplier;
 
 /** Chooses and draws the picture: of the chosen rung, of what runs live, or of the log. */
 final class PictureView {
@@ -17,6 +19,8 @@ final class PictureView {
   }
 
   private final Look look;
+  private final Supplier<Snapshot> latest;
+  private boolean outdated;
   private final Map<String, PlotView> views = new HashMap<>();
   private Source source = Source.RUNG;
   private int focus;
@@ -24,8 +28,9 @@ final class PictureView {
   private boolean shownAlone;
   private List<PlotModel> shown = List.of();
 
-  PictureView(Look look) {
+  PictureView(Look look, Supplier<Snapshot> latest) {
     this.look = look;
+    this.latest = latest;
   }
 
   Source source() {
@@ -35,6 +40,7 @@ final class PictureView {
   void source(Source s) {
     if (s != source) {
       source = s;
+      outdated = true;
       focus = 0;
       alone = null;
     }
@@ -42,6 +48,7 @@ final class PictureView {
 
   void rungChanged() {
     source = Source.RUNG;
+    outdated = true;
     focus = 0;
     alone = null;
   }
@@ -60,6 +67,10 @@ final class PictureView {
 
   /** The view of the plot that has the keys; empty when there is no plot. */
   Optional<PlotView> focused() {
+    if (outdated) {
+      // Keys may come faster than frames: they mean the picture chosen, not the one drawn last.
+      choosePlots(latest.get());
+    }
     if (shown.isEmpty()) {
       return Optional.empty();
     }
@@ -70,7 +81,7 @@ final class PictureView {
     return views.computeIfAbsent(m.id() + look.part, k -> new PlotView());
   }
 
-  void draw(Canvas canvas, Area area, Snapshot state) {
+  private void choosePlots(Snapshot state) {
     Optional<Picture> picture = picture(state);
     shown =
         source == Source.LOG
@@ -78,6 +89,15 @@ final class PictureView {
             : picture
                 .map(p -> PictureModels.of(p, look.part, source == Source.LIVE ? "live." : ""))
                 .orElse(List.of());
+    outdated = false;
+  }
+
+  void draw(Canvas canvas, Area area, Snapshot state) {
+    choosePlots(state);
+    boolean measuring = state.measuring().filter(r -> r == look.chosen).isPresent();
+    if (shown.isEmpty() && source == Source.RUNG && measuring && state.lastScan().isPresent()) {
+      shown = List.of(PictureModels.scan(state.lastScan().get().fid(), look.part));
+    }
     if (shown.isEmpty()) {
       empty(canvas, area, state);
       return;
@@ -155,11 +175,17 @@ final class PictureView {
       text.add(rung.id() + ": " + rung.title());
       boolean busy = state.measuring().filter(r -> r == rung).isPresent();
       text.add(
-          busy ? "Measuring: the picture comes with the first points." : "No picture of it yet.");
+          busy
+              ? "Measuring: the picture comes with the first points."
+              : state.status(rung).finding().isPresent()
+                  ? "Measured before this start; its picture is not at hand."
+                  : "No picture of it yet.");
       if (!busy) {
         text.add("Press m to measure it, r to bring all rungs up to date.");
       }
-      state.status(rung).reasons().forEach(r -> text.add("Because " + r));
+      if (state.status(rung).state() != RungStatus.State.MISSING) {
+        state.status(rung).reasons().forEach(r -> text.add("Because " + r));
+      }
     }
     int y = area.y() + 1;
     for (String paragraph : text) {

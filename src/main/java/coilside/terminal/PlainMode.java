@@ -1,6 +1,9 @@
 package coilside.terminal;
 
+import coilside.bench.BenchSettings;
 import coilside.bench.Desk;
+import coilside.bench.Rung;
+import coilside.bench.Work;
 import java.io.BufferedReader;
 import java.io.IOException;
 import java.io.InputStream;
@@ -20,12 +23,19 @@ import java.util.concurrent.TimeUnit;
  */
 final class PlainMode {
   private static final String END = "\u0004";
+  private static final String INTERRUPT = "\u0003";
+
+  /** Keys that only change what is drawn. */
+  private static final String DRAWN_ONLY = "gpuvczx,.0ydwtLB?/";
+
+  private final Desk desk;
   private final Cockpit cockpit;
   private final Watch watch;
   private final PrintStream out;
   private final PlainText text;
 
   private PlainMode(Desk desk, TerminalOptions options, PrintStream out) {
+    this.desk = desk;
     watch = new Watch(options.clock());
     desk.listen(watch);
     cockpit = new Cockpit(desk, watch, options, false);
@@ -39,15 +49,20 @@ final class PlainMode {
     Thread reader = new Thread(() -> read(in, options, lines), "line reader");
     reader.setDaemon(true);
     reader.start();
+    for (String name : new String[] {"INT", "TERM"}) {
+      Signals.handle(name, n -> lines.offer(INTERRUPT));
+    }
+    Signals.handle("HUP", n -> lines.offer(END));
+    boolean interrupted = true;
     try {
-      mode.loop(lines);
+      interrupted = mode.loop(lines);
     } catch (InterruptedException e) {
       Thread.currentThread().interrupt();
     }
     if (mode.watch.snapshotWork().isPresent()) {
       desk.stop();
     }
-    return TextInterface.DONE;
+    return interrupted ? TextInterface.INTERRUPTED : TextInterface.DONE;
   }
 
   private static void read(InputStream in, TerminalOptions options, BlockingQueue<String> lines) {
@@ -65,21 +80,29 @@ final class PlainMode {
     }
   }
 
-  private void loop(BlockingQueue<String> lines) throws InterruptedException {
+  /** True when it was interrupted. At the end of the input it waits for the work in hand. */
+  private boolean loop(BlockingQueue<String> lines) throws InterruptedException {
+    boolean ended = false;
     print(text.overview(watch.snapshot()));
     print(List.of("Type help and Enter for what can be done; ladder for the list; quit to leave."));
     while (!cockpit.done()) {
       String line = lines.poll(200, TimeUnit.MILLISECONDS);
       cockpit.tick();
       print(text.changes(watch.snapshot()));
-      if (END.equals(line)) {
-        return;
+      if (INTERRUPT.equals(line)) {
+        return true;
       }
-      if (line != null) {
+      ended |= END.equals(line);
+      Optional<Work> work = watch.snapshotWork();
+      if (ended && (work.isEmpty() || work.get() instanceof Work.Live)) {
+        return false;
+      }
+      if (line != null && !END.equals(line)) {
         command(line.strip());
         print(text.changes(watch.snapshot()));
       }
     }
+    return false;
   }
 
   private void command(String line) {
@@ -92,7 +115,11 @@ final class PlainMode {
       case "ladder" -> print(text.ladder(watch.snapshot()));
       case "state", "picture" -> print(text.overview(watch.snapshot()));
       default -> {
-        if (cockpit.panelOpen() || line.length() == 1) {
+        if (word.startsWith("set ") && !cockpit.panelOpen()) {
+          set(line.substring(4).strip());
+        } else if (!cockpit.panelOpen() && line.length() == 1 && DRAWN_ONLY.contains(line)) {
+          print(List.of("'" + line + "' changes the drawn screen only; type help."));
+        } else if (cockpit.panelOpen() || line.length() == 1) {
           keys(line);
         } else {
           Optional<Action> action =
@@ -132,11 +159,53 @@ final class PlainMode {
     return out;
   }
 
+  private static boolean useful(Action a) {
+    return a.keyText().length() == 1
+        && !DRAWN_ONLY.contains(a.keyText())
+        && a.key().character() != 'e';
+  }
+
+  /** "sample cooking oil": the name of a setting and its new value. */
+  private void set(String text) {
+    for (SettingField field : SettingField.all(desk.limits())) {
+      if (text.startsWith(field.name() + " ")) {
+        try {
+          BenchSettings changed =
+              field.change().apply(desk.settings(), text.substring(field.name().length() + 1));
+          List<Rung> stale = desk.wouldGoStale(changed);
+          desk.apply(changed);
+          print(
+              List.of(
+                  field.name()
+                      + " is now "
+                      + field.shown().apply(desk.settings())
+                      + (stale.isEmpty()
+                          ? "."
+                          : "; stale now: "
+                              + String.join(", ", stale.stream().map(Rung::id).toList()))));
+        } catch (IllegalArgumentException | IllegalStateException e) {
+          print(List.of(e.getMessage(), "Allowed: " + field.allowed()));
+        }
+        return;
+      }
+    }
+    print(
+        List.of(
+            "Settings: "
+                + String.join(
+                    ", ",
+                    SettingField.all(desk.limits()).stream()
+                        .map(f -> f.name() + " (" + f.allowed() + ")")
+                        .toList())));
+  }
+
   private List<String> help() {
     List<String> out = new ArrayList<>();
-    out.add("help: this list. ladder: all rungs. state: what is going on. Then, one of:");
+    out.add(
+        "help: this list. ladder: all rungs. state: what is going on. set NAME VALUE: change a"
+            + " setting (set ? lists them). Then, one of:");
     for (Action a : cockpit.actions()) {
-      if (a.works().getAsBoolean() && a.keyText().length() == 1) {
+      if (useful(a) && a.works().getAsBoolean()) {
         out.add(a.keyText() + " or " + a.brief() + ": " + a.what());
       }
     }

@@ -87,7 +87,9 @@ final class PlainText {
     if (!age.isEmpty()) {
       out.append(", ").append(age).append(" old");
     }
-    s.reasons().forEach(r -> out.append("; because ").append(r));
+    if (s.state() != RungStatus.State.MISSING) {
+      s.reasons().forEach(r -> out.append("; because ").append(r));
+    }
     return shown(out.toString());
   }
 

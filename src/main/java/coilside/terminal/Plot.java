@@ -40,14 +40,14 @@ final class Plot {
     Axis y = yAxis(model.series(), view.yScale, view.logarithmic(), x);
     titleRow(area, x, chosen);
     yTicks(area, plot, y, view.logarithmic());
-    drawSeries(model.series(), plot, x, y, view.logarithmic());
+    new PlotSeries(canvas, style, logFloor).draw(model.series(), plot, x, y, view.logarithmic());
     if (residualPanel) {
       Area below = new Area(plot.x(), plot.bottom(), plot.width(), residualRows);
       Axis r = yAxis(model.residuals(), view.residualScale, false, x);
       separator(area, below.y(), r.unitText());
       Area inner = new Area(below.x(), below.y() + 1, below.width(), below.height() - 1);
       yTicks(area, inner, r, false);
-      drawSeries(model.residuals(), inner, x, r, false);
+      new PlotSeries(canvas, style, logFloor).draw(model.residuals(), inner, x, r, false);
     }
     xTicks(area, plot, plot.bottom() + residualRows, x);
     cursor(plot, plot.bottom() + residualRows, y, x);
@@ -97,10 +97,6 @@ final class Plot {
     return top > 0 ? top * Math.pow(10, -DECADES_SHOWN) : 1e-12;
   }
 
-  private double scaled(double v, boolean log) {
-    return log ? Math.log10(Math.max(Math.abs(v), logFloor)) : v;
-  }
-
   private Axis yAxis(List<Series> all, Autoscale scale, boolean log, Axis x) {
     double low = Double.POSITIVE_INFINITY;
     double high = Double.NEGATIVE_INFINITY;
@@ -114,8 +110,8 @@ final class Plot {
           continue;
         }
         double u = log ? 0 : s.uncertainty(k);
-        low = Math.min(low, scaled(v, log) - u);
-        high = Math.max(high, scaled(v, log) + u);
+        low = Math.min(low, PlotSeries.scaled(v, log, logFloor) - u);
+        high = Math.max(high, PlotSeries.scaled(v, log, logFloor) + u);
       }
     }
     scale.update(low, high);
@@ -236,134 +232,6 @@ final class Plot {
 
   private double viewHigh() {
     return Double.isNaN(view.yScale.high()) ? 1 : view.yScale.high();
-  }
-
-  private void drawSeries(List<Series> all, Area plot, Axis x, Axis y, boolean log) {
-    Dots dots = new Dots(canvas, plot, style);
-    for (Series s : all) {
-      switch (s.form()) {
-        case LINE -> line(dots, s, x, y, log);
-        case BAND -> band(dots, s, x, y);
-        case POINTS -> errorBars(dots, s, x, y, log);
-        case MARKS -> {
-          /* whole characters, below */
-        }
-      }
-    }
-    dots.paint();
-    for (Series s : all) {
-      if (s.form() == Series.Form.POINTS) {
-        points(plot, s, x, y, log);
-      } else if (s.form() == Series.Form.MARKS) {
-        marks(plot, s, x);
-      }
-    }
-  }
-
-  private static double column(Dots dots, Axis x, double v) {
-    return x.fraction(v) * (dots.width() - 1);
-  }
-
-  private static double dotRow(Dots dots, Axis y, double v) {
-    return (1 - y.fraction(v)) * (dots.height() - 1);
-  }
-
-  /** Many samples in one column become one stroke from their least to their largest. */
-  private void line(Dots dots, Series s, Axis x, Axis y, boolean log) {
-    int current = Integer.MIN_VALUE;
-    double lastX = Double.NaN;
-    double lastY = Double.NaN;
-    double low = 0;
-    double high = 0;
-    for (int k = 0; k < s.x().length; k++) {
-      double cx = column(dots, x, s.x()[k]);
-      if (!Double.isFinite(s.y()[k])) {
-        lastX = Double.NaN;
-        continue;
-      }
-      if (cx < -dots.width() || cx > 2.0 * dots.width()) {
-        if (cx > dots.width() && lastX > dots.width()) {
-          break;
-        }
-      }
-      double cy = dotRow(dots, y, scaled(s.y()[k], log));
-      int column = (int) Math.round(Math.max(-1e6, Math.min(1e6, cx)));
-      if (column == current) {
-        low = Math.min(low, cy);
-        high = Math.max(high, cy);
-      } else {
-        stroke(dots, current, low, high, s.ink());
-        if (!Double.isNaN(lastX)) {
-          dots.line(lastX, lastY, cx, cy, s.ink());
-        }
-        current = column;
-        low = cy;
-        high = cy;
-      }
-      lastX = cx;
-      lastY = cy;
-    }
-    stroke(dots, current, low, high, s.ink());
-  }
-
-  private static void stroke(Dots dots, int column, double low, double high, Ink ink) {
-    if (column >= 0 && column < dots.width()) {
-      double l = Math.max(-1, Math.min(dots.height(), low));
-      double h = Math.max(-1, Math.min(dots.height(), high));
-      dots.vertical(column, (int) Math.round(l), (int) Math.round(h), ink);
-    }
-  }
-
-  private void band(Dots dots, Series s, Axis x, Axis y) {
-    for (int k = 0; k + 1 < s.x().length; k++) {
-      int from = (int) Math.max(0, Math.round(column(dots, x, s.x()[k])));
-      int to = (int) Math.min(dots.width() - 1.0, Math.round(column(dots, x, s.x()[k + 1])));
-      double top = dotRow(dots, y, s.y()[k] + s.uncertainty(k));
-      double bottom = dotRow(dots, y, s.y()[k] - s.uncertainty(k));
-      for (int c = from; c <= to; c++) {
-        if (c % 2 == 0) {
-          dots.dot(c, (int) Math.round(top), s.ink());
-          dots.dot(c, (int) Math.round(bottom), s.ink());
-        }
-      }
-    }
-  }
-
-  private void errorBars(Dots dots, Series s, Axis x, Axis y, boolean log) {
-    for (int k = 0; k < s.x().length; k++) {
-      double u = s.uncertainty(k);
-      int column = (int) Math.round(column(dots, x, s.x()[k]));
-      if (u > 0 && !log && column >= 0 && column < dots.width()) {
-        stroke(dots, column, dotRow(dots, y, s.y()[k] + u), dotRow(dots, y, s.y()[k] - u), s.ink());
-      }
-    }
-  }
-
-  private void points(Area plot, Series s, Axis x, Axis y, boolean log) {
-    for (int k = 0; k < s.x().length; k++) {
-      double fx = x.fraction(s.x()[k]);
-      double fy = y.fraction(scaled(s.y()[k], log));
-      if (fx >= 0 && fx <= 1 && fy >= 0 && fy <= 1) {
-        canvas.put(
-            plot.x() + (int) Math.round(fx * (plot.width() - 1)),
-            plot.bottom() - 1 - (int) Math.round(fy * (plot.height() - 1)),
-            glyphs.point(),
-            s.ink());
-      }
-    }
-  }
-
-  private void marks(Area plot, Series s, Axis x) {
-    for (double v : s.x()) {
-      double f = x.fraction(v);
-      if (f >= 0 && f <= 1) {
-        canvas.put(
-            plot.x() + (int) Math.round(f * (plot.width() - 1)),
-            plot.bottom() - 1,
-            glyphs.next(),
-            s.ink());
-      }
-    }
   }
 
   private void cursor(Area plot, int bottom, Axis y, Axis x) {

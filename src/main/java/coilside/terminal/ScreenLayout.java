@@ -95,7 +95,7 @@ final class ScreenLayout {
     end -= doing.length() + 2;
     String carrier = carrier(state);
     String sample = desk.settings().sample();
-    String name = desk.board().name();
+    String name = desk.board().profileName();
     int left = 1;
     int room = end - left;
     int forName = Math.max(8, room - carrier.length() - Math.min(16, sample.length()) - 4);

@@ -17,6 +17,7 @@ final class ScreenLoop {
   private static final long FRAME_NANOS = 50_000_000L;
   private static final long RUNNING_NANOS = 100_000_000L;
   private static final long IDLE_NANOS = 1_000_000_000L;
+  private static final long SETTLE_NANOS = 300_000_000L;
   private static final int KEYS_A_TURN = 200;
 
   private final Cockpit cockpit;
@@ -30,6 +31,7 @@ final class ScreenLoop {
   private final BooleanSupplier leave;
   private long drawnVersion = -1;
   private long lastFrame;
+  private long settleAt;
   private long frameBytes;
   private boolean keyed = true;
   private boolean hungUp;
@@ -101,8 +103,16 @@ final class ScreenLoop {
     cockpit.tick();
     boolean resized = surface.resize();
     long since = nanoTime.getAsLong() - lastFrame;
-    if (resized || due(since)) {
-      draw();
+    if (resized) {
+      settleAt = nanoTime.getAsLong() + SETTLE_NANOS;
+    }
+    boolean settled = settleAt != 0 && nanoTime.getAsLong() >= settleAt;
+    if (resized || settled || due(since)) {
+      // The terminal moved its text about by itself: what stands there is not what was sent.
+      draw(resized || settled);
+    }
+    if (settled) {
+      settleAt = 0;
     }
   }
 
@@ -121,7 +131,7 @@ final class ScreenLoop {
         || since >= (cockpit.running() ? RUNNING_NANOS : IDLE_NANOS);
   }
 
-  private void draw() throws IOException {
+  private void draw(boolean everything) throws IOException {
     keyed = false;
     lastFrame = nanoTime.getAsLong();
     Snapshot state = watch.snapshot();
@@ -130,7 +140,9 @@ final class ScreenLoop {
       surface.palette(surface.palette().withLight(cockpit.look().light));
     }
     long before = bytesWritten.getAsLong();
-    surface.show(cockpit.frame(surface.width(), surface.height(), state), cockpit.takeRedraw());
+    surface.show(
+        cockpit.frame(surface.width(), surface.height(), state),
+        cockpit.takeRedraw() || everything);
     if (cockpit.takeBell(state)) {
       surface.bell();
     }

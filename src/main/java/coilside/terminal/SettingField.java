@@ -85,19 +85,19 @@ record SettingField(
     BoardLimits.Range carrier = limits.carrierHertz();
     BoardLimits.Range amplitude = limits.amplitude();
     String carrierRange =
-        Numbers.si(carrier.min(), "Hz", 4) + " to " + Numbers.si(carrier.max(), "Hz", 4);
+        Numbers.trimmed(carrier.min(), "Hz") + " to " + Numbers.trimmed(carrier.max(), "Hz");
     out.add(text("sample", BenchSettings::sample, changing((d, t) -> d.sample = clean(t))));
     out.add(text("coil", BenchSettings::coil, changing((d, t) -> d.coil = clean(t))));
     out.add(
         number(
             "search from",
-            s -> Numbers.si(s.searchLowHertz(), "Hz", 6),
+            s -> Numbers.trimmed(s.searchLowHertz(), "Hz"),
             carrierRange,
             changing((d, t) -> d.low = within(t, "Hz", 1, carrier, "7.9 MHz"))));
     out.add(
         number(
             "search to",
-            s -> Numbers.si(s.searchHighHertz(), "Hz", 6),
+            s -> Numbers.trimmed(s.searchHighHertz(), "Hz"),
             carrierRange,
             changing((d, t) -> d.high = within(t, "Hz", 1, carrier, "8.3 MHz"))));
     out.add(
@@ -111,7 +111,7 @@ record SettingField(
             "expected T1",
             s ->
                 s.expectedT1Seconds().isPresent()
-                    ? Numbers.si(s.expectedT1Seconds().getAsDouble(), "s", 3)
+                    ? Numbers.trimmed(s.expectedT1Seconds().getAsDouble(), "s")
                     : "unknown",
             "1 ms to 100 s, or unknown",
             changing((d, t) -> d.t1 = expectedT1(t))));
@@ -136,7 +136,7 @@ record SettingField(
   }
 
   private static String plain(double v) {
-    return Numbers.si(v, "", 3);
+    return Numbers.trimmed(v, "");
   }
 
   private static OptionalDouble expectedT1(String text) {
@@ -182,11 +182,11 @@ record SettingField(
     double v = Quantities.read(text, unit, bareScale, example);
     if (!Double.isFinite(v) || !range.contains(v)) {
       throw new IllegalArgumentException(
-          Numbers.si(v, unit, 6)
+          Numbers.trimmed(v, unit)
               + " is outside "
-              + Numbers.si(range.min(), unit, 6)
+              + Numbers.trimmed(range.min(), unit)
               + " to "
-              + Numbers.si(range.max(), unit, 6)
+              + Numbers.trimmed(range.max(), unit)
               + "; write for example "
               + example);
     }

@@ -42,7 +42,7 @@ final class SettingsPanel implements Panel {
     rows.add(
         own(
             "live memory",
-            () -> look.memoryScans + " scans",
+            () -> look.memoryScans + (look.memoryScans == 1 ? " scan" : " scans"),
             1,
             1000,
             v -> look.memoryScans = (int) v));
@@ -63,7 +63,7 @@ final class SettingsPanel implements Panel {
     rows.add(
         new Row(
             "log every",
-            () -> Numbers.si(look.logEverySeconds, "s", 4),
+            () -> Numbers.trimmed(look.logEverySeconds, "s"),
             "0.1 s to 24 h",
             t ->
                 checked(
@@ -88,8 +88,8 @@ final class SettingsPanel implements Panel {
         name,
         shown,
         Numbers.si(min, "", 1) + " to " + (long) max,
-        t -> checked(SettingField.within(t.replace("scans", ""), "", 1, range, "16")),
-        t -> set.accept(SettingField.within(t.replace("scans", ""), "", 1, range, "16")));
+        t -> checked(SettingField.within(t.replaceFirst("scans?", ""), "", 1, range, "16")),
+        t -> set.accept(SettingField.within(t.replaceFirst("scans?", ""), "", 1, range, "16")));
   }
 
   @Override
@@ -106,9 +106,9 @@ final class SettingsPanel implements Panel {
 
   @Override
   public void draw(Canvas canvas, Area area, Snapshot state) {
-    int top = Math.max(0, chosen - Math.max(1, area.height() - 4) + 1);
+    int top = Math.max(0, chosen - Math.max(1, area.height() - 5) + 1);
     int y = area.y();
-    for (int i = top; i < rows.size() && y < area.bottom() - 3; i++) {
+    for (int i = top; i < rows.size() && y < area.bottom() - 4; i++) {
       Row row = rows.get(i);
       boolean here = i == chosen;
       canvas.put(area.x(), y, here ? canvas.glyphs().pointer() : ' ', Ink.STRONG);
@@ -125,7 +125,7 @@ final class SettingsPanel implements Panel {
       y++;
     }
     Row row = rows.get(chosen);
-    canvas.put(area.x(), area.bottom() - 2, "Allowed: " + row.allowed(), Ink.FAINT, area.right());
+    canvas.put(area.x(), area.bottom() - 3, "Allowed: " + row.allowed(), Ink.FAINT, area.right());
     if (typed != null) {
       consequence(canvas, area, row);
     } else if (desk.busy()) {
@@ -153,8 +153,10 @@ final class SettingsPanel implements Panel {
       text = e.getMessage();
       ink = Ink.BAD;
     }
-    int y = area.bottom() - 1;
-    canvas.put(area.x(), y, text, ink, area.right());
+    List<String> lines = Wrap.wrap(text, area.width());
+    for (int i = 0; i < Math.min(2, lines.size()); i++) {
+      canvas.put(area.x(), area.bottom() - 2 + i, lines.get(i), ink, area.right());
+    }
   }
 
   @Override

@@ -5,6 +5,7 @@ import coilside.shot.Shot;
 import java.time.Duration;
 import java.time.Instant;
 import java.util.List;
+import java.util.Locale;
 
 /** Draws the shot with its moving mark, and the line that counts scans and time left below it. */
 final class ShotView {
@@ -30,7 +31,7 @@ final class ShotView {
       canvas.put(
           area.x() + 2, area.y() + 1, "No shot has been played yet.", Ink.FAINT, area.right());
     }
-    counts(canvas, area, state, area.bottom() - 1);
+    counts(canvas, area, state, area.bottom() - 1, now);
   }
 
   private static void drawPart(
@@ -90,7 +91,7 @@ final class ShotView {
     canvas.put(x, y, text, ink, Math.max(x, end - (text.length() >= end - from ? 0 : 1)));
   }
 
-  private static void counts(Canvas canvas, Area area, Snapshot state, int y) {
+  private static void counts(Canvas canvas, Area area, Snapshot state, int y, Instant now) {
     Glyphs g = canvas.glyphs();
     int x = area.x();
     if (state.running() && state.shot().isPresent() && state.shotRunning()) {
@@ -119,17 +120,25 @@ final class ShotView {
         x += bar + 1;
         x = canvas.put(x, y, Math.round(100 * step.fraction()) + " %", Ink.PLAIN, end) + 2;
       }
-      if (!Double.isNaN(step.secondsLeft())) {
-        x = canvas.put(x, y, Numbers.clock(step.secondsLeft()) + " left", Ink.PLAIN, end) + 2;
+      double left = state.secondsLeft(now);
+      if (!Double.isNaN(left)) {
+        x = canvas.put(x, y, Numbers.clock(left) + " left", Ink.PLAIN, end) + 2;
       }
       canvas.put(x, y, step.what(), Ink.PLAIN, end);
     }
   }
 
+  private static String percent(double fraction) {
+    double p = 100 * fraction;
+    return p > 0 && p < 0.95
+        ? String.format(Locale.ROOT, "%.1f %%", Math.max(0.1, p))
+        : Math.round(p) + " %";
+  }
+
   private static String adcText(Snapshot state, Glyphs g) {
     int full = (int) Math.round(8 * Math.max(0, Math.min(1, state.peakFraction())));
     String bar = String.valueOf(g.full()).repeat(full) + String.valueOf(g.empty()).repeat(8 - full);
-    String text = "ADC " + bar + " " + Math.round(100 * state.peakFraction()) + " %";
+    String text = "ADC " + bar + " " + percent(state.peakFraction());
     return state.clippedSamples() > 0 ? text + " CLIPS" : text;
   }
 }

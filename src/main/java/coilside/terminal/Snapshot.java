@@ -6,6 +6,8 @@ import coilside.bench.Rung;
 import coilside.bench.RungStatus;
 import coilside.bench.Work;
 import coilside.shot.Shot;
+import coilside.signal.Scan;
+import java.time.Duration;
 import java.time.Instant;
 import java.util.List;
 import java.util.Map;
@@ -26,13 +28,24 @@ record Snapshot(
     int scans,
     double peakFraction,
     int clippedSamples,
+    Optional<Scan> lastScan,
     Optional<Progress.Step> step,
+    Instant stepTaken,
     List<Note> notes,
     LogSeries log,
     Map<Headline, HeadlineHistory> headlines) {
 
   /** A message with its time. */
   record Note(Instant when, boolean warning, String text) {}
+
+  /** Seconds left by the last estimate, counted down since it was made; NaN when unknown. */
+  double secondsLeft(Instant now) {
+    if (step.isEmpty() || Double.isNaN(step.get().secondsLeft())) {
+      return Double.NaN;
+    }
+    double since = Math.max(0, Duration.between(stepTaken, now).toMillis() / 1e3);
+    return Math.max(0, step.get().secondsLeft() - since);
+  }
 
   boolean running() {
     return work.isPresent();

@@ -4,6 +4,8 @@ import coilside.bench.Desk;
 import coilside.bench.Progress;
 import coilside.bench.Work;
 import java.io.IOException;
+import java.io.OutputStream;
+import java.io.PrintStream;
 import java.io.PrintWriter;
 import java.io.StringWriter;
 import java.nio.charset.StandardCharsets;
@@ -12,6 +14,7 @@ import java.nio.file.Path;
 import java.nio.file.StandardOpenOption;
 import java.util.Optional;
 import java.util.concurrent.CountDownLatch;
+import java.util.concurrent.TimeUnit;
 
 /**
  * The text interface: runs the screen, or its line-by-line form, on a desk until the operator
@@ -85,13 +88,39 @@ public final class TextInterface {
         System.err.println(tooSmall(w, h));
         return NO_TERMINAL;
       }
-      return onScreen(desk, options, console);
+      PrintStream errors = System.err;
+      try (PrintStream log = crashLog(options.crashLog())) {
+        // Whatever is printed while the screen is drawn would tear it.
+        System.setErr(log);
+        return onScreen(desk, options, console, errors);
+      } finally {
+        System.setErr(errors);
+      }
     } catch (IOException e) {
       System.err.println(
           "The terminal could not be set up: "
               + e.getMessage()
               + ". Check that stty works here, or use 'coilside ready'.");
       return NO_TERMINAL;
+    }
+  }
+
+  private static PrintStream crashLog(Path log) {
+    try {
+      makeFolder(log);
+      return new PrintStream(
+          Files.newOutputStream(log, StandardOpenOption.CREATE, StandardOpenOption.APPEND),
+          true,
+          StandardCharsets.UTF_8);
+    } catch (IOException | SecurityException e) {
+      return new PrintStream(OutputStream.nullOutputStream(), false, StandardCharsets.UTF_8);
+    }
+  }
+
+  private static void makeFolder(Path log) throws IOException {
+    Path parent = log.toAbsolutePath().getParent();
+    if (parent != null) {
+      Files.createDirectories(parent);
     }
   }
 
@@ -107,10 +136,22 @@ public final class TextInterface {
         + ". Enlarge the window or choose a smaller font, or use 'coilside ready'.";
   }
 
-  private static int onScreen(Desk desk, TerminalOptions options, Console console) {
-    CountDownLatch idle = new CountDownLatch(1);
+  private static int onScreen(
+      Desk desk, TerminalOptions options, Console console, PrintStream errors) {
     Watch watch = new Watch(options.clock());
     desk.listen(watch);
+    Thread.setDefaultUncaughtExceptionHandler(
+        (thread, e) -> {
+          e.printStackTrace();
+          watch.note(
+              true,
+              "A mistake of the program's own in its part '"
+                  + thread.getName()
+                  + "': "
+                  + e
+                  + ". Quit and start again; the details are in "
+                  + options.crashLog());
+        });
     boolean remote =
         options.environment().containsKey("SSH_CONNECTION")
             || options.environment().containsKey("SSH_TTY");
@@ -133,9 +174,9 @@ public final class TextInterface {
       boolean lost = loop.hungUp() || console.signal().equals("HUP");
       console.giveBack();
       if (lost) {
-        outlive(desk, watch, idle);
-        return DONE;
+        return outlive(desk, watch, console);
       }
+      console.leaving();
       boolean interrupted = !console.signal().isEmpty() || cockpit.interrupted();
       if (watch.snapshotWork().isPresent()) {
         desk.stop();
@@ -144,8 +185,7 @@ public final class TextInterface {
     } catch (IOException e) {
       // Writing failed: the terminal went away.
       console.giveBack();
-      outlive(desk, watch, idle);
-      return DONE;
+      return outlive(desk, watch, console);
     } catch (InterruptedException e) {
       Thread.currentThread().interrupt();
       console.giveBack();
@@ -154,35 +194,40 @@ public final class TextInterface {
     } catch (RuntimeException | Error e) {
       console.giveBack();
       desk.stop();
-      System.err.println(crashed(e, options.crashLog()));
+      errors.println(crashed(e, options.crashLog()));
       return CRASHED;
     }
   }
 
-  /** A lost session ends the screen, not the run: waits for the work in hand, unless it is live. */
-  private static void outlive(Desk desk, Watch watch, CountDownLatch idle) {
-    Optional<Work> work = watch.snapshotWork();
-    if (work.isEmpty()) {
-      return;
-    }
-    if (work.get() instanceof Work.Live) {
-      desk.stop();
-      return;
-    }
+  /**
+   * A lost session ends the screen, not the run: waits for the work in hand, unless it is live, or
+   * until TERM or INT ends that too.
+   */
+  private static int outlive(Desk desk, Watch watch, Console console) {
+    CountDownLatch ended = new CountDownLatch(1);
     desk.listen(
         event -> {
           if (event instanceof Progress.WorkEnded) {
-            idle.countDown();
+            ended.countDown();
           }
         });
-    if (!desk.busy()) {
-      return;
+    Optional<Work> work = watch.snapshotWork();
+    if (work.isPresent() && work.get() instanceof Work.Live) {
+      desk.stop();
+      return DONE;
     }
     try {
-      idle.await();
+      while (desk.busy() && !ended.await(200, TimeUnit.MILLISECONDS)) {
+        if (!console.signal().isEmpty() && !console.signal().equals("HUP")) {
+          console.leaving();
+          desk.stop();
+          return INTERRUPTED;
+        }
+      }
     } catch (InterruptedException e) {
       Thread.currentThread().interrupt();
     }
+    return DONE;
   }
 
   /** Writes the stack trace to the log and tells in one paragraph what happened. */
@@ -191,10 +236,7 @@ public final class TextInterface {
     e.printStackTrace(new PrintWriter(trace, true));
     String where;
     try {
-      Path parent = log.toAbsolutePath().getParent();
-      if (parent != null) {
-        Files.createDirectories(parent);
-      }
+      makeFolder(log);
       Files.writeString(log, trace + "\n", StandardOpenOption.CREATE, StandardOpenOption.APPEND);
       where = "The details are in " + log + "; please report them.";
     } catch (IOException | SecurityException io) {

@@ -7,6 +7,7 @@ import coilside.bench.RungStatus;
 import coilside.bench.Work;
 import coilside.quantity.Measured;
 import coilside.shot.Shot;
+import coilside.signal.Scan;
 import java.time.Instant;
 import java.time.InstantSource;
 import java.util.ArrayDeque;
@@ -38,6 +39,8 @@ final class Watch implements Consumer<Progress> {
   private int scans;
   private double peakFraction = Double.NaN;
   private int clippedSamples;
+  private Scan lastScan;
+  private Instant stepTaken = Instant.EPOCH;
   private Progress.Step step;
   private final Deque<Snapshot.Note> notes = new ArrayDeque<>();
   private final LogSeries log = new LogSeries();
@@ -67,6 +70,7 @@ final class Watch implements Consumer<Progress> {
     } else if (event instanceof Progress.ScanArrived e) {
       peakFraction = e.scan().peakFraction();
       clippedSamples = e.scan().clippedSamples();
+      lastScan = e.scan();
     } else if (event instanceof Progress.PictureChanged e) {
       if (work instanceof Work.Live || work instanceof Work.TakeFid || work instanceof Work.Log) {
         live = e.picture();
@@ -75,11 +79,9 @@ final class Watch implements Consumer<Progress> {
       }
     } else if (event instanceof Progress.Step e) {
       step = e;
+      stepTaken = clock.instant();
     } else if (event instanceof Progress.RungEnded e) {
       measuring = null;
-      if (e.finding().refused()) {
-        note(true, e.finding().rung().id() + ": " + e.finding().refusal().get().reason());
-      }
     } else if (event instanceof Progress.LadderChanged e) {
       ladder = List.copyOf(e.ladder());
     } else if (event instanceof Progress.LogRowKept e) {
@@ -176,7 +178,9 @@ final class Watch implements Consumer<Progress> {
         scans,
         peakFraction,
         clippedSamples,
+        Optional.ofNullable(lastScan),
         Optional.ofNullable(step),
+        stepTaken,
         List.copyOf(notes),
         log,
         copies);

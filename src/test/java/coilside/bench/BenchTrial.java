@@ -79,7 +79,7 @@ final class BenchTrial implements AutoCloseable {
       messages.add(m.text());
     } else if (event instanceof Progress.RungEnded ended && !ended.finding().refused()) {
       // The scans of the capture are the last ones played.
-      Capture capture = keeper.capture(ended.finding().capture());
+      Capture capture = capture(ended.finding());
       int from = larmorAtScans.size() - capture.scans().size();
       double sum = 0;
       int pulsed = 0;
@@ -92,6 +92,12 @@ final class BenchTrial implements AutoCloseable {
       }
       larmor.put(ended.finding().rung(), sum / Math.max(1, pulsed));
     }
+  }
+
+  /** The capture that a finding came from. */
+  Capture capture(Finding finding) {
+    String name = finding.capture();
+    return keeper.captures.get(Integer.parseInt(name.substring(name.lastIndexOf('-') + 1)));
   }
 
   /** All scans played so far. */

@@ -2,57 +2,56 @@ package coilside.bench;
 
 import java.time.Instant;
 import java.util.ArrayList;
-import java.util.HashMap;
 import java.util.List;
-import java.util.Map;
 import java.util.Optional;
 
 /** Keeps everything in memory, for tests. */
-final class MemoryKeeper implements Keeper {
-  final List<Capture> captures = new ArrayList<>();
-  final List<Finding> findings = new ArrayList<>();
-  private final Map<String, String> settings = new HashMap<>();
+public final class MemoryKeeper implements Keeper {
+  public final List<Capture> captures = new ArrayList<>();
+  public final List<Finding> findings = new ArrayList<>();
+  public final List<LogRow> rows = new ArrayList<>();
+  public final List<String> notes = new ArrayList<>();
+  int failRowsFrom = Integer.MAX_VALUE;
 
   @Override
-  public synchronized String keep(Capture capture) {
+  public String keep(Capture capture) {
     captures.add(capture);
-    return capture.purpose() + "-" + captures.size();
+    return "capture-" + (captures.size() - 1);
   }
 
   @Override
-  public synchronized void keep(Finding finding) {
+  public void keep(Finding finding) {
     findings.add(finding);
   }
 
   @Override
-  public synchronized void keep(LogRow row) {}
-
-  @Override
-  public synchronized void note(Instant when, String kind, String text) {}
-
-  /** The capture of this name. */
-  synchronized Capture capture(String name) {
-    return captures.get(Integer.parseInt(name.substring(name.lastIndexOf('-') + 1)) - 1);
+  public void keep(LogRow row) throws KeepException {
+    if (rows.size() >= failRowsFrom) {
+      throw new KeepException("the disk is full");
+    }
+    rows.add(row);
   }
 
   @Override
-  public synchronized List<Finding> findings(Rung rung) {
+  public void note(Instant when, String kind, String text) {
+    notes.add(kind + ": " + text);
+  }
+
+  @Override
+  public List<Finding> findings(Rung rung) {
     return findings.stream().filter(f -> f.rung() == rung).toList();
   }
 
   @Override
-  public synchronized Optional<Finding> newest(Rung rung) {
-    List<Finding> all = findings(rung);
-    return all.isEmpty() ? Optional.empty() : Optional.of(all.get(all.size() - 1));
+  public Optional<Finding> newest(Rung rung) {
+    return findings(rung).stream().reduce((a, b) -> b);
   }
 
   @Override
-  public synchronized Optional<String> setting(String name) {
-    return Optional.ofNullable(settings.get(name));
+  public Optional<String> setting(String name) {
+    return Optional.empty();
   }
 
   @Override
-  public synchronized void setSetting(String name, String value) {
-    settings.put(name, value);
-  }
+  public void setSetting(String name, String value) {}
 }

@@ -135,4 +135,19 @@ class BadInputTest {
     assertEquals(2, run.status());
     assertFalse(run.err().contains("\u001b"), "an escape character got through");
   }
+
+  @Test
+  void withoutATerminalTheTextInterfaceNamesReady() {
+    CommandRun run = run();
+    assertRefused(run, 2, "terminal", "coilside ready");
+  }
+
+  @Test
+  void aBenchWithoutASampleIsMeasuredAndRefusedWithCauses() {
+    CommandRun run =
+        run("ready", "--scenario", "src/test/resources/scenarios/faults/no-sample.toml");
+    assertEquals(1, run.status(), run.err());
+    assertTrue(run.err().contains("no resonance within"), run.err());
+    assertTrue(run.err().contains("most likely first"), run.err());
+  }
 }

@@ -145,6 +145,18 @@ class CaptureTest {
     }
   }
 
+  /** Stopping the bench interrupts its thread; what was measured must still be kept. */
+  @Test
+  void anInterruptedThreadStillKeepsItsCapture() throws Exception {
+    CapturesFolder captures = CapturesFolder.open(folder);
+    Capture capture = Samples.capture("fid", "oil", 2, 16, 1);
+    Thread.currentThread().interrupt();
+    String base = captures.keep(capture);
+    assertTrue(Thread.interrupted());
+    assertSame(capture, CaptureReader.read(folder.resolve(base)));
+    assertEquals(List.of(), CaptureChecks.problems(folder.resolve(base)));
+  }
+
   @Test
   void aFullDiskLeavesNothingHalfDone() throws Exception {
     // Room for the data of one capture and less than its metadata, then for the data in part.

@@ -10,7 +10,11 @@ import org.junit.jupiter.api.Tag;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 
-/** A long log in a 128 MB heap: no growth, the same cost for the last row as for the first. */
+/**
+ * A long log in a 128 MB heap: no growth, the same cost for the last row as for the first. Each row
+ * waits for the disk twice, so that it takes some minutes; with {@code -Djava.io.tmpdir} on a file
+ * system in memory, half a minute.
+ */
 class LongLogTest {
   private static final int ROWS = 100_000;
 

@@ -124,7 +124,7 @@ final class FakeDesk implements Desk {
   @Override
   public BoardIdentity board() {
     return new BoardIdentity(
-        "teaching bench", "text-line", "0".repeat(64), "in this process", simulated);
+        "teaching bench", "teaching bench", "0".repeat(64), "in this process", simulated);
   }
 
   @Override
@@ -147,6 +147,7 @@ final class FakeDesk implements Desk {
         10,
         0.02,
         1,
+        true,
         true,
         true,
         true,

@@ -39,7 +39,7 @@ class ScreenTest {
     assertShows(s, "● fresh", "all rungs fresh");
     s.now = s.now.plusSeconds(7200);
     s.turn();
-    assertShows(s, "2.0 h");
+    assertShows(s, "2 h");
   }
 
   @Test
@@ -184,7 +184,7 @@ class ScreenTest {
     s.press("e");
     s.ctrl('u');
     s.press("900MHz");
-    assertShows(s, "900.000 MHz is outside 1.00000 MHz");
+    assertShows(s, "900 MHz is outside 1 MHz to 30 MHz");
     s.press(KeyType.Enter);
     assertEquals(7.9e6, s.desk.settings().searchLowHertz());
     s.ctrl('u');
@@ -308,6 +308,21 @@ class ScreenTest {
     assertShows(s, "FID, magnitude");
     s.press("y");
     assertShows(s, "log");
+  }
+
+  @Test
+  void keysFasterThanFramesMeanThePictureChosen() throws Exception {
+    Stage s = new Stage(120, 40);
+    s.press("r");
+    s.finish();
+    s.press("7");
+    s.cockpit.key(Key.of('5'));
+    s.cockpit.key(Key.of('c'));
+    s.turn();
+    s.turn();
+    assertShows(s, "nutation: amplitude", "µs  fit");
+    s.press("7");
+    assertFalse(s.shows("ms  real"));
   }
 
   @Test

@@ -1,6 +1,5 @@
 package coilside.board.driver;
 
-import coilside.board.BoardException;
 import coilside.board.BoardException.Stopped;
 import coilside.board.BoardLimits;
 import coilside.board.GuardedBoard;
@@ -8,20 +7,16 @@ import coilside.board.driver.Conformance.Row.Verdict;
 import coilside.board.link.Link;
 import coilside.board.profile.DeviceProfile;
 import coilside.board.profile.Framing;
-import coilside.board.profile.SampleBlocks;
 import coilside.shot.Pulse;
-import coilside.shot.Receive;
 import coilside.shot.Shot;
 import coilside.shot.Step;
 import coilside.shot.Wait;
-import coilside.signal.Fid;
 import coilside.signal.Scan;
 import java.nio.charset.StandardCharsets;
 import java.time.Clock;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
-import java.util.OptionalDouble;
 import java.util.function.Consumer;
 import java.util.function.LongSupplier;
 
@@ -30,7 +25,10 @@ import java.util.function.LongSupplier;
  * the board and receives; it transmits only when told to.
  */
 public final class Conformance {
-  private static final int CAPTURES = 3;
+  /** Part of the operator's amplitude that the one pulse is sent at. */
+  private static final double LOW = 0.1;
+
+  private static final double PULSE_REST_SECONDS = 0.1;
   private static final double ABORT_AFTER_SECONDS = 0.2;
   private static final double ABORT_REST_SECONDS = 5;
 
@@ -60,8 +58,8 @@ public final class Conformance {
   private final BoardLimits limits;
   private final LongSupplier nanoClock;
   private final boolean transmit;
-  private final Consumer<Row> asItGoes;
-  private final List<Row> rows = new ArrayList<>();
+  private final Trials trials;
+  private final ReceiveTrials receiving;
   private final ProfilePlayer player;
   private final GuardedBoard board;
   private long stopAtNanos = Long.MAX_VALUE;
@@ -77,9 +75,10 @@ public final class Conformance {
     this.limits = profile.boardLimits();
     this.nanoClock = nanoClock;
     this.transmit = transmit;
-    this.asItGoes = asItGoes;
     this.player = new ProfilePlayer(profile, link, this::watchedClock, wallClock);
     this.board = new GuardedBoard(player, profile.limits(), this::watchedClock, true);
+    this.trials = new Trials(asItGoes);
+    this.receiving = new ReceiveTrials(profile, board, player, trials);
   }
 
   /**
@@ -104,7 +103,7 @@ public final class Conformance {
       run.board.close();
       link.close();
     }
-    return List.copyOf(run.rows);
+    return run.trials.rows();
   }
 
   /** The clock, which presses stop when its time has come: an abort in mid-run without a thread. */
@@ -117,37 +116,16 @@ public final class Conformance {
     return now;
   }
 
-  private void row(String tried, String expected, String seen, Verdict verdict) {
-    Row row = new Row(tried, expected, seen, verdict);
-    rows.add(row);
-    asItGoes.accept(row);
-  }
-
-  private interface Trial {
-    void run() throws BoardException;
-  }
-
-  /** Runs one trial; an error that it does not treat itself becomes a BAD row. */
-  private boolean tryOut(String tried, String expected, Trial trial) {
-    try {
-      trial.run();
-      return true;
-    } catch (BoardException e) {
-      row(tried, expected, e.getMessage(), Verdict.BAD);
-      return false;
-    }
-  }
-
   private void all() {
     boolean there =
-        tryOut(
+        trials.tryOut(
             "identify",
-            "an answer that matches the profile",
+            "an answer as in the profile",
             () -> {
               player.open(false);
-              row(
+              trials.row(
                   "identify",
-                  "an answer that matches the profile",
+                  "an answer as in the profile",
                   player.identity().name(),
                   Verdict.GOOD);
             });
@@ -155,32 +133,22 @@ public final class Conformance {
       return;
     }
     timing();
-    new SettingTrials(
-            profile,
-            player,
-            (r) -> {
-              rows.add(r);
-              asItGoes.accept(r);
-            })
-        .all();
-    captures();
+    temperature();
+    new SettingTrials(profile, player, trials).all();
+    receiving.all();
     abort();
     garbage();
-    if (transmit) {
-      pulse();
-    } else {
-      row("one pulse", "samples come back", "not told to transmit", Verdict.SKIPPED);
-    }
+    pulse();
   }
 
   private void timing() {
     String expected =
-        String.format(Locale.ROOT, "within %.3g s", profile.replies().timeLimitSeconds());
+        String.format(Locale.ROOT, "within %.4g ms", profile.replies().timeLimitSeconds() * 1e3);
     if (profile.identification().ask().isEmpty()) {
-      row("reply time", expected, "the profile has no question to ask", Verdict.SKIPPED);
+      trials.row("reply time", expected, "the profile has no question to ask", Verdict.SKIPPED);
       return;
     }
-    tryOut(
+    trials.tryOut(
         "reply time",
         expected,
         () -> {
@@ -191,117 +159,46 @@ public final class Conformance {
             worst = Math.max(worst, (nanoClock.getAsLong() - from) * 1e-9);
           }
           boolean near = worst > profile.replies().timeLimitSeconds() / 2;
-          row(
+          trials.row(
               "reply time",
               expected,
-              String.format(Locale.ROOT, "%.3g s at the longest of 10", worst),
+              String.format(Locale.ROOT, "%.3g ms at the longest of 10", worst * 1e3),
               near ? Verdict.LOOK : Verdict.GOOD);
         });
   }
 
-  private Shot listening(double rest) {
-    int points = Math.min(limits.maxPoints(), Math.max(limits.minPoints(), 1024));
-    double dwell =
-        profile.limits().dwellSeconds().snap(Math.min(10e-6, limits.maxReceiveSeconds() / points));
-    BoardLimits l = profile.limits();
-    double carrier = l.carrierHertz().snap((l.carrierHertz().min() + l.carrierHertz().max()) / 2);
-    double gain = l.gainDecibels().snap((l.gainDecibels().min() + l.gainDecibels().max()) / 2);
-    return new Shot(carrier, gain, rest, List.of(new Receive(points, dwell, 0)));
-  }
-
-  private void captures() {
-    Shot shot = listening(0);
-    String tried = "receive-only capture";
-    Receive receive = (Receive) shot.steps().get(0);
-    tryOut(
-        tried,
-        receive.points() + " points, transmitter off",
-        () -> {
-          int retries = 0;
-          Scan scan = null;
-          for (int i = 0; i < CAPTURES; i++) {
-            scan = board.play(shot);
-            retries += scan.retries();
-          }
-          samples(tried, receive, scan);
-          byteOrder();
-          checksum(retries);
-        });
-  }
-
-  private void samples(String tried, Receive receive, Scan scan) {
-    Fid fid = scan.fid();
-    int lost = receive.points() - fid.points();
-    row(
-        tried,
-        receive.points() + " points, transmitter off",
-        fid.points() + " points and " + lost + " lost to the receive filter",
-        Verdict.GOOD);
-    boolean varied = false;
-    for (int k = 1; k < fid.points() && !varied; k++) {
-      varied = fid.re(k) != fid.re(0) || fid.im(k) != fid.im(0);
-    }
-    row(
-        "samples are alive",
-        "noise, not one constant number, not at the rails",
-        varied
-            ? String.format(
-                Locale.ROOT,
-                "level %.2g of full scale, %d clipped",
-                scan.peakFraction(),
-                scan.clippedSamples())
-            : "every sample is the same",
-        !varied ? Verdict.BAD : scan.clippedSamples() > 0 ? Verdict.LOOK : Verdict.GOOD);
-  }
-
-  private void byteOrder() {
-    SampleSanity sanity = SampleSanity.of(profile.samples(), player.lastBlock());
-    row("byte order and sign", sanity.expected(), sanity.seen(), sanity.verdict());
-  }
-
-  private void checksum(int retries) {
-    boolean has =
-        profile.blocks().checksum().isPresent()
-            || profile.framing() instanceof Framing.Cobs cobs && cobs.checksum().isPresent();
-    String expected = CAPTURES + " captures without a damaged block";
-    row(
-        "checksum",
-        expected,
-        has
-            ? retries + " damaged"
-            : retries
-                + " damaged; the profile has no checksum, so damage inside samples goes unseen",
-        retries > 0 ? Verdict.BAD : has ? Verdict.GOOD : Verdict.LOOK);
-  }
-
   private void abort() {
     String tried = "abort in mid-run";
-    String expected = "the board stops and answers the next question";
+    String expected = "it stops, and answers again";
     double rest = Math.min(ABORT_REST_SECONDS, limits.waitSeconds().max());
     if (profile.command(coilside.board.profile.CommandName.STOP).isEmpty()) {
-      row(tried, expected, "the profile has no stop command", Verdict.SKIPPED);
+      trials.row(tried, expected, "the profile has no stop command", Verdict.SKIPPED);
       return;
     }
-    tryOut(
+    trials.tryOut(
         tried,
         expected,
         () -> {
           stopAtNanos = nanoClock.getAsLong() + (long) (ABORT_AFTER_SECONDS * 1e9);
           boolean stopped = false;
           try {
-            board.play(listening(rest));
+            board.play(receiving.listening(rest));
           } catch (Stopped e) {
             stopped = true;
           } finally {
             stopAtNanos = Long.MAX_VALUE;
           }
           if (!stopped) {
-            row(tried, expected, "the scan was over before it could be stopped", Verdict.SKIPPED);
+            trials.row(
+                tried,
+                expected,
+                "the scan was over before it could be stopped (a simulated board needs --paced)",
+                Verdict.SKIPPED);
             return;
           }
           long from = nanoClock.getAsLong();
-          board.play(listening(0));
-          row(
+          board.play(receiving.listening(0));
+          trials.row(
               tried,
               expected,
               String.format(
@@ -314,8 +211,8 @@ public final class Conformance {
 
   private void garbage() {
     String tried = "recovery after garbage";
-    String expected = "the board answers the next question";
-    tryOut(
+    String expected = "it answers again";
+    trials.tryOut(
         tried,
         expected,
         () -> {
@@ -326,30 +223,52 @@ public final class Conformance {
           if (profile.replies().mode() == coilside.board.profile.Replies.Mode.ASKED) {
             player.clearErrors();
           }
-          board.play(listening(0));
-          row(tried, expected, "a capture came as before", Verdict.GOOD);
+          board.play(receiving.listening(0));
+          trials.row(tried, expected, "a capture came as before", Verdict.GOOD);
         });
   }
 
-  private void pulse() {
-    String tried = "one pulse";
-    String expected = "samples come back";
-    Shot base = listening(0.1);
+  private static Pulse weakPulse(DeviceProfile profile) {
     BoardLimits l = profile.limits();
-    double width = l.pulseSeconds().snap(Math.min(10e-6, l.pulseSeconds().max()));
+    return new Pulse(
+        l.pulseSeconds().snap(10e-6), 0, l.amplitude().snap(LOW * profile.operator().amplitude()));
+  }
+
+  /** What is sent when told to transmit, for a caution beforehand. */
+  public static String whatIsSent(DeviceProfile profile) {
+    return "one pulse of " + text(weakPulse(profile));
+  }
+
+  private static String text(Pulse pulse) {
+    return String.format(
+        Locale.ROOT, "%.3g us at amplitude %.3g", pulse.seconds() * 1e6, pulse.amplitude());
+  }
+
+  private void pulse() {
+    String expected = "samples come back";
+    BoardLimits l = profile.limits();
+    Pulse one = weakPulse(profile);
+    String tried = "one pulse, " + text(one);
+    if (!transmit) {
+      trials.row(tried, expected, "not told to transmit", Verdict.SKIPPED);
+      return;
+    }
+    Shot base = receiving.listening(PULSE_REST_SECONDS);
     List<Step> steps = new ArrayList<>();
-    steps.add(new Pulse(width, 0, l.amplitude().snap(profile.operator().amplitude())));
+    steps.add(one);
     steps.add(new Wait(l.waitSeconds().snap(20e-6)));
     steps.addAll(base.steps());
-    tryOut(
+    trials.tryOut(
         tried,
         expected,
         () -> {
           board.arm();
           try {
             Scan scan =
-                board.play(new Shot(base.carrierHertz(), l.gainDecibels().min(), 0.1, steps));
-            row(
+                board.play(
+                    new Shot(
+                        base.carrierHertz(), l.gainDecibels().min(), base.restSeconds(), steps));
+            trials.row(
                 tried,
                 expected,
                 String.format(
@@ -362,34 +281,23 @@ public final class Conformance {
             board.disarm();
           }
         });
-    if (profile.limits().reportsTemperature()) {
-      tryOut(
-          "temperature",
-          "degree Celsius",
-          () -> {
-            OptionalDouble celsius = board.temperature();
-            row(
-                "temperature",
-                "degree Celsius",
-                celsius.orElse(Double.NaN) + " degC",
-                Verdict.GOOD);
-          });
+  }
+
+  private void temperature() {
+    if (!profile.limits().reportsTemperature()) {
+      return;
     }
-    if (profile.blocks().per() == SampleBlocks.Per.SCAN && limits.maxWindows() > 1) {
-      tryOut(
-          "two windows in one block",
-          "two windows",
-          () -> {
-            List<Step> two = new ArrayList<>(base.steps());
-            two.add(new Wait(l.waitSeconds().snap(1e-3)));
-            two.addAll(base.steps());
-            Scan scan = board.play(new Shot(base.carrierHertz(), l.gainDecibels().min(), 0, two));
-            row(
-                "two windows in one block",
-                "two windows",
-                scan.windows().size() + " windows",
-                Verdict.GOOD);
-          });
-    }
+    String expected = "between 0 and 60 degC";
+    trials.tryOut(
+        "temperature",
+        expected,
+        () -> {
+          double celsius = board.temperature().orElse(Double.NaN);
+          trials.row(
+              "temperature",
+              expected,
+              String.format(Locale.ROOT, "%.2f degC", celsius),
+              celsius >= 0 && celsius <= 60 ? Verdict.GOOD : Verdict.LOOK);
+        });
   }
 }

@@ -41,6 +41,7 @@ final class Conversation {
   private final WireDecoder decoder;
   private final Deque<WireEvent> pending = new ArrayDeque<>();
   private final byte[] buffer = new byte[65_536];
+  private final LastWords ununderstood = new LastWords();
   private volatile boolean stopRequested;
   private String lastHeard = "";
   private long bytesHeard;
@@ -105,13 +106,33 @@ final class Conversation {
   }
 
   private LinkLost lost(LinkException e) {
+    String last = lastText();
     return new LinkLost(
         "the link to the board on "
             + Clean.text(link.description())
-            + " was lost: "
+            + " was lost"
+            + (last.isEmpty() ? "" : " after it said '" + last + "'")
+            + ": "
             + Clean.text(String.valueOf(e.getMessage()))
             + "; check cable and power, then open the board again",
         e);
+  }
+
+  /**
+   * What came last, where it is a text that nobody understood: many who refuse a caller say why in
+   * plain words before they hang up, whatever the board's own language.
+   */
+  private String lastText() {
+    try {
+      for (int n = 1; n > 0; ) {
+        // What had come before the end is still there to be taken.
+        n = link.receive(buffer, 0);
+        ununderstood.add(buffer, n);
+      }
+    } catch (LinkException all) {
+      // It has been taken.
+    }
+    return ununderstood.lastLine();
   }
 
   /**
@@ -128,6 +149,8 @@ final class Conversation {
       if (event != null) {
         if (event instanceof WireEvent.Other other) {
           lastHeard = other.text();
+        } else if (event instanceof WireEvent.Answer || event instanceof WireEvent.SampleBlock) {
+          ununderstood.forget();
         }
         return Optional.of(event);
       }
@@ -142,6 +165,7 @@ final class Conversation {
     try {
       int n = link.receive(buffer, timeoutNanos);
       bytesHeard += n;
+      ununderstood.add(buffer, n);
       decoder.feed(buffer, 0, n, pending::add);
       return n;
     } catch (LinkException e) {

@@ -12,6 +12,7 @@ import coilside.board.link.Link;
 import coilside.board.profile.Command;
 import coilside.board.profile.CommandName;
 import coilside.board.profile.DeviceProfile;
+import coilside.board.profile.Replies;
 import coilside.board.profile.Template;
 import coilside.board.wire.Clean;
 import coilside.shot.Shot;
@@ -53,6 +54,7 @@ final class ProfilePlayer implements ShotPlayer {
   private volatile boolean closed;
   private long lastRunNanos;
   private double lastShotSeconds = Double.NaN;
+  private boolean aheadOfClock;
 
   ProfilePlayer(DeviceProfile profile, Link link, LongSupplier nanoClock, Clock wallClock) {
     this.profile = profile;
@@ -133,16 +135,16 @@ final class ProfilePlayer implements ShotPlayer {
     conversation.await(run.answer());
     Instant started = wallClock.instant();
     long runNanos = conversation.now();
-    double rest = restAsItWas(shot, runNanos);
+    double sinceLastScan = (runNanos - lastRunNanos) * 1e-9 - lastShotSeconds;
     conversation.send(run.bytes());
     lastRunNanos = runNanos;
-    lastShotSeconds = shot.seconds();
+    lastShotSeconds = writer.hostRests(shot) ? shot.playedSeconds() : shot.seconds();
     long deadline = fetch.deadline(shot, builder.blockLengths());
     if (run.answer().isPresent()) {
       fetch.acknowledged(run, deadline);
     }
     fetch.fetchAll(builder, deadline);
-    return builder.scan(started, rest);
+    return builder.scan(started, restAsItWas(shot, runNanos, sinceLastScan));
   }
 
   /** What the board does not know yet. */
@@ -172,17 +174,21 @@ final class ProfilePlayer implements ShotPlayer {
   }
 
   /**
-   * The rest before this scan as it really was: what the board was told, and what the host let pass
-   * between the end of the last scan and now. A board whose time runs faster than the clock (a
-   * simulated one) has only the former.
+   * The rest before a scan as it really was: what the board was told, and what passed on the clock
+   * between the end of the last scan and this run. A board that ever gave back a scan sooner than
+   * it takes to play (a simulated one that is not paced) does not live by our clock: its rest is
+   * what it was told.
    */
-  private double restAsItWas(Shot shot, long runNanos) {
-    if (Double.isNaN(lastShotSeconds)) {
-      return shot.restSeconds();
-    }
-    double since = (runNanos - lastRunNanos) * 1e-9 - lastShotSeconds;
+  private double restAsItWas(Shot shot, long runNanos, double sinceLastScan) {
     double told = writer.hostRests(shot) ? 0 : shot.restSeconds();
-    return Math.max(shot.restSeconds(), told + Math.max(0, since));
+    double least = told + shot.playedSeconds();
+    double took = (conversation.now() - runNanos) * 1e-9;
+    if (least - took > Math.max(1e-3, 0.1 * least)) {
+      aheadOfClock = true;
+    }
+    return aheadOfClock || Double.isNaN(sinceLastScan)
+        ? shot.restSeconds()
+        : Math.max(shot.restSeconds(), told + Math.max(0, sinceLastScan));
   }
 
   /** The bytes of the sample block that came last; empty before the first. Do not change. */
@@ -200,15 +206,25 @@ final class ProfilePlayer implements ShotPlayer {
       unsettled = true;
       try {
         conversation.say(commands);
+        if (silentButComplains()) {
+          recognition.again();
+        }
         unsettled = false;
       } catch (Refused refused) {
         // One by one, or asked until there is no error left: nothing more is on its way.
-        unsettled = profile.replies().ahead() > 1;
+        unsettled = profile.replies().ahead() > 1 || silentButComplains();
         throw refused;
       }
     } finally {
       wire.unlock();
     }
+  }
+
+  /** The answer to a question shows that all before it was taken, or brings the complaint. */
+  private boolean silentButComplains() {
+    return profile.replies().mode() == Replies.Mode.NONE
+        && profile.replies().error().isPresent()
+        && profile.identification().ask().isPresent();
   }
 
   /** Asks once more who is there. */

@@ -4,18 +4,18 @@ import coilside.board.BoardException;
 import coilside.board.BoardException.Refused;
 import coilside.board.BoardLimits;
 import coilside.board.BoardLimits.Range;
-import coilside.board.driver.Conformance.Row;
 import coilside.board.driver.Conformance.Row.Verdict;
 import coilside.board.driver.Conversation.Outgoing;
 import coilside.board.profile.CommandName;
 import coilside.board.profile.DeviceProfile;
 import coilside.board.profile.Replies;
 import coilside.board.profile.ValueName;
+import java.math.BigDecimal;
+import java.math.MathContext;
 import java.util.ArrayList;
 import java.util.EnumMap;
 import java.util.List;
 import java.util.Map;
-import java.util.function.Consumer;
 
 /**
  * Tells the board each setting at its edges, which it must take, and one step beyond, which it must
@@ -30,111 +30,94 @@ final class SettingTrials {
 
   private final DeviceProfile profile;
   private final ProfilePlayer player;
-  private final Consumer<Row> rows;
+  private final Trials trials;
 
-  SettingTrials(DeviceProfile profile, ProfilePlayer player, Consumer<Row> rows) {
+  SettingTrials(DeviceProfile profile, ProfilePlayer player, Trials trials) {
     this.profile = profile;
     this.player = player;
-    this.rows = rows;
+    this.trials = trials;
   }
 
   void all() {
     BoardLimits l = profile.boardLimits();
-    setting("carrier", CommandName.CARRIER, ValueName.CARRIER, l.carrierHertz(), "Hz", 1);
-    setting("receiver gain", CommandName.GAIN, ValueName.GAIN, l.gainDecibels(), "dB", 1);
-    setting("pulse width", CommandName.PULSE, ValueName.WIDTH, l.pulseSeconds(), "us", 1e6);
-    setting("amplitude", CommandName.PULSE, ValueName.AMPLITUDE, l.amplitude(), "", 1);
-    setting("wait", CommandName.WAIT, ValueName.WAIT, l.waitSeconds(), "us", 1e6);
-    setting("dwell time", CommandName.RECEIVE, ValueName.DWELL, l.dwellSeconds(), "us", 1e6);
-    setting(
-        "points",
-        CommandName.RECEIVE,
-        ValueName.POINTS,
-        new Range(l.minPoints(), l.maxPoints(), 1),
-        "",
-        1);
+    setting("carrier", CommandName.CARRIER, ValueName.CARRIER, l.carrierHertz(), "Hz");
+    setting("receiver gain", CommandName.GAIN, ValueName.GAIN, l.gainDecibels(), "dB");
+    setting("pulse width", CommandName.PULSE, ValueName.WIDTH, l.pulseSeconds(), "s");
+    setting("amplitude", CommandName.PULSE, ValueName.AMPLITUDE, l.amplitude(), "");
+    setting("wait", CommandName.WAIT, ValueName.WAIT, l.waitSeconds(), "s");
+    setting("dwell time", CommandName.RECEIVE, ValueName.DWELL, l.dwellSeconds(), "s");
+    Range points = new Range(l.minPoints(), l.maxPoints(), 1);
+    setting("points", CommandName.RECEIVE, ValueName.POINTS, points, "");
   }
 
   private void setting(
-      String what, CommandName command, ValueName value, Range range, String unit, double scale) {
-    String name =
-        what
-            + " "
-            + text(range.min(), scale)
-            + " to "
-            + text(range.max(), scale)
-            + (unit.isEmpty() ? "" : " " + unit);
+      String what, CommandName command, ValueName value, Range range, String unit) {
+    String name = what + " " + text(range.min(), unit) + " to " + text(range.max(), unit);
     if (!profile.command(command).map(c -> c.template().mentions(value)).orElse(false)) {
-      rows.accept(
-          new Row(
-              name,
-              "edges taken, beyond refused",
-              "the profile has no command that only sets it",
-              Verdict.SKIPPED));
+      if (profile.limits().arbitraryShots() || command == CommandName.PULSE) {
+        skip(name, "no command sets it without running the shot");
+      }
       return;
     }
-    if (profile.replies().mode() == Replies.Mode.NONE) {
-      rows.accept(
-          new Row(
-              name,
-              "edges taken, beyond refused",
-              "this board confirms nothing, so a refusal could not be seen",
-              Verdict.SKIPPED));
+    if (!refusalShows()) {
+      skip(name, "this board reports no errors, so a refusal could not be seen");
       return;
     }
     double step = range.step() > 0 ? range.step() : Math.max(range.max() - range.min(), 1e-9) / 100;
-    one(what, command, value, range.min(), true, unit, scale);
-    one(what, command, value, range.max(), true, unit, scale);
+    one(what, command, value, range.min(), true, unit);
+    one(what, command, value, range.max(), true, unit);
     if (range.min() - step > 0 || value == ValueName.GAIN) {
-      one(what, command, value, range.min() - step, false, unit, scale);
+      one(what, command, value, range.min() - step, false, unit);
     }
     if (value != ValueName.AMPLITUDE || range.max() + step <= 1) {
-      one(what, command, value, range.max() + step, false, unit, scale);
+      one(what, command, value, range.max() + step, false, unit);
     }
   }
 
+  private void skip(String tried, String why) {
+    trials.row(tried, "edges taken, beyond refused", why, Verdict.SKIPPED);
+  }
+
+  /** A board that confirms nothing may still complain before it answers the next question. */
+  private boolean refusalShows() {
+    return profile.replies().mode() != Replies.Mode.NONE
+        || profile.replies().error().isPresent() && profile.identification().ask().isPresent();
+  }
+
   private void one(
-      String what,
-      CommandName command,
-      ValueName value,
-      double x,
-      boolean allowed,
-      String unit,
-      double scale) {
-    String tried = what + " " + text(x, scale) + (unit.isEmpty() ? "" : " " + unit);
+      String what, CommandName command, ValueName value, double x, boolean allowed, String unit) {
+    String tried = what + " " + text(x, unit);
     String expected = allowed ? "taken" : "refused";
     List<Outgoing> commands;
     try {
       commands = commands(command, value, x);
     } catch (Refused cannotSay) {
-      rows.accept(
-          allowed
-              ? new Row(tried, expected, cannotSay.getMessage(), Verdict.BAD)
-              : new Row(
-                  tried, expected, "cannot be said in the profile's format", Verdict.SKIPPED));
+      if (allowed) {
+        trials.row(tried, expected, cannotSay.getMessage(), Verdict.BAD);
+      } else {
+        trials.row(tried, expected, "cannot be said in the profile's format", Verdict.SKIPPED);
+      }
       return;
     }
     try {
       player.describe(commands);
-      rows.accept(
-          allowed
-              ? new Row(tried, expected, "taken", Verdict.GOOD)
-              : new Row(
-                  tried,
-                  expected,
-                  "taken: the board allows more than the profile, or does not check",
-                  Verdict.LOOK));
+      if (allowed) {
+        trials.row(tried, expected, "taken", Verdict.GOOD);
+      } else {
+        trials.row(
+            tried,
+            expected,
+            "taken: the board allows more than the profile, or does not check",
+            Verdict.LOOK);
+      }
     } catch (Refused refused) {
-      rows.accept(
-          allowed
-              ? new Row(
-                  tried,
-                  expected,
-                  refused.getMessage() + ": narrow the profile's limits",
-                  Verdict.BAD)
-              : new Row(tried, expected, "refused", Verdict.GOOD));
+      if (allowed) {
+        trials.row(tried, expected, refused.getMessage(), Verdict.BAD);
+      } else {
+        trials.row(tried, expected, "refused", Verdict.GOOD);
+      }
     } catch (BoardException e) {
-      rows.accept(new Row(tried, expected, e.getMessage(), Verdict.BAD));
+      trials.row(tried, expected, e.getMessage(), Verdict.BAD);
     }
   }
 
@@ -172,10 +155,23 @@ final class SettingTrials {
     return out;
   }
 
-  private static String text(double x, double scale) {
-    return new java.math.BigDecimal(x * scale)
-        .round(new java.math.MathContext(12))
-        .stripTrailingZeros()
-        .toPlainString();
+  /** The number in a unit that suits it, all its digits kept: one step beyond must show. */
+  private static String text(double x, String unit) {
+    double size = Math.abs(x);
+    if (unit.equals("Hz")) {
+      return size >= 1e6
+          ? digits(x / 1e6) + " MHz"
+          : size >= 1e3 ? digits(x / 1e3) + " kHz" : digits(x) + " Hz";
+    }
+    if (unit.equals("s")) {
+      return size >= 1
+          ? digits(x) + " s"
+          : size >= 1e-3 ? digits(x * 1e3) + " ms" : digits(x * 1e6) + " us";
+    }
+    return digits(x) + (unit.isEmpty() ? "" : " " + unit);
+  }
+
+  private static String digits(double x) {
+    return new BigDecimal(x).round(new MathContext(12)).stripTrailingZeros().toPlainString();
   }
 }

@@ -3,11 +3,11 @@ package coilside.board.link;
 import coilside.board.link.LinkException.Kind;
 import java.io.IOException;
 import java.io.InputStream;
-import java.nio.file.FileStore;
 import java.nio.file.Files;
 import java.nio.file.LinkOption;
 import java.nio.file.Path;
 import java.nio.file.StandardCopyOption;
+import java.nio.file.attribute.PosixFileAttributeView;
 import java.nio.file.attribute.PosixFilePermission;
 import java.nio.file.attribute.PosixFilePermissions;
 import java.util.Arrays;
@@ -95,9 +95,9 @@ public final class NativeFolder {
     return p;
   }
 
-  private static boolean posix(Path existing) throws IOException {
-    FileStore store = Files.getFileStore(existing);
-    return store.supportsFileAttributeView("posix");
+  /** Asked of the file, not of its mount: inside a container the mount may not be findable. */
+  private static boolean posix(Path existing) {
+    return Files.getFileAttributeView(existing, PosixFileAttributeView.class) != null;
   }
 
   /**

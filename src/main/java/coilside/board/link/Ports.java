@@ -7,6 +7,7 @@ import java.util.Comparator;
 import java.util.List;
 import java.util.Objects;
 import java.util.Optional;
+import java.util.function.Predicate;
 
 /**
  * The serial ports that are present, who they are on USB, and what keeps us from opening them.
@@ -16,6 +17,7 @@ public final class Ports {
   private final PortLocks locks;
   private final Lister lister;
   private final Path proc;
+  private final Predicate<Path> access;
 
   /** Where the raw list comes from. */
   @FunctionalInterface
@@ -28,9 +30,14 @@ public final class Ports {
   }
 
   Ports(PortLocks locks, Lister lister, Path proc) {
+    this(locks, lister, proc, device -> Files.isReadable(device) && Files.isWritable(device));
+  }
+
+  Ports(PortLocks locks, Lister lister, Path proc, Predicate<Path> access) {
     this.locks = Objects.requireNonNull(locks, "locks");
     this.lister = lister;
     this.proc = proc;
+    this.access = access;
   }
 
   /**
@@ -66,8 +73,8 @@ public final class Ports {
     if (holder.isPresent()) {
       return "in use by " + holder.get();
     }
-    if (Files.exists(device) && !(Files.isReadable(device) && Files.isWritable(device))) {
-      return "no permission. " + SerialLink.joinGroup();
+    if (Files.exists(device) && !access.test(device)) {
+      return "you may not open it (" + SerialLink.owner(device) + "). " + SerialLink.joinGroup();
     }
     List<String> users = DeviceUse.holders(proc, device, ProcessHandle.current().pid());
     return users.isEmpty() ? "" : "in use by " + String.join(", ", users);

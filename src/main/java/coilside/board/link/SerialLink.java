@@ -42,7 +42,7 @@ public final class SerialLink extends QueuedLink {
   }
 
   /**
-   * Opens a port and waits until it has settled.
+   * Opens a port.
    *
    * @param path the device, links are followed: "/dev/ttyACM0", "/dev/serial/by-id/..."
    * @param settings speed, frame, lines
@@ -74,7 +74,6 @@ public final class SerialLink extends QueuedLink {
       }
     }
     link.start();
-    settle(link, settings);
     return link;
   }
 
@@ -191,7 +190,7 @@ public final class SerialLink extends QueuedLink {
     return users.isEmpty() ? "another program" : String.join(", ", users);
   }
 
-  private static String owner(Path device) {
+  static String owner(Path device) {
     try {
       Map<String, Object> found = Files.readAttributes(device, "posix:owner,group,permissions");
       return "it belongs to user " + found.get("owner") + " and group " + found.get("group");
@@ -204,17 +203,6 @@ public final class SerialLink extends QueuedLink {
   static String joinGroup() {
     return "Join the group that owns serial ports (dialout on Debian, uucp on some others) with"
         + " `sudo usermod -aG dialout $USER`, then log out and in again";
-  }
-
-  private static void settle(SerialLink link, SerialSettings settings) throws LinkException {
-    try {
-      Thread.sleep(settings.settling().toMillis());
-    } catch (InterruptedException e) {
-      link.close();
-      Thread.currentThread().interrupt();
-      throw new LinkException(
-          Kind.CLOSED, link.description() + ": waiting for the board was interrupted", e);
-    }
   }
 
   /** Unpacks and loads the native library from our private folder, once. */

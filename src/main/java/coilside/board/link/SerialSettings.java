@@ -4,7 +4,8 @@ import java.time.Duration;
 import java.util.Objects;
 
 /**
- * How a serial port is set when it is opened.
+ * How a serial port is set when it is opened. Time to settle is not among it: whoever talks to the
+ * board waits, since a greeting may end the wait early.
  *
  * @param baud speed, baud; boards on native USB take any
  * @param dataBits 5..8
@@ -13,8 +14,6 @@ import java.util.Objects;
  * @param flow who may hold back whom
  * @param dtr the DTR line at open; many boards restart when it changes
  * @param rts the RTS line at open
- * @param settling how long to wait after opening before anything is sent; bytes that come meanwhile
- *     (a greeting) are kept
  * @param writeLimit longest time a write may take
  */
 public record SerialSettings(
@@ -25,7 +24,6 @@ public record SerialSettings(
     Flow flow,
     LineState dtr,
     LineState rts,
-    Duration settling,
     Duration writeLimit) {
 
   /** The parity bit. */
@@ -61,47 +59,31 @@ public record SerialSettings(
     Objects.requireNonNull(flow, "flow");
     Objects.requireNonNull(dtr, "dtr");
     Objects.requireNonNull(rts, "rts");
-    if (settling.isNegative() || settling.compareTo(Duration.ofMinutes(1)) > 0) {
-      throw new IllegalArgumentException("settling time " + settling + " must be 0 s to 60 s");
-    }
     if (writeLimit.isNegative() || writeLimit.isZero()) {
       throw new IllegalArgumentException("write limit " + writeLimit + " must be above 0 s");
     }
   }
 
-  /** 8 data bits, 1 stop bit, no parity, no flow control, DTR and RTS on, no settling. */
+  /** 8 data bits, 1 stop bit, no parity, no flow control, DTR and RTS on. */
   public static SerialSettings at(int baud) {
     return new SerialSettings(
-        baud,
-        8,
-        1,
-        Parity.NONE,
-        Flow.NONE,
-        LineState.ON,
-        LineState.ON,
-        Duration.ZERO,
-        QueuedLink.WRITE_LIMIT);
+        baud, 8, 1, Parity.NONE, Flow.NONE, LineState.ON, LineState.ON, QueuedLink.WRITE_LIMIT);
   }
 
   public SerialSettings withLines(LineState dtrAtOpen, LineState rtsAtOpen) {
     return new SerialSettings(
-        baud, dataBits, stopBits, parity, flow, dtrAtOpen, rtsAtOpen, settling, writeLimit);
-  }
-
-  public SerialSettings withSettling(Duration time) {
-    return new SerialSettings(baud, dataBits, stopBits, parity, flow, dtr, rts, time, writeLimit);
+        baud, dataBits, stopBits, parity, flow, dtrAtOpen, rtsAtOpen, writeLimit);
   }
 
   public SerialSettings withWriteLimit(Duration limit) {
-    return new SerialSettings(baud, dataBits, stopBits, parity, flow, dtr, rts, settling, limit);
+    return new SerialSettings(baud, dataBits, stopBits, parity, flow, dtr, rts, limit);
   }
 
   public SerialSettings withFrame(int bits, Parity parityBit, int stops) {
-    return new SerialSettings(baud, bits, stops, parityBit, flow, dtr, rts, settling, writeLimit);
+    return new SerialSettings(baud, bits, stops, parityBit, flow, dtr, rts, writeLimit);
   }
 
   public SerialSettings withFlow(Flow control) {
-    return new SerialSettings(
-        baud, dataBits, stopBits, parity, control, dtr, rts, settling, writeLimit);
+    return new SerialSettings(baud, dataBits, stopBits, parity, control, dtr, rts, writeLimit);
   }
 }

@@ -9,22 +9,45 @@ import java.net.InetSocketAddress;
 import java.net.NoRouteToHostException;
 import java.net.Socket;
 import java.net.SocketTimeoutException;
+import java.nio.file.Path;
 import java.time.Duration;
 
 /** A link over a raw TCP connection. Small writes leave at once (no gathering of packets). */
 public final class TcpLink extends QueuedLink {
   private static final int SLICE_BYTES = 1 << 16;
 
+  private final AutoCloseable held;
   private final Socket socket;
   private final InputStream in;
   private final OutputStream out;
 
-  private TcpLink(Socket socket, String description, Duration writeLimit, int queueBytes)
+  private TcpLink(
+      Socket socket, String description, Duration writeLimit, int queueBytes, AutoCloseable held)
       throws IOException {
     super(description, writeLimit, queueBytes);
+    this.held = held;
     this.socket = socket;
     this.in = socket.getInputStream();
     this.out = socket.getOutputStream();
+  }
+
+  /**
+   * Connects with the usual limits, and holds the board as a serial port is held.
+   *
+   * @param locks where to say that we hold it
+   * @throws LinkException held by another program, unknown host, nobody listening, out of reach
+   */
+  public static TcpLink open(String host, int port, PortLocks locks) throws LinkException {
+    PortLocks.Held held = locks.take(Path.of(HostPort.text(host, port)));
+    TcpLink link = null;
+    try {
+      link = open(host, port, Duration.ofSeconds(5), WRITE_LIMIT, QUEUE_BYTES, held);
+      return link;
+    } finally {
+      if (link == null) {
+        held.close();
+      }
+    }
   }
 
   /** Connects with the usual limits: 5 s to connect, 5 s to write. */
@@ -45,6 +68,17 @@ public final class TcpLink extends QueuedLink {
   public static TcpLink open(
       String host, int port, Duration connectLimit, Duration writeLimit, int queueBytes)
       throws LinkException {
+    return open(host, port, connectLimit, writeLimit, queueBytes, () -> {});
+  }
+
+  private static TcpLink open(
+      String host,
+      int port,
+      Duration connectLimit,
+      Duration writeLimit,
+      int queueBytes,
+      AutoCloseable held)
+      throws LinkException {
     String where = HostPort.text(host, port);
     InetSocketAddress address = new InetSocketAddress(host, port);
     if (address.isUnresolved()) {
@@ -55,7 +89,7 @@ public final class TcpLink extends QueuedLink {
     Socket socket = new Socket();
     try {
       socket.connect(address, (int) Math.min(Integer.MAX_VALUE, connectLimit.toMillis()));
-      return adopt(socket, where, writeLimit, queueBytes);
+      return adopt(socket, where, writeLimit, queueBytes, held);
     } catch (IOException | SecurityException e) {
       quietly(socket);
       throw new LinkException(
@@ -80,11 +114,12 @@ public final class TcpLink extends QueuedLink {
     return "cannot connect: " + e.getMessage();
   }
 
-  static TcpLink adopt(Socket socket, String where, Duration writeLimit, int queueBytes)
+  static TcpLink adopt(
+      Socket socket, String where, Duration writeLimit, int queueBytes, AutoCloseable held)
       throws IOException {
     socket.setTcpNoDelay(true);
     socket.setKeepAlive(true);
-    TcpLink link = new TcpLink(socket, where, writeLimit, queueBytes);
+    TcpLink link = new TcpLink(socket, where, writeLimit, queueBytes, held);
     link.start();
     return link;
   }
@@ -112,5 +147,6 @@ public final class TcpLink extends QueuedLink {
   @Override
   void releaseLine() {
     quietly(socket);
+    quietly(held);
   }
 }

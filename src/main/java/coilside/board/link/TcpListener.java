@@ -93,7 +93,7 @@ public final class TcpListener implements AutoCloseable {
     try {
       InetSocketAddress peer = (InetSocketAddress) socket.getRemoteSocketAddress();
       String who = HostPort.text(peer.getAddress().getHostAddress(), peer.getPort());
-      return TcpLink.adopt(socket, who, QueuedLink.WRITE_LIMIT, QueuedLink.QUEUE_BYTES);
+      return TcpLink.adopt(socket, who, QueuedLink.WRITE_LIMIT, QueuedLink.QUEUE_BYTES, () -> {});
     } catch (IOException e) {
       TcpLink.quietly(socket);
       throw e;

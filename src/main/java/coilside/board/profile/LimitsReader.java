@@ -119,6 +119,7 @@ final class LimitsReader {
         duty,
         dutyWindow,
         !fixed,
+        commands.values().stream().anyMatch(c -> c.template().mentions(ValueName.PHASE)),
         commands.containsKey(CommandName.REPEAT),
         commands.values().stream().anyMatch(c -> c.template().mentions(ValueName.RECEIVE_PHASE)),
         commands.containsKey(CommandName.TEMPERATURE));
@@ -177,6 +178,7 @@ final class LimitsReader {
         duty,
         b.dutyWindowSeconds(),
         b.arbitraryShots(),
+        b.pulsePhases(),
         b.repeatLoops(),
         b.settableReceivePhase(),
         b.reportsTemperature());

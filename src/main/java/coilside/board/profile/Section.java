@@ -51,6 +51,9 @@ final class Section {
 
   /** The same where the key is one of several names that {@code generalKey} stands for. */
   Section section(String key, String generalKey) {
+    if (asked.get(key) != null) {
+      return asked.get(key);
+    }
     Object value = raw(key, generalKey);
     TomlTable inner = null;
     if (value instanceof TomlTable t) {

@@ -37,7 +37,8 @@ final class WholeProfile {
 
     LimitsReader limitsReader = new LimitsReader(top.section("limits"), top.section("operator"));
     double tick = limitsReader.tickSeconds();
-    Map<ValueName, WireValue> values = new ValuesReader(top.section("values"), lines, tick).read();
+    Section valuesSection = top.section("values");
+    Map<ValueName, WireValue> values = new ValuesReader(valuesSection, lines, tick).read();
     CommandsReader commandsReader = new CommandsReader(top.section("commands"), speech, values);
     Map<CommandName, Command> commands = commandsReader.read();
 
@@ -67,6 +68,7 @@ final class WholeProfile {
     BoardLimits board = limitsReader.board(commands, samples);
     BoardLimits limits = limitsReader.narrowed(board);
     OperatorSection operator = limitsReader.operator(limits);
+    new FieldWidths(valuesSection, values).check(board);
     commandsReader.checkTogether(replies, blocks, board, samples);
 
     if (!problems.isEmpty()) {

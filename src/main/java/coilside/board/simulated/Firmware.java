@@ -11,7 +11,6 @@ import coilside.board.profile.ValueName;
 import coilside.board.profile.WireValue;
 import coilside.board.simulated.FirmwareReceiver.Counts;
 import coilside.shot.Shot;
-import java.nio.charset.StandardCharsets;
 import java.util.ArrayDeque;
 import java.util.Deque;
 import java.util.HashMap;
@@ -28,7 +27,6 @@ import java.util.Optional;
  * answers come when they would on a real board. For use by one thread.
  */
 public final class Firmware {
-  private static final int LONGEST_ERROR_QUEUE = 16;
   private static final double MOST_SCANS = 1e6;
 
   private final DeviceProfile profile;
@@ -37,16 +35,16 @@ public final class Firmware {
   private final FirmwareDialect dialect;
   private final FirmwareBlocks blocks;
   private final FirmwareShot shot;
+  private final FirmwareDuty duty;
   private final Map<String, WireValue> values = new HashMap<>();
-  private final Deque<byte[]> outgoing = new ArrayDeque<>();
-  private final Deque<FirmwareRefusal> errors = new ArrayDeque<>();
+  private final FirmwareVoice voice;
   private final Deque<Integer> fetches = new ArrayDeque<>();
   private FirmwareFaults faults;
   private FirmwareRun run;
   private long idleSinceNanos = Long.MIN_VALUE;
   private int commands;
-  private int answers;
   private int scansPlayed;
+  private String echoed = "";
 
   /**
    * @param profile how it speaks
@@ -65,8 +63,10 @@ public final class Firmware {
         profile.framing() instanceof Framing.Lines lines
             ? new FirmwareLines(lines)
             : new FirmwareFrames((Framing.Cobs) profile.framing());
+    this.voice = new FirmwareVoice(profile, dialect, faults);
     this.blocks = new FirmwareBlocks(profile, dialect);
     this.shot = new FirmwareShot(profile);
+    this.duty = new FirmwareDuty(profile.boardLimits());
     for (Map.Entry<ValueName, WireValue> value : profile.values().entrySet()) {
       values.put(value.getKey().word(), value.getValue());
     }
@@ -78,6 +78,7 @@ public final class Firmware {
   /** From now on these things go wrong. */
   public void setFaults(FirmwareFaults changed) {
     faults = changed;
+    voice.setFaults(changed);
   }
 
   /** Somebody has connected: the board starts anew and greets. */
@@ -89,18 +90,18 @@ public final class Firmware {
   public void disconnect() {
     halt();
     dialect.forget();
-    outgoing.clear();
+    voice.outgoing().clear();
   }
 
   private void restart() {
     halt();
     dialect.forget();
-    outgoing.clear();
-    errors.clear();
+    voice.outgoing().clear();
+    voice.forgetErrors();
     shot.reset();
     profile
         .greeting()
-        .ifPresent(g -> outgoing.add(dialect.wrap(dialect.say(g, Map.of("name", name())))));
+        .ifPresent(g -> voice.outgoing().add(dialect.wrap(dialect.say(g, Map.of("name", name())))));
   }
 
   private void halt() {
@@ -135,7 +136,7 @@ public final class Firmware {
           obey(message.get(), nowNanos);
         }
       } catch (FirmwareRefusal e) {
-        refuse(e);
+        voice.refuse(e);
       }
     }
   }
@@ -147,15 +148,18 @@ public final class Firmware {
    * @return the bytes; empty when there is nothing to say yet
    */
   public Optional<byte[]> say(long nowNanos) {
-    while (outgoing.isEmpty() && run != null && mayPlay() && dueNanos(nowNanos) <= nowNanos) {
+    while (voice.outgoing().isEmpty()
+        && run != null
+        && mayPlay()
+        && dueNanos(nowNanos) <= nowNanos) {
       playOne(nowNanos);
     }
-    return Optional.ofNullable(outgoing.poll());
+    return Optional.ofNullable(voice.outgoing().poll());
   }
 
   /** When the board will have something to say if it hears nothing; Long.MAX_VALUE for never. */
   public long nextNanos(long nowNanos) {
-    if (!outgoing.isEmpty()) {
+    if (!voice.outgoing().isEmpty()) {
       return nowNanos;
     }
     return run != null && mayPlay() ? dueNanos(nowNanos) : Long.MAX_VALUE;
@@ -179,16 +183,21 @@ public final class Firmware {
     if (faults.silentAfterCommands() > 0 && commands > faults.silentAfterCommands()) {
       return;
     }
-    if (profile.framing() instanceof Framing.Lines lines && lines.echo()) {
-      outgoing.add(dialect.wrap(message));
-    }
+    echoed = message;
+    echo();
     Replies replies = profile.replies();
     if (replies.question().isPresent() && matches(replies.question().get(), message)) {
-      answerQuestion();
+      voice.answerQuestion();
     } else if (profile.identification().ask().filter(t -> matches(t, message)).isPresent()) {
-      answer(identity());
+      voice.answer(identity());
     } else if (!command(message, nowNanos)) {
       settingUp(message);
+    }
+  }
+
+  private void echo() {
+    if (profile.framing() instanceof Framing.Lines lines && lines.echo()) {
+      voice.outgoing().add(dialect.wrap(echoed));
     }
   }
 
@@ -248,20 +257,24 @@ public final class Firmware {
       case RECEIVE_ONLY -> begin(shot.fixed(told, false), 1, command, nowNanos);
       case FETCH -> fetch(told.getOrDefault("window", -1.0).intValue());
       case STOP -> {
+        if (paced && run != null && !run.allPlayed()) {
+          duty.stopped(nowNanos * 1e-9);
+        }
         halt();
         idleSinceNanos = nowNanos;
-        outgoing.clear();
-        confirm(command);
+        voice.outgoing().clear();
+        echo();
+        voice.confirm(command);
       }
       case TEMPERATURE ->
-          answer(
+          voice.answer(
               dialect.say(
                   command.answer().orElseThrow(),
                   Map.of("celsius", receiver.temperatureCelsius())));
       default -> {
         refuseWhileRunning();
         build(name, told);
-        confirm(command);
+        voice.confirm(command);
       }
     }
   }
@@ -287,12 +300,13 @@ public final class Firmware {
     if (scans < 1 || scans > MOST_SCANS || scans != Math.rint(scans)) {
       throw FirmwareRefusal.range("scans " + scans + " outside 1.." + MOST_SCANS);
     }
+    duty.admit(whole, (long) scans, nowNanos * 1e-9);
     if (paced && idleSinceNanos != Long.MIN_VALUE) {
       receiver.idle(Math.max(0, nowNanos - idleSinceNanos) * 1e-9);
     }
     fetches.clear();
     run = new FirmwareRun(whole, (long) scans, nowNanos);
-    confirm(command);
+    voice.confirm(command);
   }
 
   private void playOne(long nowNanos) {
@@ -314,10 +328,10 @@ public final class Firmware {
   private void deliver(List<Counts> taken) {
     if (blocks.perWindow()) {
       for (int w = 0; w < taken.size(); w++) {
-        outgoing.add(blocks.window(taken.get(w), w, faults));
+        voice.outgoing().add(blocks.window(taken.get(w), w, faults));
       }
     } else {
-      outgoing.add(blocks.scan(taken, faults));
+      voice.outgoing().add(blocks.scan(taken, faults));
     }
     tellEnd();
   }
@@ -325,13 +339,13 @@ public final class Firmware {
   private void tellEnd() {
     byte[] mark = blocks.endMark();
     if (mark.length > 0) {
-      outgoing.add(mark);
+      voice.outgoing().add(mark);
     }
   }
 
   private void fetch(int window) throws FirmwareRefusal {
     if (run == null) {
-      answerWithError(FirmwareRefusal.conflict("there are no samples to fetch"));
+      voice.answerWithError(FirmwareRefusal.conflict("there are no samples to fetch"));
       return;
     }
     fetches.add(window);
@@ -345,10 +359,10 @@ public final class Firmware {
       int window = fetches.remove();
       List<Counts> taken = run.windows();
       if (window >= taken.size()) {
-        answerWithError(
+        voice.answerWithError(
             FirmwareRefusal.range("window " + window + " outside 0.." + (taken.size() - 1)));
       } else if (window >= 0) {
-        outgoing.add(blocks.window(taken.get(window), window, faults));
+        voice.outgoing().add(blocks.window(taken.get(window), window, faults));
         run.fetched(window);
         if (run.fetchedAll()) {
           tellEnd();
@@ -365,83 +379,17 @@ public final class Firmware {
       for (Template template : known) {
         if (matches(template, message)) {
           if (message.equalsIgnoreCase("*CLS")) {
-            errors.clear();
+            voice.forgetErrors();
           } else if (message.equalsIgnoreCase("*RST")) {
             halt();
             shot.reset();
           }
-          confirm(new Command(template, Optional.empty(), false));
+          voice.confirm(new Command(template, Optional.empty(), false));
           return;
         }
       }
     }
     String shown = message.length() > 40 ? message.substring(0, 40) : message;
     throw FirmwareRefusal.undefined(shown.replaceAll("[^\\x20-\\x7e]|\"", "."));
-  }
-
-  private void confirm(Command command) {
-    if (command.silent()) {
-      return;
-    }
-    if (command.answer().isPresent()) {
-      answer(dialect.say(command.answer().get(), Map.of()));
-    } else if (profile.replies().mode() == Replies.Mode.EACH) {
-      profile.replies().success().ifPresent(e -> answer(dialect.say(e, Map.of())));
-    }
-  }
-
-  private void answerQuestion() {
-    FirmwareRefusal first = errors.poll();
-    if (first != null) {
-      sayError(first);
-    } else {
-      profile.replies().success().ifPresent(e -> answer(dialect.say(e, Map.of())));
-    }
-  }
-
-  private void refuse(FirmwareRefusal e) {
-    if (profile.replies().mode() != Replies.Mode.ASKED) {
-      sayError(e);
-    } else if (errors.size() < LONGEST_ERROR_QUEUE) {
-      errors.add(e);
-    } else {
-      errors.removeLast();
-      errors.add(FirmwareRefusal.queueOverflow());
-    }
-  }
-
-  /** In place of an answer that cannot be given. */
-  private void answerWithError(FirmwareRefusal otherwise) {
-    FirmwareRefusal first = errors.poll();
-    sayError(first == null ? otherwise : first);
-  }
-
-  private void sayError(FirmwareRefusal e) {
-    if (profile.replies().error().isEmpty()) {
-      return;
-    }
-    Expectation error = profile.replies().error().get();
-    String text = e.getMessage().length() > 200 ? e.getMessage().substring(0, 200) : e.getMessage();
-    String line = dialect.say(error, Map.of("code", e.code(), "text", text));
-    boolean fits =
-        error instanceof Expectation.LinePattern p && p.pattern().match(line).isPresent();
-    answer(fits ? line : dialect.say(error, Map.of("code", Math.abs(e.code()), "text", text)));
-  }
-
-  private void answer(String message) {
-    answers++;
-    if (faults.rubbishBeforeOneAnswerIn() > 0 && answers % faults.rubbishBeforeOneAnswerIn() == 0) {
-      outgoing.add(rubbish());
-    }
-    if (!faults.remark().isEmpty() && answers == faults.remarkBeforeAnswer()) {
-      outgoing.add(dialect.wrap(faults.remark()));
-    }
-    outgoing.add(dialect.wrap(message));
-  }
-
-  private byte[] rubbish() {
-    return profile.framing() instanceof Framing.Lines
-        ? dialect.wrap("@\u00ff~#9\u001b[2J??")
-        : "\u0007\u0001\u00ff#rubbish\u0000".getBytes(StandardCharsets.ISO_8859_1);
   }
 }

@@ -94,7 +94,10 @@ final class FirmwareBlocks {
     said.put("bytes", data.length);
     said.put("points", data.length / samples.bytesPerSample());
     said.put("window", window);
-    blocks.checksum().ifPresent(c -> said.put("checksum", hex(c, data, 0, data.length)));
+    blocks
+        .checksum()
+        .filter(c -> c.place() == BlockChecksum.Place.HEADER)
+        .ifPresent(c -> said.put("checksum", hex(c, data, 0, data.length)));
     return dialect.wrap(dialect.say(blocks.header().orElseThrow(), said));
   }
 

@@ -4,19 +4,17 @@ import coilside.board.link.Link;
 import coilside.board.link.LinkException;
 import coilside.board.link.PseudoTerminal;
 import coilside.board.link.TcpListener;
-import java.time.Duration;
 import java.util.Optional;
 import java.util.concurrent.atomic.AtomicBoolean;
 import java.util.function.LongSupplier;
 
 /**
  * Serves one simulated board, on a daemon thread of its own: on a pseudo-terminal, on TCP (one
- * program at a time; it may come and go), or over a link inside this program. Closing it stops the
- * board and lets the line go.
+ * program at a time; it may come and go, a second one is told who is there and turned away), or
+ * over a link inside this program. Closing it stops the board and lets the line go.
  */
 public final class FirmwareServer implements AutoCloseable {
   private static final long LONGEST_WAIT_NANOS = 200_000_000L;
-  private static final Duration ACCEPT_WAIT = Duration.ofMillis(200);
 
   private final Firmware firmware;
   private final LongSupplier nanos;
@@ -94,8 +92,9 @@ public final class FirmwareServer implements AutoCloseable {
   }
 
   private void takeTurns(TcpListener listener) throws LinkException {
+    FirmwareDoor door = new FirmwareDoor(listener);
     while (!closed.get()) {
-      Optional<Link> caller = listener.accept(ACCEPT_WAIT);
+      Optional<Link> caller = door.next();
       if (caller.isEmpty()) {
         continue;
       }
@@ -106,6 +105,7 @@ public final class FirmwareServer implements AutoCloseable {
         // This caller went away; the next may come.
       } finally {
         firmware.disconnect();
+        door.left();
       }
     }
   }

@@ -81,8 +81,8 @@ public final class SimulatedBench implements FirmwareReceiver {
     return magnet.seconds();
   }
 
-  /** What only tests may know. */
-  SimulatedTruth truth() {
+  /** What only tests may know; the architecture test keeps the measuring side from it. */
+  public SimulatedTruth truth() {
     return new SimulatedTruth(scenario, magnet, spins);
   }
 

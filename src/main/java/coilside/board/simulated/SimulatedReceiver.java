@@ -19,6 +19,7 @@ import java.util.SplittableRandom;
 final class SimulatedReceiver {
   private static final int CHUNK = 16384;
   private static final int KEPT = 8;
+  private static final double BLOCK_SECONDS = 100e-6;
   private static final double FLAT = 0.4;
   private static final double CLOSED = 0.5;
 
@@ -161,29 +162,37 @@ final class SimulatedReceiver {
     }
   }
 
-  /** From the magnet's frame to the carrier's, mains modulation and cable phase included. */
+  /**
+   * From the magnet's frame to the carrier's, mains modulation and cable phase included. The phase
+   * is exact at the ends of blocks and linear within them: for 10 Hz of swing at 50 Hz that is
+   * within 1e-5 rad.
+   */
   private void carry(double[] re, double[] im, double offset, double dwell, double start) {
-    double phase = scenario.sample().phaseRadians();
-    double turns = magnet.turns() + offset * start;
-    boolean modulated = magnet.modulated();
-    double stepRe = Math.cos(2 * Math.PI * offset * dwell);
-    double stepIm = Math.sin(2 * Math.PI * offset * dwell);
-    double c = 1;
-    double s = 0;
-    for (int k = 0; k < re.length; k++) {
-      if (modulated || k % 64 == 0) {
-        double now = turns + offset * dwell * k;
-        now += magnet.mainsTurns(start + k * dwell);
-        double angle = phase + 2 * Math.PI * (now - Math.rint(now));
-        c = Math.cos(angle);
-        s = Math.sin(angle);
+    double cable = scenario.sample().phaseRadians() / (2 * Math.PI);
+    int block = 64;
+    if (magnet.modulated()) {
+      block = (int) Math.max(1, Math.min(block, BLOCK_SECONDS / dwell));
+    }
+    double from = magnet.turns() + cable + offset * start + magnet.mainsTurns(start);
+    for (int at = 0; at < re.length; at += block) {
+      double later = start + (at + block) * dwell;
+      double to = magnet.turns() + cable + offset * later + magnet.mainsTurns(later);
+      double each = 2 * Math.PI * (to - from) / block;
+      double stepRe = Math.cos(each);
+      double stepIm = Math.sin(each);
+      double angle = 2 * Math.PI * (from - Math.rint(from));
+      double c = Math.cos(angle);
+      double s = Math.sin(angle);
+      int end = Math.min(re.length, at + block);
+      for (int k = at; k < end; k++) {
+        double x = re[k] * c - im[k] * s;
+        im[k] = re[k] * s + im[k] * c;
+        re[k] = x;
+        double t = c * stepRe - s * stepIm;
+        s = c * stepIm + s * stepRe;
+        c = t;
       }
-      double x = re[k] * c - im[k] * s;
-      im[k] = re[k] * s + im[k] * c;
-      re[k] = x;
-      double t = c * stepRe - s * stepIm;
-      s = c * stepIm + s * stepRe;
-      c = t;
+      from = to;
     }
   }
 

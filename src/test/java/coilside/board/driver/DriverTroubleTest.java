@@ -29,6 +29,8 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.time.Clock;
 import java.util.List;
+import java.util.regex.Matcher;
+import java.util.regex.Pattern;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
 
@@ -358,5 +360,84 @@ class DriverTroubleTest {
                 board.play(
                     shot(new Pulse(20e-6, 0, 1), new Wait(1e-3), new Pulse(10e-6, 0, 1), WINDOW)));
     assertTrue(refused.getMessage().contains("only one pulse"), refused.getMessage());
+  }
+
+  /** A board that lives by the clock rests longer when the host dawdles; one that does not, not. */
+  @Test
+  void theRestIsToldAsItWas() throws BoardException {
+    TalkingLink link = new TalkingLink(DriverTroubleTest::plain);
+    Board board = open(PLAIN, link);
+    long[] due = {Long.MAX_VALUE};
+    link.board =
+        c -> {
+          if (c.startsWith("go ")) {
+            due[0] = link.getAsLong() + 500_190_000L;
+            return latin("ok\r\n");
+          }
+          return plain(c);
+        };
+    link.whenWaitingInVain =
+        () -> {
+          if (link.getAsLong() >= due[0]) {
+            due[0] = Long.MAX_VALUE;
+            link.say(join(block("data 0 64\r\n", 0), latin("done\r\n")));
+          }
+        };
+    assertEquals(0.5, board.play(usual()).restSeconds());
+    link.pass(2_000_000_000L);
+    assertEquals(2.5, board.play(usual()).restSeconds(), 0.05);
+
+    TalkingLink fast = new TalkingLink(DriverTroubleTest::plain);
+    Board ahead = open(PLAIN, fast);
+    ahead.play(usual());
+    fast.pass(2_000_000_000L);
+    assertEquals(0.5, ahead.play(usual()).restSeconds());
+  }
+
+  /** The board of the reference page's worked example, as its sheet describes it. */
+  @Test
+  void theWorkedExampleOfTheReferencePageWorks() throws Exception {
+    StringBuilder toml = new StringBuilder();
+    Matcher m =
+        Pattern.compile("(?s)```toml\n(.*?)```")
+            .matcher(Files.readString(Path.of("device-profiles", "README.md")));
+    while (m.find()) {
+      toml.append(m.group(1).replaceAll("(?m)^   ", "")).append('\n');
+    }
+    DeviceProfile profile =
+        ProfileReader.read("magnet-box.toml", toml.toString().getBytes(StandardCharsets.UTF_8))
+            .profile()
+            .orElseThrow();
+    byte[] samples = new byte[4 * 2048];
+    samples[0] = 100; // I of the first point
+    samples[2] = -100; // Q of the first point, low byte of -100
+    samples[3] = -1;
+    TalkingLink link =
+        new TalkingLink(
+            c -> {
+              if (c.equals("?")) {
+                return latin("magnet-box 2\n");
+              }
+              return c.startsWith("shot ")
+                  ? join(latin("+\nn=2048\n"), samples)
+                  : c.matches("freq [0-9.]+|att [0-9]+") ? latin("+\n") : latin("-what?\n");
+            });
+    Board board = open(profile, link);
+    assertEquals("magnet-box 2", board.identity().name());
+    Scan scan =
+        board.play(
+            new Shot(
+                8.09e6,
+                28,
+                0.5,
+                List.of(new Pulse(10e-6, 0, 1), new Wait(50e-6), new Receive(2048, 5e-6, 0))));
+    assertEquals(List.of("freq 8.090000", "att 12", "shot 10 50 2048 5"), link.heard);
+    double volts = 100 * 30.5e-6 / Math.pow(10, 28 / 20.0);
+    assertEquals(volts, scan.fid().re(0), 1e-12);
+    assertEquals(-volts, scan.fid().im(0), 1e-12);
+    assertEquals(55e-6, scan.fid().startSeconds(), 1e-15);
+    link.heard.clear();
+    board.play(new Shot(8.09e6, 28, 0.5, List.of(new Receive(2048, 5e-6, 0))));
+    assertEquals(List.of("freq 8.090000", "att 12", "shot 0 0 2048 5"), link.heard);
   }
 }

@@ -133,8 +133,7 @@ class SerialLinkTest extends LinkContract {
     SerialSettings settings =
         SerialSettings.at(9600)
             .withLines(SerialSettings.LineState.OFF, SerialSettings.LineState.OFF)
-            .withFrame(8, SerialSettings.Parity.NONE, 2)
-            .withSettling(Duration.ofMillis(1));
+            .withFrame(8, SerialSettings.Parity.NONE, 2);
     try (PseudoTerminal board = PseudoTerminal.open(PseudoTerminal.WhenNobodyReads.STALL);
         SerialLink link = SerialLink.open(board.path().toString(), settings, locks())) {
       link.send(bytes("?"));

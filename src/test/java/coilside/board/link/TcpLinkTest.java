@@ -8,10 +8,13 @@ import coilside.board.link.LinkException.Kind;
 import java.net.InetAddress;
 import java.net.ServerSocket;
 import java.net.Socket;
+import java.nio.file.Path;
 import java.time.Duration;
+import java.time.Instant;
 import java.util.concurrent.TimeUnit;
 import org.junit.jupiter.api.AfterEach;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.io.TempDir;
 
 class TcpLinkTest extends LinkContract {
   private ServerSocket deaf;
@@ -48,6 +51,25 @@ class TcpLinkTest extends LinkContract {
     assertEquals(Kind.MISSING, e.kind());
     assertTrue(
         e.getMessage().startsWith("127.0.0.1:" + free + ": nothing listens"), e.getMessage());
+  }
+
+  @Test
+  void aBoardOnTheNetworkIsHeldByOneProgram(@TempDir Path folder) throws Exception {
+    PortLocks locks = new PortLocks(folder, "a test", () -> Instant.EPOCH);
+    try (TcpListener listener = TcpListener.onLoopback(0)) {
+      int port = listener.port();
+      try (Link first = TcpLink.open("127.0.0.1", port, locks)) {
+        LinkException e =
+            assertThrows(LinkException.class, () -> TcpLink.open("127.0.0.1", port, locks));
+        assertEquals(Kind.BUSY, e.kind());
+        assertTrue(e.getMessage().contains("in use by 'a test' (process "), e.getMessage());
+        assertEquals("127.0.0.1:" + port, first.description());
+      }
+      TcpLink.open("127.0.0.1", port, locks).close();
+    }
+    LinkException gone =
+        assertThrows(LinkException.class, () -> TcpLink.open("no-such-host.invalid", 1, locks));
+    assertEquals(Kind.MISSING, gone.kind());
   }
 
   @Test

@@ -233,6 +233,7 @@ class ProfileReaderTest {
         "scpi-console|kind = \"block\"|kind = \"frame\"|samples.block.kind is \"frame\"|line or block",
         "scpi-console|format = \"integer\"|format = \"u32\"|values.carrier.format is \"u32\"|integer",
         "radio-frame|carrier = \"10 {carrier}\"|carrier = \"1 {carrier}\"|commands.carrier|hexadecimal",
+        "radio-frame|to = \"500us\", step|to = \"5ms\", step|values.width.format is \"u16\"|20 to 100000",
         "radio-frame|{code:u8}|{code}|replies.error|binary type",
         "radio-frame|{first:u32} {samples:samples}|{samples:samples} {first:u32}|header|last field",
         "plain-line-console|header = 'data (?<window>[0-9]+) (?<bytes>[0-9]+)'|header = 'data (?<window>[0-9]+) [0-9]+'|samples.block.header|bytes",
@@ -273,6 +274,14 @@ class ProfileReaderTest {
     assertEquals(
         List.of("tcp.port", "open.settle", "samples.type", "limits.window"),
         problems.stream().map(ProfileProblem::key).toList());
+  }
+
+  @Test
+  void oneMistakeIsOneProblem() throws IOException {
+    ProfileReading reading = changed("radio-frame", "to = \"500us\", step", "to = \"5ms\", step");
+    assertEquals(
+        List.of("values.width.format"),
+        reading.problems().stream().map(ProfileProblem::key).toList());
   }
 
   @Test

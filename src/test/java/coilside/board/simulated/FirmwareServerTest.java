@@ -4,6 +4,8 @@ import static org.junit.jupiter.api.Assertions.assertEquals;
 import static org.junit.jupiter.api.Assertions.assertThrows;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
+import coilside.board.BoardException;
+import coilside.board.driver.Boards;
 import coilside.board.link.Link;
 import coilside.board.link.LinkException;
 import coilside.board.link.MemoryLink;
@@ -13,6 +15,7 @@ import coilside.board.link.SerialSettings;
 import coilside.board.link.TcpLink;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Path;
+import java.time.Clock;
 import java.time.Instant;
 import java.util.concurrent.TimeUnit;
 import org.junit.jupiter.api.Test;
@@ -83,6 +86,33 @@ class FirmwareServerTest {
         assertEquals(
             LinkException.Kind.LOST,
             assertThrows(LinkException.class, () -> receive(link, 1)).kind());
+      }
+    }
+  }
+
+  @Test
+  void onTcpASecondProgramIsToldWhoIsThereAndTurnedAway() throws Exception {
+    try (FirmwareServer server =
+        FirmwareServer.onTcp(firmware(), "127.0.0.1", 0, System::nanoTime)) {
+      int port = Integer.parseInt(server.address().replace("127.0.0.1:", ""));
+      try (Link first = TcpLink.open("127.0.0.1", port)) {
+        assertEquals(IDENTITY, ask(first));
+        Link second = TcpLink.open("127.0.0.1", port);
+        BoardException refused =
+            assertThrows(
+                BoardException.LinkLost.class,
+                () ->
+                    Boards.open(
+                        FirmwareExchangeTest.profile("scpi-console"),
+                        second,
+                        System::nanoTime,
+                        Clock.systemUTC(),
+                        false));
+        assertTrue(refused.getMessage().contains("busy: in use by 127.0.0.1:"), refused.toString());
+        assertEquals(IDENTITY, ask(first), "the first one is not disturbed");
+      }
+      try (Link third = TcpLink.open("127.0.0.1", port)) {
+        assertEquals(IDENTITY, ask(third), "the place is free again");
       }
     }
   }

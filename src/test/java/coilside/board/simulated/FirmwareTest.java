@@ -90,6 +90,26 @@ class FirmwareTest {
   }
 
   @Test
+  void aRunOverTheBoardsDutyCycleIsRefusedAndTheNextOneMayCome() {
+    Firmware f = plain(FirmwareFaults.none());
+    answer(f, "new\npulse 500.0 0 100.0\nlisten 16 1.0\nend\n");
+    // 0.5 ms on in every 4 ms is 12.5 %, the board's limit 10 % of any second.
+    String refused = answer(f, "go 1000 4.0000\n");
+    assertTrue(refused.startsWith("err 221 Settings conflict;transmitter on for 10.0"), refused);
+    assertTrue(refused.endsWith(" % of 1.000 s, limit 10.00 %\r\n"), refused);
+    assertTrue(answer(f, "go 200 4.0000\n").startsWith("ok\r\n"), "as many as a second stands");
+    assertTrue(answer(f, "go 1 4.0000\n").startsWith("err 221 "), "the second is not over yet");
+    now += 1_000_000_000L;
+    assertTrue(answer(f, "go 1 4.0000\n").startsWith("ok\r\n"));
+    // 0.5 ms in every 5 ms is the limit itself.
+    now += 10_000_000_000L;
+    assertTrue(answer(f, "go 1000 5.0000\n").startsWith("ok\r\n"));
+    // What does not transmit does not count.
+    answer(f, "new\npulse 500.0 0 0.0\nlisten 16 1.0\nend\n");
+    assertTrue(answer(f, "go 1000 1.0000\n").startsWith("ok\r\n"));
+  }
+
+  @Test
   void numbersOfTheWrongFormAreRefused() {
     Firmware f = plain(FirmwareFaults.none());
     for (String wrong :
