@@ -62,6 +62,15 @@ record CommonShape(
         fids.add(quiet.strip(scans.get(i).fid()));
       }
     }
+    double[] seconds = new double[indices.size()];
+    double now = 0;
+    for (int i = 0, j = 0; i < shots.size(); i++) {
+      now += scans.get(i).restSeconds() + shots.get(i).playedSeconds();
+      if (!shots.get(i).receiveOnly()) {
+        seconds[j++] = now;
+      }
+    }
+    fids = LineTrack.of(fids, seconds).steadied(fids);
     DecayResult decay = sharedDecay(fids, quiet.sigma());
     int n = fids.size();
     double[] re = new double[n];
