@@ -172,8 +172,7 @@ final class DecayMethod implements Method {
       if (!shots.get(i).receiveOnly()) {
         Fid fid = scans.get(i).fid();
         average.add(
-            quiet.isPresent() ? quiet.get().strip(fid) : fid,
-            BenchShots.firstPhase(shots.get(i)));
+            quiet.isPresent() ? quiet.get().strip(fid) : fid, BenchShots.firstPhase(shots.get(i)));
       }
     }
     return average.mean();

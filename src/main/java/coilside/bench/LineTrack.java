@@ -38,8 +38,7 @@ record LineTrack(double[] offsets) {
       try {
         DecayResult fit =
             DecayFit.fit(
-                fids.get(j),
-                DecayFit.Options.usual().withForm(DecayFit.Form.ONE_EXPONENTIAL));
+                fids.get(j), DecayFit.Options.usual().withForm(DecayFit.Form.ONE_EXPONENTIAL));
         f[j] = fit.offsetHertz().value();
         u[j] = fit.offsetHertz().u();
         mean += f[j] / (u[j] * u[j]);

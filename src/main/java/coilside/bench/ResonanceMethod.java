@@ -123,11 +123,7 @@ final class ResonanceMethod implements Method {
   private static Detection detectBeside(Acquisition a, Fid raw) {
     Fid fid = withoutOffset(raw);
     return Detection.of(
-        fid,
-        sigma(a, fid),
-        excluded(a, raw.carrierHertz()),
-        1,
-        FALSE_ALARM_PROBABILITY);
+        fid, sigma(a, fid), excluded(a, raw.carrierHertz()), 1, FALSE_ALARM_PROBABILITY);
   }
 
   /**

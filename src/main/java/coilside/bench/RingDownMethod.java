@@ -23,8 +23,8 @@ import java.util.Optional;
  * opened as early as it can be. What turns with the pulse is ring-down and signal; the signal is
  * fitted late, drawn back and taken off. The second pair is played a quarter turn from the first,
  * so that the mirror image which unequal receiver channels make drops out. On a board that knows no
- * pulse phase nothing can be turned: the DC offset is taken off as the receive-only scan has it, and
- * what remains counts as following.
+ * pulse phase nothing can be turned: the DC offset is taken off as the receive-only scan has it,
+ * and what remains counts as following.
  */
 final class RingDownMethod implements Method {
   private static final int PAIRS = 2;
@@ -84,9 +84,7 @@ final class RingDownMethod implements Method {
     double sigma = one / Math.sqrt(plus.count() + minus.count());
     boolean turned = minus.count() > 0;
     Fid following =
-        turned
-            ? RingDownFit.separate(plus.mean(), minus.mean()).following()
-            : plus.mean();
+        turned ? RingDownFit.separate(plus.mean(), minus.mean()).following() : plus.mean();
     double pulseHalf = pulseHalf(capture);
     RingDownFit.Result fit;
     try {

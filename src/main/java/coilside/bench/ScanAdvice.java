@@ -94,7 +94,7 @@ public final class ScanAdvice {
     out.add(
         String.format(
             Locale.ROOT,
-            "an SNR of %.3g takes %d scans in %s with 5 T1, %d scans in %s at the Ernst angle",
+            "an SNR of %.4g takes %d scans in %s with 5 T1, %d scans in %s at the Ernst angle",
             wanted,
             full.scans(),
             seconds(full.seconds()),
@@ -106,8 +106,6 @@ public final class ScanAdvice {
   private static String seconds(double value) {
     return ConciseFormat.ascii(
         Measured.withoutUncertainty(
-            Double.parseDouble(String.format(Locale.ROOT, "%.3g", value)),
-            Unit.SECOND,
-            "advice"));
+            Double.parseDouble(String.format(Locale.ROOT, "%.3g", value)), Unit.SECOND, "advice"));
   }
 }

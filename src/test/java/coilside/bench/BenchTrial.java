@@ -50,6 +50,13 @@ final class BenchTrial implements AutoCloseable {
     return new BenchTrial(ObservedBoard.open(scenario, profile, seed), OptionalDouble.empty(), 400);
   }
 
+  /** On a board that differs from a shipped profile in one piece of its text. */
+  static BenchTrial of(Scenario scenario, String profile, String text, String other, long seed)
+      throws BoardException, KeepException {
+    return new BenchTrial(
+        ObservedBoard.open(scenario, profile, text, other, seed), OptionalDouble.empty(), 400);
+  }
+
   static BenchSettings settings(DeviceProfile profile, OptionalDouble expectedT1, int budget) {
     return new BenchSettings(
         Nucleus.HYDROGEN_1,

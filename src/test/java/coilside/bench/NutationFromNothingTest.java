@@ -44,11 +44,20 @@ class NutationFromNothingTest {
   }
 
   private static Finding given(Rung rung, Map<String, Measured> values) {
-    Conditions c =
-        new Conditions("", "", 8.0895e6, 0.5, 60, "sample", "", OptionalDouble.empty());
+    Conditions c = new Conditions("", "", 8.0895e6, 0.5, 60, "sample", "", OptionalDouble.empty());
     return new Finding(
-        rung.id(), rung, BenchTrial.START, 1, 1, values, List.of(), Optional.empty(), c, "",
-        Map.of(), true);
+        rung.id(),
+        rung,
+        BenchTrial.START,
+        1,
+        1,
+        values,
+        List.of(),
+        Optional.empty(),
+        c,
+        "",
+        Map.of(),
+        true);
   }
 
   /** Relative error of the 90-degree pulse after at most so many scans with a pulse. */
@@ -62,8 +71,7 @@ class NutationFromNothingTest {
       ladder.add(given(Rung.NOISE, Map.of("noise_density", density)));
       ladder.add(
           given(
-              Rung.RESONANCE,
-              Map.of("larmor_frequency", Measured.of(8.0895e6, 0.5, Unit.HERTZ))));
+              Rung.RESONANCE, Map.of("larmor_frequency", Measured.of(8.0895e6, 0.5, Unit.HERTZ))));
       ladder.add(
           given(
               Rung.GAIN,
@@ -106,7 +114,13 @@ class NutationFromNothingTest {
     long within = errors.stream().filter(e -> e <= 0.01).count();
     long refused = errors.stream().filter(e -> e.isInfinite()).count();
     String said =
-        within + " of " + runs + " within 1 %, " + refused + " refused, off by more than 5 %: " + far;
+        within
+            + " of "
+            + runs
+            + " within 1 %, "
+            + refused
+            + " refused, off by more than 5 %: "
+            + far;
     double chance = 3 * Math.sqrt(0.68 * 0.32 / runs);
     assertTrue(within >= (0.68 - chance) * runs, said);
     assertTrue(far.isEmpty(), said);

@@ -31,7 +31,7 @@ class ScanAdviceTest {
 
   @Test
   void tenTimesTheSnrTakesAHundredScans() {
-    assertTrue(lines.get(3).contains("an SNR of 1e+03 takes 102 scans"), lines.get(3));
+    assertTrue(lines.get(3).contains("an SNR of 1000 takes 102 scans"), lines.get(3));
   }
 
   @Test
