@@ -25,8 +25,8 @@ import java.util.Map;
 /**
  * The T2 rung: an echo train with the refocusing pulses a quarter turn out of phase with the first
  * (Meiboom and Gill), one receive window an echo, the first pulse's phase alternating from scan to
- * scan so that the receiver's offset and what imperfect refocusing pulses make drop out. Boards with
- * too few receive windows get {@link SingleEchoes}.
+ * scan so that the receiver's offset and what imperfect refocusing pulses make drop out. Boards
+ * with too few receive windows get {@link SingleEchoes}.
  */
 final class EchoTrainMethod implements Method {
   private static final int MOST_ECHOES = 256;

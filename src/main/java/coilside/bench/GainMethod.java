@@ -95,7 +95,7 @@ final class GainMethod implements Method {
    * A phase that grows quadratically with the number of the scan, in quarter turns, so that echoes
    * of earlier pulses do not add up (Zur, Wood and Neuringer, Magn. Reson. Med. 21, 251, 1991).
    */
-  private static double spoiling(int scan) {
+  static double spoiling(int scan) {
     return scan * (scan + 1) / 2 % 4 * Math.PI / 2;
   }
 

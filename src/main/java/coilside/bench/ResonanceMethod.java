@@ -69,9 +69,9 @@ final class ResonanceMethod implements Method {
 
   /**
    * Looks at the line from a little beside it, clear of the receiver's DC offset, then plays the
-   * scans that count with the carrier on it, on all four phases of the pulse and after different
-   * rests, so that DC offset, the receiver's mirror image, the mains and echoes of earlier pulses
-   * do not all pull the same way.
+   * scans that count with the carrier on it, on all four phases of the pulse in an order that
+   * spoils echoes of earlier pulses, and after different rests, so that DC offset, the receiver's
+   * mirror image, the mains and echoes of earlier pulses do not all pull the same way.
    */
   private static void settle(Acquisition a, Seen first) throws BoardException, NotMeasurable {
     a.startAgain();
@@ -103,7 +103,8 @@ final class ResonanceMethod implements Method {
     }
     for (int i = 0; i < FINAL_SCANS; i++) {
       double rest = SEARCH_REST + REST_STEP * i;
-      a.play(shot(a, carrier, gain, SEARCH_PULSE, BenchShots.phase(a, i * Math.PI / 2), rest));
+      double phase = BenchShots.phase(a, GainMethod.spoiling(i));
+      a.play(shot(a, carrier, gain, SEARCH_PULSE, phase, rest));
     }
     if (Quiet.needed(a)) {
       Quiet.play(a, a.shots().get(0));

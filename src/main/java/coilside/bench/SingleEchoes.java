@@ -78,8 +78,7 @@ final class SingleEchoes {
     BoardLimits limits = a.limits();
     double p90 = Choices.pulse90(a);
     double p180 = Choices.pulse(limits, a.known().need(Rung.NUTATION, "pulse_180"));
-    Choices.Window w =
-        Choices.window(limits, 2 * HALF_WINDOW_IN_T2STAR * t2Star, MOST_POINTS);
+    Choices.Window w = Choices.window(limits, 2 * HALF_WINDOW_IN_T2STAR * t2Star, MOST_POINTS);
     double half = w.points() * w.dwellSeconds() / 2;
     double open = Choices.rest(a, Math.max(Choices.delay(a), echo / 2 - p180 / 2 - half));
     double before = Choices.rest(a, open + half + p180 / 2 - (p90 + p180) / 2);
@@ -114,8 +113,7 @@ final class SingleEchoes {
       }
     }
     List<Fid> echoes = byTime.values().stream().map(Averager::mean).toList();
-    double sigma =
-        quiet.sigma() / Math.sqrt(byTime.values().iterator().next().count());
+    double sigma = quiet.sigma() / Math.sqrt(byTime.values().iterator().next().count());
     MatchedProjection p = MatchedProjection.bySingularVector(echoes, sigma);
     double[] t = byTime.keySet().stream().mapToDouble(Double::doubleValue).toArray();
     double[] re = new double[t.length];
@@ -159,7 +157,17 @@ final class SingleEchoes {
         values,
         warnings,
         new Picture.Curve(
-            Rung.T2, "echo time", "s", "echo", "V", t, y, u, t, fit.curve(t), new double[0],
+            Rung.T2,
+            "echo time",
+            "s",
+            "echo",
+            "V",
+            t,
+            y,
+            u,
+            t,
+            fit.curve(t),
+            new double[0],
             caption));
   }
 }
