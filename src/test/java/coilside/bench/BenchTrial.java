@@ -103,8 +103,7 @@ final class BenchTrial implements AutoCloseable {
 
   /** The capture that a finding came from. */
   Capture capture(Finding finding) {
-    String name = finding.capture();
-    return keeper.captures.get(Integer.parseInt(name.substring(name.lastIndexOf('-') + 1)));
+    return keeper.capture(finding.capture());
   }
 
   /** All scans played so far. */
