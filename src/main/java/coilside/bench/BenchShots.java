@@ -50,7 +50,12 @@ final class BenchShots {
    * changes its sign from scan to scan instead of passing for signal.
    */
   static double alternate(Acquisition a) {
-    return a.scans().size() % 2 * Math.PI;
+    return phase(a, a.scans().size() % 2 * Math.PI);
+  }
+
+  /** A pulse's phase as the board can play it: 0 where it knows no phases, rad. */
+  static double phase(Acquisition a, double radians) {
+    return a.limits().pulsePhases() ? radians : 0;
   }
 
   /** The phase of the last pulse of a shot, the one that is read, rad. */

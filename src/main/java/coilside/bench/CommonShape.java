@@ -32,6 +32,9 @@ record CommonShape(
     DecayResult decay,
     Quiet quiet) {
 
+  /** u(T2*)/T2* at which a shape still projects well: its error enters amplitudes squared. */
+  private static final double LOOSE = 0.5;
+
   /**
    * The rate at which the FIDs decay as the projection sees it, 1/s: minus the derivative of the
    * shape projected on the shape. For an exponential 1/T2*, for any other form the weighted mean,
@@ -59,6 +62,15 @@ record CommonShape(
         fids.add(quiet.strip(scans.get(i).fid()));
       }
     }
+    double[] seconds = new double[indices.size()];
+    double now = 0;
+    for (int i = 0, j = 0; i < shots.size(); i++) {
+      now += scans.get(i).restSeconds() + shots.get(i).playedSeconds();
+      if (!shots.get(i).receiveOnly()) {
+        seconds[j++] = now;
+      }
+    }
+    fids = LineTrack.of(fids, seconds).steadied(fids);
     DecayResult decay = sharedDecay(fids, quiet.sigma());
     int n = fids.size();
     double[] re = new double[n];
@@ -114,7 +126,9 @@ record CommonShape(
       }
     }
     try {
-      return DecayFit.fit(average.mean(), DecayFit.Options.usual().withScans(average.count()));
+      return DecayFit.fit(
+          average.mean(),
+          DecayFit.Options.usual().withScans(average.count()).withLargestRelative(LOOSE));
     } catch (NotDetermined e) {
       throw Readings.refused("the decay that the scans share is not determined", e);
     }

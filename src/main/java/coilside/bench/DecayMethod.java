@@ -4,6 +4,7 @@ import coilside.board.BoardException;
 import coilside.fit.DecayFit;
 import coilside.fit.DecayResult;
 import coilside.fit.NotDetermined;
+import coilside.quantity.Measured;
 import coilside.shot.Pulse;
 import coilside.shot.Receive;
 import coilside.shot.Shot;
@@ -11,7 +12,10 @@ import coilside.shot.Wait;
 import coilside.signal.Averager;
 import coilside.signal.Fid;
 import coilside.signal.Scan;
+import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.Map;
+import java.util.Optional;
 import java.util.OptionalDouble;
 
 /**
@@ -68,6 +72,12 @@ final class DecayMethod implements Method {
         wanted = CYCLE * ((a.scans().size() + a.scansLeft()) / CYCLE);
       }
     }
+    if (Quiet.needed(a)) {
+      Quiet.play(a, a.shots().get(0));
+    }
+    a.known()
+        .value(Rung.T1, "t1")
+        .ifPresent(t1 -> a.note("unrecovered", Math.exp(-repetition(a) / t1)));
     a.note("target", target);
   }
 
@@ -157,21 +167,58 @@ final class DecayMethod implements Method {
         .orElse(GainMethod.RECOVERED * a.guesses().t1Seconds().orElse(0.3));
   }
 
-  /** The average of scans, each turned back by the phase of its first pulse. */
+  /**
+   * The average of scans, each turned back by the phase of its first pulse, without the
+   * interference that a receive-only scan among them shows.
+   */
   static Fid mean(List<Shot> shots, List<Scan> scans) {
+    Optional<Quiet> quiet = Quiet.find(shots, scans);
     Averager average = new Averager();
     for (int i = 0; i < scans.size(); i++) {
-      average.add(scans.get(i).fid(), BenchShots.firstPhase(shots.get(i)));
+      if (!shots.get(i).receiveOnly()) {
+        Fid fid = scans.get(i).fid();
+        average.add(
+            quiet.isPresent() ? quiet.get().strip(fid) : fid, BenchShots.firstPhase(shots.get(i)));
+      }
     }
     return average.mean();
   }
 
   @Override
   public Reading read(Capture capture) throws NotMeasurable {
-    return Readings.decay(
-        mean(capture.shots(), capture.scans()),
-        capture.shots(),
-        capture.scans(),
-        Notes.number(capture, "target", Double.NaN));
+    Reading reading =
+        Readings.decay(
+            mean(capture.shots(), capture.scans()),
+            capture.shots(),
+            capture.scans(),
+            Notes.number(capture, "target", Double.NaN));
+    return withHonestAmplitude(reading, capture);
+  }
+
+  /**
+   * The amplitude stands for what a perfect 90-degree pulse on recovered spins would give, drawn
+   * back to the pulse's centre. Its uncertainty takes in what the repetition time leaves
+   * unrecovered and that a strong pulse holds the spins together, so that the decay starts 2/pi of
+   * the pulse before its end and not half of it.
+   */
+  private static Reading withHonestAmplitude(Reading reading, Capture capture) {
+    Measured amplitude = reading.values().get("amplitude");
+    Measured t2Star = reading.values().get("t2_star");
+    double pulse =
+        capture.shots().stream()
+            .filter(s -> !s.receiveOnly())
+            .mapToDouble(s -> NutationMethod.pulse(s).seconds())
+            .findFirst()
+            .orElse(0);
+    double held = (2 / Math.PI - 0.5) * pulse / t2Star.value();
+    double unrecovered = Notes.number(capture, "unrecovered", 0);
+    Map<String, Measured> values = new LinkedHashMap<>(reading.values());
+    values.put(
+        "amplitude",
+        Measured.of(
+            amplitude.value(),
+            Math.hypot(amplitude.u(), amplitude.value() * Math.hypot(held, unrecovered)),
+            amplitude.unit()));
+    return new Reading(values, reading.warnings(), reading.picture());
   }
 }

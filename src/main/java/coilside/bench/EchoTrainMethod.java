@@ -25,7 +25,8 @@ import java.util.Map;
 /**
  * The T2 rung: an echo train with the refocusing pulses a quarter turn out of phase with the first
  * (Meiboom and Gill), one receive window an echo, the first pulse's phase alternating from scan to
- * scan so that the receiver's offset and what imperfect refocusing pulses make drop out.
+ * scan so that the receiver's offset and what imperfect refocusing pulses make drop out. Boards
+ * with too few receive windows get {@link SingleEchoes}.
  */
 final class EchoTrainMethod implements Method {
   private static final int MOST_ECHOES = 256;
@@ -43,6 +44,10 @@ final class EchoTrainMethod implements Method {
 
   @Override
   public void acquire(Acquisition a) throws BoardException, NotMeasurable {
+    if (mostEchoes(a.limits()) < Methods.FEWEST_ECHOES) {
+      SingleEchoes.acquire(a);
+      return;
+    }
     double t1 = a.known().need(Rung.T1, "t1");
     Train train = train(a, t1);
     a.note("target", a.settings().t2Target());
@@ -141,6 +146,9 @@ final class EchoTrainMethod implements Method {
 
   @Override
   public Reading read(Capture capture) throws NotMeasurable {
+    if (capture.settings().containsKey(SingleEchoes.NOTE)) {
+      return SingleEchoes.read(capture);
+    }
     Shot shot = capture.shots().stream().filter(s -> !s.receiveOnly()).findFirst().orElseThrow();
     List<Averager> sums = new ArrayList<>();
     int scans = 0;

@@ -95,7 +95,7 @@ final class GainMethod implements Method {
    * A phase that grows quadratically with the number of the scan, in quarter turns, so that echoes
    * of earlier pulses do not add up (Zur, Wood and Neuringer, Magn. Reson. Med. 21, 251, 1991).
    */
-  private static double spoiling(int scan) {
+  static double spoiling(int scan) {
     return scan * (scan + 1) / 2 % 4 * Math.PI / 2;
   }
 
@@ -184,14 +184,14 @@ final class GainMethod implements Method {
     Quiet quiet = quiet(a, gain);
     for (double rest : GUESS_RESTS) {
       double width = Choices.pulse(a.limits(), GUESS_WIDTH);
-      double phase = spoiling(a.scansPlayed());
+      double phase = BenchShots.phase(a, spoiling(a.scansPlayed()));
       Scan scan = a.playAside(BenchShots.single(a, gain, width, phase, Choices.rest(a, rest)));
       while ((scan.clippedSamples() > 0 || flatTopped(scan)) && lower(a, gain, 10) < gain) {
         gain = lower(a, gain, 10);
         fids.clear();
         rests.clear();
         quiet = quiet(a, gain);
-        phase = spoiling(a.scansPlayed());
+        phase = BenchShots.phase(a, spoiling(a.scansPlayed()));
         scan = a.playAside(BenchShots.single(a, gain, width, phase, Choices.rest(a, rest)));
       }
       fids.add(turned(quiet.strip(scan.fid()), phase));

@@ -7,7 +7,7 @@ import java.util.Set;
 
 /** Which method measures which rung, and which rungs a kind of board can serve at all. */
 final class Methods {
-  /** The fewest receive windows that make an echo train. */
+  /** The fewest receive windows that make an echo train; with fewer, single echoes. */
   static final int FEWEST_ECHOES = 8;
 
   private Methods() {}
@@ -27,7 +27,7 @@ final class Methods {
 
   /** Whether the board can serve the rung. */
   static boolean possible(Rung rung, BoardLimits limits) {
-    return rung != Rung.T2 || (limits.arbitraryShots() && limits.maxWindows() >= FEWEST_ECHOES);
+    return rung != Rung.T2 || limits.arbitraryShots();
   }
 
   static Set<Rung> impossible(BoardLimits limits) {
@@ -45,13 +45,7 @@ final class Methods {
     if (possible(rung, limits)) {
       return;
     }
-    String reason =
-        limits.arbitraryShots()
-            ? "T2 by an echo train needs at least "
-                + FEWEST_ECHOES
-                + " receive windows a shot; this board has "
-                + limits.maxWindows()
-            : "T2 needs echoes, and this board plays only 'pulse then receive'";
+    String reason = "T2 needs echoes, and this board plays only 'pulse then receive'";
     throw new NotMeasurable(
         reason,
         List.of("use a board, or a profile of this one, that plays shots of several steps"));

@@ -27,6 +27,9 @@ final class NutationMethod implements Method {
   private static final double LONGEST_90 = 200e-6;
   private static final int FEWEST = 4;
 
+  /** Scans after which a decay must show, or the rung is refused. */
+  private static final int PATIENCE = 16;
+
   /** Scans after which points that scatter this much (reduced chi-square) will not come right. */
   private static final int HOPELESS = 24;
 
@@ -75,20 +78,33 @@ final class NutationMethod implements Method {
     return advice.result().map(r -> r.reducedChiSquare() > SCATTER).orElse(false);
   }
 
+  /** Ever longer pulses, then again from shorter ones, while there is too little to choose by. */
+  private static NutationPlan.Advice lookingAround(Acquisition a, double width) {
+    double next = width * 2.2;
+    return new NutationPlan.Advice(
+        false,
+        next < a.limits().pulseSeconds().max() ? next : width / 9,
+        "looking around",
+        java.util.Optional.empty(),
+        1);
+  }
+
   private static NutationPlan.Advice advice(
       Acquisition a, NutationFit.Options options, double shortest, double longest, double width)
       throws NotMeasurable {
     int pulses = a.shots().size() - 1;
     if (pulses < FEWEST) {
-      double next = width * 2.2;
-      return new NutationPlan.Advice(
-          false,
-          next < a.limits().pulseSeconds().max() ? next : width / 3,
-          "looking around",
-          java.util.Optional.empty(),
-          1);
+      return lookingAround(a, width);
     }
-    CommonShape shape = CommonShape.of(a.shots(), a.scans());
+    CommonShape shape;
+    try {
+      shape = CommonShape.of(a.shots(), a.scans());
+    } catch (NotMeasurable e) {
+      if (pulses < PATIENCE) {
+        return lookingAround(a, width);
+      }
+      throw e;
+    }
     List<NutationPoint> points = points(a.shots(), a.scans(), shape);
     NutationPlan.Advice advice =
         new NutationPlan(

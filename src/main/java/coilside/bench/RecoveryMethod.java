@@ -147,7 +147,7 @@ final class RecoveryMethod implements Method {
     Choices.Window w =
         Choices.window(a.limits(), BenchShots.FIRST_SECONDS, BenchShots.FIRST_POINTS);
     double amplitude = Choices.amplitude(a);
-    double inverting = a.scans().size() / 2 % 2 * Math.PI;
+    double inverting = BenchShots.phase(a, a.scans().size() / 2 % 2 * Math.PI);
     return new Shot(
         Choices.carrier(a),
         Choices.gain(a),

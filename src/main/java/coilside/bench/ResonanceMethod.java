@@ -35,6 +35,9 @@ final class ResonanceMethod implements Method {
   /** By how much the rests before the final scans differ, s: a third of a mains period. */
   private static final double REST_STEP = 6.3e-3;
 
+  /** How much beside an interference line is left out with it, Hz. */
+  private static final double LINE_HALF_WIDTH = 500;
+
   private static final int MOST_PASSES = 6;
   private static final int PULSES = 3;
 
@@ -66,9 +69,9 @@ final class ResonanceMethod implements Method {
 
   /**
    * Looks at the line from a little beside it, clear of the receiver's DC offset, then plays the
-   * scans that count with the carrier on it, on all four phases of the pulse and after different
-   * rests, so that DC offset, the receiver's mirror image, the mains and echoes of earlier pulses
-   * do not all pull the same way.
+   * scans that count with the carrier on it, on all four phases of the pulse in an order that
+   * spoils echoes of earlier pulses, and after different rests, so that DC offset, the receiver's
+   * mirror image, the mains and echoes of earlier pulses do not all pull the same way.
    */
   private static void settle(Acquisition a, Seen first) throws BoardException, NotMeasurable {
     a.startAgain();
@@ -100,18 +103,28 @@ final class ResonanceMethod implements Method {
     }
     for (int i = 0; i < FINAL_SCANS; i++) {
       double rest = SEARCH_REST + REST_STEP * i;
-      a.play(shot(a, carrier, gain, SEARCH_PULSE, i * Math.PI / 2, rest));
+      double phase = BenchShots.phase(a, GainMethod.spoiling(i));
+      a.play(shot(a, carrier, gain, SEARCH_PULSE, phase, rest));
     }
+    if (Quiet.needed(a)) {
+      Quiet.play(a, a.shots().get(0));
+    }
+  }
+
+  /** The DC offset, and interference that earlier looks without a pulse have shown. */
+  private static List<Detection.Excluded> excluded(Acquisition a, double carrier) {
+    List<Detection.Excluded> out = new ArrayList<>();
+    out.add(new Detection.Excluded(0, BESIDE / 2));
+    for (double f : a.guesses().interferenceHertz()) {
+      out.add(new Detection.Excluded(f - carrier, LINE_HALF_WIDTH));
+    }
+    return out;
   }
 
   private static Detection detectBeside(Acquisition a, Fid raw) {
     Fid fid = withoutOffset(raw);
     return Detection.of(
-        fid,
-        sigma(a, fid),
-        List.of(new Detection.Excluded(0, BESIDE / 2)),
-        1,
-        FALSE_ALARM_PROBABILITY);
+        fid, sigma(a, fid), excluded(a, raw.carrierHertz()), 1, FALSE_ALARM_PROBABILITY);
   }
 
   /**
@@ -246,7 +259,7 @@ final class ResonanceMethod implements Method {
       double carrier = a.limits().carrierHertz().snap(wanted);
       Averager average = new Averager();
       for (int i = 0; i < averaged; i++) {
-        double phase = i % 2 * Math.PI;
+        double phase = BenchShots.phase(a, i % 2 * Math.PI);
         average.add(
             a.play(shot(a, carrier, Choices.gain(a), pulse, phase, SEARCH_REST)).fid(), phase);
       }
@@ -267,6 +280,7 @@ final class ResonanceMethod implements Method {
       }
       if (isThereWithoutPulse(shot, d)) {
         interference.add(carrier + d.offsetHertz());
+        a.guesses().rememberInterference(carrier + d.offsetHertz());
         a.say(
             String.format(
                 Locale.ROOT,
@@ -285,7 +299,7 @@ final class ResonanceMethod implements Method {
       out.add(new Detection.Excluded(0, 2 / (fid.points() * fid.dwellSeconds())));
       for (double f : interference) {
         if (Math.abs(f - carrier) < fid.widthHertz() / 2) {
-          out.add(new Detection.Excluded(f - carrier, 500));
+          out.add(new Detection.Excluded(f - carrier, LINE_HALF_WIDTH));
         }
       }
       return Detection.of(fid, sigma, out, carriers.size() * MOST_PASSES, FALSE_ALARM_PROBABILITY);

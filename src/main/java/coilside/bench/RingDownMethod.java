@@ -50,8 +50,7 @@ final class RingDownMethod implements Method {
     double earliest = limits.waitSeconds().min();
     double pulse = Choices.pulse(limits, PULSE);
     for (int i = 0; i < 2 * PAIRS; i++) {
-      double turned = i % 2 * Math.PI + i / 2 % 2 * Math.PI / 2;
-      double phase = limits.pulsePhases() ? turned : 0;
+      double phase = BenchShots.phase(a, i % 2 * Math.PI + i / 2 % 2 * Math.PI / 2);
       Shot shot =
           BenchShots.single(
               a, Choices.carrier(a), Choices.gain(a), pulse, phase, rest, earliest, window);
@@ -66,6 +65,7 @@ final class RingDownMethod implements Method {
 
   @Override
   public Reading read(Capture capture) throws NotMeasurable {
+    Quiet quiet = Quiet.of(capture.shots(), capture.scans());
     Averager plus = new Averager();
     Averager minus = new Averager();
     int clippedUntil = 0;
@@ -77,16 +77,14 @@ final class RingDownMethod implements Method {
       Scan scan = capture.scans().get(i);
       double phase = BenchShots.firstPhase(shot);
       boolean turned = phase > Math.PI - 0.01;
-      (turned ? minus : plus).add(scan.fid(), turned ? phase - Math.PI : phase);
+      (turned ? minus : plus).add(quiet.strip(scan.fid()), turned ? phase - Math.PI : phase);
       clippedUntil = Math.max(clippedUntil, clippedUntil(scan));
     }
-    double one = Quiet.of(capture.shots(), capture.scans()).sigma();
+    double one = quiet.sigma();
     double sigma = one / Math.sqrt(plus.count() + minus.count());
     boolean turned = minus.count() > 0;
     Fid following =
-        turned
-            ? RingDownFit.separate(plus.mean(), minus.mean()).following()
-            : Quiet.of(capture.shots(), capture.scans()).strip(plus.mean());
+        turned ? RingDownFit.separate(plus.mean(), minus.mean()).following() : plus.mean();
     double pulseHalf = pulseHalf(capture);
     RingDownFit.Result fit;
     try {

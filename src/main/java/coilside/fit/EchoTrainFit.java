@@ -170,9 +170,13 @@ public final class EchoTrainFit {
     double fraction = 0;
     if (NutationFit.improbable(reduced, s.degreesOfFreedom())) {
       EchoComponents two = EchoComponents.fit(e, y, u, p);
-      if (two != null && s.weightedSquares() - two.chiSquare() > 2 * Math.log(2.0 * m) + 10) {
+      if (two != null
+          && two.uOneOverE() < largestRelative * two.oneOverE()
+          && s.weightedSquares() - two.chiSquare() > 2 * Math.log(2.0 * m) + 10) {
         t2 = two.oneOverE();
-        relative = two.uOneOverE() / t2;
+        // Echo amplitudes weigh the components by their lines, too: some percent of the distance.
+        double weights = 0.01 * Math.abs(two.firstT2() - two.secondT2());
+        relative = Math.hypot(two.uOneOverE(), weights) / t2;
         firstT2 = two.firstT2();
         second = OptionalDouble.of(two.secondT2());
         fraction = two.secondFraction();

@@ -50,6 +50,13 @@ final class BenchTrial implements AutoCloseable {
     return new BenchTrial(ObservedBoard.open(scenario, profile, seed), OptionalDouble.empty(), 400);
   }
 
+  /** On a board that differs from a shipped profile in one piece of its text. */
+  static BenchTrial of(Scenario scenario, String profile, String text, String other, long seed)
+      throws BoardException, KeepException {
+    return new BenchTrial(
+        ObservedBoard.open(scenario, profile, text, other, seed), OptionalDouble.empty(), 400);
+  }
+
   static BenchSettings settings(DeviceProfile profile, OptionalDouble expectedT1, int budget) {
     return new BenchSettings(
         Nucleus.HYDROGEN_1,
@@ -79,7 +86,7 @@ final class BenchTrial implements AutoCloseable {
       messages.add(m.text());
     } else if (event instanceof Progress.RungEnded ended && !ended.finding().refused()) {
       // The scans of the capture are the last ones played.
-      Capture capture = keeper.capture(ended.finding().capture());
+      Capture capture = capture(ended.finding());
       int from = larmorAtScans.size() - capture.scans().size();
       double sum = 0;
       int pulsed = 0;
@@ -92,6 +99,11 @@ final class BenchTrial implements AutoCloseable {
       }
       larmor.put(ended.finding().rung(), sum / Math.max(1, pulsed));
     }
+  }
+
+  /** The capture that a finding came from. */
+  Capture capture(Finding finding) {
+    return keeper.capture(finding.capture());
   }
 
   /** All scans played so far. */

@@ -116,8 +116,7 @@ class DiagnosisTest {
     try (BenchTrial trial = climbed("long-t1")) {
       Finding t1 = trial.newest(Rung.T1);
       assertEquals(3, t1.value("t1").value(), 0.05 * 3);
-      double rest =
-          trial.keeper.capture(trial.newest(Rung.NUTATION).capture()).scans().get(3).restSeconds();
+      double rest = trial.capture(trial.newest(Rung.NUTATION)).scans().get(3).restSeconds();
       assertTrue(rest >= 4 * 2.9, "the nutation rested for " + rest + " s");
       assertTrue(Math.abs(trial.deviation(Rung.NUTATION, "pulse_90")) < 4);
     }

@@ -115,7 +115,7 @@ class ReadyStatisticsTest {
   @Test
   @Tag("validation")
   void uncertaintiesAreNeitherTooProudNorTooTimid() throws Exception {
-    Map<Headline, List<Double>> z = deviations("doped-water", 1, 200);
+    Map<Headline, List<Double>> z = deviations("doped-water", 1, 600);
     List<Executable> checks = new ArrayList<>();
     z.forEach(
         (headline, all) ->

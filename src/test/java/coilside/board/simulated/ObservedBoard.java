@@ -9,6 +9,7 @@ import coilside.board.profile.ProfileReader;
 import java.io.IOException;
 import java.io.InputStream;
 import java.io.UncheckedIOException;
+import java.nio.charset.StandardCharsets;
 import java.time.Clock;
 
 /**
@@ -36,6 +37,29 @@ public final class ObservedBoard implements AutoCloseable {
     ObservedBoard out = new ObservedBoard(scenario, profile(profile), seed);
     out.board.arm();
     return out;
+  }
+
+  /** Opens and arms a board of a shipped profile with one piece of its text exchanged. */
+  public static ObservedBoard open(
+      Scenario scenario, String profile, String text, String other, long seed)
+      throws BoardException {
+    try (InputStream in =
+        ObservedBoard.class.getResourceAsStream("/device-profiles/" + profile + ".toml")) {
+      String all = new String(in.readAllBytes(), StandardCharsets.UTF_8);
+      if (!all.contains(text)) {
+        throw new IllegalArgumentException("'" + text + "' is not in " + profile);
+      }
+      byte[] changed = all.replace(text, other).getBytes(StandardCharsets.UTF_8);
+      ObservedBoard out =
+          new ObservedBoard(
+              scenario,
+              ProfileReader.read(profile + ".toml", changed).profile().orElseThrow(),
+              seed);
+      out.board.arm();
+      return out;
+    } catch (IOException e) {
+      throw new UncheckedIOException(e);
+    }
   }
 
   private static DeviceProfile profile(String name) {
