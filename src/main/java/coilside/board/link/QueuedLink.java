@@ -36,6 +36,7 @@ abstract class QueuedLink implements Link {
   private final ReentrantLock sending = new ReentrantLock();
   private final AtomicBoolean closed = new AtomicBoolean();
   private final AtomicBoolean released = new AtomicBoolean();
+  private final Object releasing = new Object();
 
   QueuedLink(String description, Duration writeLimit, int queueBytes) {
     this.description = Objects.requireNonNull(description, "description");
@@ -134,9 +135,14 @@ abstract class QueuedLink implements Link {
     }
   }
 
+  /**
+   * Whoever comes second waits until the line is really let go: its name may be used again then.
+   */
   private void release() {
-    if (released.compareAndSet(false, true)) {
-      releaseLine();
+    synchronized (releasing) {
+      if (released.compareAndSet(false, true)) {
+        releaseLine();
+      }
     }
   }
 
