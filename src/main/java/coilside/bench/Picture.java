@@ -21,6 +21,8 @@ public sealed interface Picture {
    * @param u standard uncertainty of each ordinate; 0 where unknown
    * @param fitX abscissae of the fitted curve; empty while there is none
    * @param fitY the fitted curve
+   * @param fitU standard uncertainty of the fitted curve at each of its abscissae; empty where it
+   *     is not known
    * @param nextX where it will measure next; may be empty
    * @param caption the result so far, one line
    */
@@ -35,9 +37,40 @@ public sealed interface Picture {
       double[] u,
       double[] fitX,
       double[] fitY,
+      double[] fitU,
       double[] nextX,
       String caption)
-      implements Picture {}
+      implements Picture {
+    public Curve {
+      if (fitX.length != fitY.length || fitU.length != 0 && fitU.length != fitX.length) {
+        throw new IllegalArgumentException(
+            "a fitted curve of "
+                + fitX.length
+                + " abscissae has "
+                + fitY.length
+                + " ordinates and "
+                + fitU.length
+                + " uncertainties");
+      }
+    }
+
+    /** A curve whose fit has no uncertainty of its own to show. */
+    public Curve(
+        Rung rung,
+        String xName,
+        String xUnit,
+        String yName,
+        String yUnit,
+        double[] x,
+        double[] y,
+        double[] u,
+        double[] fitX,
+        double[] fitY,
+        double[] nextX,
+        String caption) {
+      this(rung, xName, xUnit, yName, yUnit, x, y, u, fitX, fitY, new double[0], nextX, caption);
+    }
+  }
 
   /**
    * An FID with its fit, where there is one: noise, ring-down, T2*.

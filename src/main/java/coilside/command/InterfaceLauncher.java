@@ -22,6 +22,18 @@ final class InterfaceLauncher {
     if (!options.plain && unusable.isPresent()) {
       throw new UsageException(unusable.get());
     }
+    // What the record and the screen need is loaded while the profile is read.
+    Thread ahead =
+        new Thread(
+            () -> {
+              BenchRecord.loadAhead();
+              TextInterface.loadAhead();
+            },
+            "load ahead");
+    ahead.setDaemon(true);
+    // What is wrong shows when it is needed.
+    ahead.setUncaughtExceptionHandler((thread, e) -> {});
+    ahead.start();
     OpenBench.Parts parts;
     try {
       parts = OpenBench.Parts.open(options, clock);

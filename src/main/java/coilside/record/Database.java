@@ -36,6 +36,19 @@ final class Database implements AutoCloseable {
     T run() throws SQLException;
   }
 
+  /** Loads the library by way of a database in memory; trouble shows when a file is opened. */
+  static void loadAhead() {
+    try {
+      SqliteLibrary.prepare();
+      try (Connection memory = new SQLiteConfig().createConnection("jdbc:sqlite::memory:");
+          Statement s = memory.createStatement()) {
+        s.execute("SELECT 1");
+      }
+    } catch (SQLException | KeepException | LinkageError e) {
+      return;
+    }
+  }
+
   /** Opens or creates the file and brings it up to date. */
   static Database forWriting(Path file) throws KeepException {
     SQLiteConfig config = new SQLiteConfig();

@@ -28,32 +28,37 @@ final class Actions {
 
   private void bench(Cockpit c) {
     Look look = c.look();
-    BooleanSupplier idle = () -> !c.running();
+    BooleanSupplier idle = () -> !c.work().running();
     add(
         'm',
         "measure",
         "Measure the chosen rung, with what it rests on (also Enter)",
         idle,
-        () -> c.begin(new Work.Measure(look.chosen)));
-    add('r', "ready", "Ready: bring every rung up to date", idle, () -> c.begin(new Work.Ready()));
+        () -> c.work().begin(new Work.Measure(look.chosen)));
+    add(
+        'r',
+        "ready",
+        "Ready: bring every rung up to date",
+        idle,
+        () -> c.work().begin(new Work.Ready()));
     add(
         'l',
         "live",
         "Live: tune and shim, nothing is kept",
-        () -> c.canGoLive(true),
-        () -> c.live(true));
+        () -> c.work().canGoLive(true),
+        () -> c.work().live(true));
     add(
         'o',
         "listen",
         "Listen live with the transmitter off: hunt interference",
-        () -> c.canGoLive(false),
-        () -> c.live(false));
+        () -> c.work().canGoLive(false),
+        () -> c.work().live(false));
     add(
         'f',
         "FID",
         "Take and keep an averaged FID",
         idle,
-        () -> c.begin(new Work.TakeFid(look.fidScans, 0, 0, "")));
+        () -> c.work().begin(new Work.TakeFid(look.fidScans, 0, 0, "")));
     add(
         'k',
         "log",
@@ -61,15 +66,20 @@ final class Actions {
         idle,
         () -> {
           Duration every = Duration.ofMillis(Math.round(look.logEverySeconds * 1000));
-          c.begin(new Work.Log(every, 0, Optional.empty(), look.logScans, true));
+          c.work().begin(new Work.Log(every, 0, Optional.empty(), look.logScans, true));
         });
-    add('s', "stop", "Stop the work in hand; what is finished is kept", c::running, c::stop);
+    add(
+        's',
+        "stop",
+        "Stop the work in hand; what is finished is kept",
+        c.work()::running,
+        c.work()::stop);
     add(
         'a',
         "arm/lock",
         "Arm the transmitter, or lock it again",
         () -> !c.simulated(),
-        c::armOrLock);
+        c.work()::armOrLock);
     add('e', "settings", "Edit sample and settings", () -> true, c::openSettings);
     add(
         'i',
@@ -134,6 +144,7 @@ final class Actions {
         () -> c.sideways(1));
     add('0', "all", "Show all of the plot; once more, the part around the peak", plot, c::showAll);
     add('y', "log scale", "Logarithmic or linear scale", plot, c::toggleLogarithmic);
+    add('j', "Hz/ppm", "Spectrum in Hz or in ppm of the carrier", plot, () -> look.ppm = !look.ppm);
     add('d', "residuals", "Residuals on or off", plot, () -> look.residuals = !look.residuals);
     add(
         'w',
@@ -151,8 +162,13 @@ final class Actions {
 
   private void rest(Cockpit c) {
     Look look = c.look();
-    add('+', "memory", "Longer memory of the live average", () -> true, () -> c.memory(2));
-    add('-', "memory", "Shorter memory of the live average", () -> true, () -> c.memory(0.5));
+    add('+', "memory", "Longer memory of the live average", () -> true, () -> c.work().memory(2));
+    add(
+        '-',
+        "memory",
+        "Shorter memory of the live average",
+        () -> true,
+        () -> c.work().memory(0.5));
     add('B', "bell", "Bell at a new best on or off", () -> true, c::toggleBell);
     add(
         'L',
@@ -160,6 +176,12 @@ final class Actions {
         "Colours for a light or a dark background",
         () -> true,
         () -> look.light = !look.light);
+    add(
+        'M',
+        "mouse",
+        "Mouse on or off: a click chooses a rung or places the cursor",
+        () -> true,
+        c::toggleMouse);
     add('h', "messages", "All messages so far", () -> true, c::openMessages);
     add('?', "help", "The keys that work now", () -> true, c::openHelp);
     add('/', "find", "Search all actions by word", () -> true, c::openActions);
@@ -177,7 +199,7 @@ final class Actions {
             "Ctrl-Z",
             "suspend",
             "Back to the shell; fg returns",
-            () -> !c.running(),
+            () -> !c.work().running(),
             c::suspend));
     add('q', "quit", "Quit", () -> true, c::quit);
     for (Rung rung : Rung.values()) {

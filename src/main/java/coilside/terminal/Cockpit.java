@@ -20,16 +20,14 @@ final class Cockpit {
   private final Desk desk;
   private final Watch watch;
   private final TerminalOptions options;
+  private final WorkControl work;
   private final Glyphs glyphs;
   private final Look look;
   private final PictureView pictures;
   private final List<Action> actions;
   private final Deque<Panel> panels = new ArrayDeque<>();
   private final ScreenLayout layout;
-  private Work pending;
-  private long bestsHeard;
   private Picture numbered;
-  private boolean follow;
   private boolean done;
   private boolean interrupted;
   private boolean redraw;
@@ -43,6 +41,7 @@ final class Cockpit {
     glyphs = new Glyphs(unicode);
     look = new Look(options.store(), unicode, light, options.bell());
     pictures = new PictureView(look, watch::snapshot);
+    work = new WorkControl(desk, watch, options, look, pictures, panels::push);
     actions = Actions.of(this);
     layout = new ScreenLayout(desk, look, pictures, actions, options.clock());
     watch.ladder(desk.ladder());
@@ -96,29 +95,12 @@ final class Cockpit {
     return r;
   }
 
-  /** True once for each new best of the headline number while the bell is on. */
-  boolean takeBell(Snapshot state) {
-    long bests = state.headlines().get(look.headline).bests();
-    boolean ring = look.bell && bests > bestsHeard && bests > 1;
-    bestsHeard = bests;
-    return ring;
+  WorkControl work() {
+    return work;
   }
 
   boolean running() {
-    return watch.snapshotWork().isPresent() || pending != null;
-  }
-
-  /** True when live running can start, or be changed over from the other kind. */
-  boolean canGoLive(boolean transmit) {
-    Optional<Work> now = watch.snapshotWork();
-    return !liveNow(transmit) && (now.isEmpty() || now.get() instanceof Work.Live);
-  }
-
-  boolean liveNow(boolean transmit) {
-    return watch
-        .snapshotWork()
-        .filter(w -> w instanceof Work.Live l && l.transmit() == transmit)
-        .isPresent();
+    return work.running();
   }
 
   Canvas frame(int width, int height, Snapshot state) {
@@ -146,14 +128,10 @@ final class Cockpit {
       watch.headlines(Headline.of(numbered));
     }
     Optional<Rung> measured = watch.snapshotMeasuring();
-    if (follow && measured.isPresent() && measured.get() != look.chosen) {
+    if (work.followed() && measured.isPresent() && measured.get() != look.chosen) {
       show(measured.get());
     }
-    if (pending != null && watch.snapshotWork().isEmpty() && !desk.busy()) {
-      Work next = pending;
-      pending = null;
-      begin(next);
-    }
+    work.tick();
   }
 
   void key(Key key) {
@@ -167,11 +145,18 @@ final class Cockpit {
       return;
     }
     Panel panel = panels.peek();
+    if (panel != null && key.is(Key.Name.CLICK)) {
+      return;
+    }
     if (panel != null) {
       if (!panel.key(key)) {
         panels.remove(panel);
       }
       look.keep();
+      return;
+    }
+    if (key.is(Key.Name.CLICK)) {
+      click(key.column(), key.row());
       return;
     }
     Key meant = meaning(key);
@@ -195,105 +180,24 @@ final class Cockpit {
     };
   }
 
+  private void click(int column, int row) {
+    Optional<Rung> rung = layout.rungAt(column, row);
+    if (rung.isPresent()) {
+      choose(rung.get());
+    } else {
+      pictures.click(column, row);
+    }
+  }
+
   private void run(Action action) {
     if (action.works().getAsBoolean()) {
       action.run().run();
       look.keep();
     } else {
       watch.note(
-          true, "Not now: " + action.what() + (running() ? " (work in hand; s stops it)." : "."));
+          true,
+          "Not now: " + action.what() + (work.running() ? " (work in hand; s stops it)." : "."));
     }
-  }
-
-  void begin(Work work) {
-    if (ScreenTexts.transmits(work) && !desk.armed()) {
-      arm(() -> begin(work));
-      return;
-    }
-    if (desk.busy()) {
-      watch.note(true, "The bench is busy; s stops it.");
-      return;
-    }
-    boolean live = work instanceof Work.Live || work instanceof Work.TakeFid;
-    if (live) {
-      watch.clearHeadlines();
-      bestsHeard = 0;
-    }
-    pictures.source(
-        live
-            ? PictureView.Source.LIVE
-            : work instanceof Work.Log ? PictureView.Source.LOG : PictureView.Source.RUNG);
-    follow = true;
-    watch.workBegun(work);
-    try {
-      desk.begin(work);
-    } catch (IllegalStateException | IllegalArgumentException e) {
-      watch.workRefused();
-      watch.note(true, e.getMessage());
-    }
-  }
-
-  /** Starts or changes live running, after the live running in hand has ended. */
-  void live(boolean transmit) {
-    Optional<Work> now = watch.snapshotWork();
-    Work wanted = new Work.Live(look.memoryScans, transmit);
-    if (now.isEmpty()) {
-      begin(wanted);
-    } else if (now.get() instanceof Work.Live) {
-      pending = wanted;
-      desk.stop();
-    } else {
-      watch.note(true, "Not now: work in hand; s stops it.");
-    }
-  }
-
-  void memory(double factor) {
-    int before = look.memoryScans;
-    look.memoryScans = (int) Math.max(1, Math.min(1000, Math.round(before * factor)));
-    if (look.memoryScans == before) {
-      watch.note(
-          false, "The live average remembers " + before + (before == 1 ? " scan." : " scans."));
-      return;
-    }
-    watch.note(
-        false,
-        "The live average remembers "
-            + look.memoryScans
-            + (look.memoryScans == 1 ? " scan." : " scans."));
-    watch
-        .snapshotWork()
-        .filter(Work.Live.class::isInstance)
-        .ifPresent(w -> live(((Work.Live) w).transmit()));
-  }
-
-  void stop() {
-    pending = null;
-    watch.note(false, "Stopping; what is finished is kept.");
-    desk.stop();
-  }
-
-  void armOrLock() {
-    if (desk.armed() && !desk.board().simulated()) {
-      desk.disarm(options.operator());
-      watch.note(false, "The transmitter is locked.");
-    } else if (desk.armed()) {
-      watch.note(false, "The simulated bench may always transmit: nothing leaves this computer.");
-    } else {
-      arm(() -> {});
-    }
-  }
-
-  private void arm(Runnable then) {
-    panels.push(
-        new ConfirmPanel(
-            "Arm the transmitter? Read this first",
-            Cautions.text(desk.limits()),
-            "arm",
-            () -> {
-              desk.arm(options.operator());
-              watch.note(true, "ARMED by " + options.operator() + ": the board may transmit.");
-              then.run();
-            }));
   }
 
   void choose(int by) {
@@ -302,7 +206,7 @@ final class Cockpit {
   }
 
   void choose(Rung rung) {
-    follow = false;
+    work.stayHere();
     show(rung);
   }
 
@@ -359,14 +263,17 @@ final class Cockpit {
     watch.note(false, "The bell at a new best is " + (look.bell ? "on." : "off."));
   }
 
+  void toggleMouse() {
+    look.mouse = !look.mouse;
+    watch.note(
+        false,
+        look.mouse
+            ? "The mouse is on: a click chooses a rung or places the cursor. M turns it off."
+            : "The mouse is off: the terminal marks and copies text again.");
+  }
+
   void openBig() {
-    panels.push(
-        new BigPanel(
-            look,
-            () -> {
-              watch.clearHeadlines();
-              bestsHeard = 0;
-            }));
+    panels.push(new BigPanel(look, work::forgetBests));
   }
 
   void openSettings() {
@@ -399,8 +306,8 @@ final class Cockpit {
   }
 
   void quit() {
-    Optional<Work> work = watch.snapshotWork();
-    if (work.isPresent() && !(work.get() instanceof Work.Live)) {
+    Optional<Work> now = watch.snapshotWork();
+    if (now.isPresent() && !(now.get() instanceof Work.Live)) {
       panels.push(
           new ConfirmPanel(
               "Quit while the bench is at work?",

@@ -12,6 +12,10 @@ import java.io.InputStream;
  */
 final class EscapeFilter extends InputStream {
   private static final int ESCAPE = 27;
+
+  /** Escape, "[M", then button, column and row. */
+  private static final int MOUSE_LENGTH = 6;
+
   private static final long HOLD_NANOS = 40_000_000L;
   private static final int CAPACITY = 4096;
   private final InputStream source;
@@ -83,6 +87,9 @@ final class EscapeFilter extends InputStream {
         int second = buffer[i + 1];
         if (second != '[' && second != 'O') {
           return 0;
+        }
+        if (second == '[' && length > 2 && buffer[i + 2] == 'M') {
+          return length < MOUSE_LENGTH ? length : 0;
         }
         for (int k = i + 2; k < count; k++) {
           if (buffer[k] >= 0x40 && buffer[k] <= 0x7e) {

@@ -71,10 +71,19 @@ final class LadderView {
     return m == null ? "" : label(name, glyphs) + Numbers.named(name, m, glyphs.unicode());
   }
 
+  private static int linesEach(Area area) {
+    return Math.max(1, Math.min(5, area.height() / Rung.values().length));
+  }
+
+  static Optional<Rung> rungAt(Area area, int row) {
+    int i = Math.floorDiv(row - area.y(), linesEach(area));
+    return i >= 0 && i < Rung.values().length ? Optional.of(Rung.values()[i]) : Optional.empty();
+  }
+
   static void draw(Canvas canvas, Area area, Snapshot state, Rung chosen, Instant now) {
     Glyphs glyphs = canvas.glyphs();
     Rung[] rungs = Rung.values();
-    int lines = Math.max(1, Math.min(5, area.height() / rungs.length));
+    int lines = linesEach(area);
     int y = area.y();
     for (Rung rung : rungs) {
       RungStatus s = state.status(rung);

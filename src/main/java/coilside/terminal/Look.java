@@ -17,6 +17,8 @@ final class Look {
   Headline headline;
   boolean residuals;
   boolean wide;
+  boolean ppm;
+  boolean mouse;
   boolean light;
   boolean bell;
   int memoryScans;
@@ -36,6 +38,8 @@ final class Look {
     headline = choice("headline", Headline.LINEWIDTH);
     residuals = flag("residuals", true);
     wide = flag("wide", false);
+    ppm = flag("ppm", false);
+    mouse = flag("mouse", false);
     light = flag("light", lightByDefault);
     bell = flag("bell", bellByDefault);
     memoryScans = (int) number("memory", 1, 1, 1000);
@@ -76,6 +80,8 @@ final class Look {
     put("headline", headline.name());
     put("residuals", Boolean.toString(residuals));
     put("wide", Boolean.toString(wide));
+    put("ppm", Boolean.toString(ppm));
+    put("mouse", Boolean.toString(mouse));
     put("light", Boolean.toString(light));
     put("bell", Boolean.toString(bell));
     put("memory", Integer.toString(memoryScans));

@@ -3,25 +3,26 @@ package coilside.terminal;
 import coilside.bench.Picture;
 import coilside.bench.Rung;
 import coilside.signal.Fid;
-import coilside.signal.Spectrum;
 import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
-import java.util.Optional;
 
 /** Turns the bench's pictures into plots. */
 final class PictureModels {
   private PictureModels() {}
 
   /** The plots of a picture, the most telling first. */
-  static List<PlotModel> of(Picture picture, Part part, String prefix) {
+  static List<PlotModel> of(Picture picture, Part part, boolean ppm, String prefix) {
     if (picture instanceof Picture.Curve curve) {
       return List.of(curve(curve, prefix));
     }
     Picture.Trace trace = Phased.of((Picture.Trace) picture);
     List<PlotModel> out = new ArrayList<>();
     out.add(fid(trace, part, prefix));
-    trace.spectrum().ifPresent(s -> out.add(spectrum(s, trace.rung(), part, prefix)));
+    boolean phased = Phased.applies((Picture.Trace) picture);
+    trace
+        .spectrum()
+        .ifPresent(s -> out.add(SpectrumModels.of(s, trace.rung(), part, phased, ppm, prefix)));
     return out;
   }
 
@@ -62,6 +63,9 @@ final class PictureModels {
         sy[k] = y[order[k]];
       }
       series.add(Series.line("", Ink.FAINT, sx, sy));
+    }
+    if (c.fitU().length > 1) {
+      series.add(Series.band("fit +- u", c.fitX(), c.fitY(), c.fitU()));
     }
     if (c.fitX().length > 1) {
       series.add(
@@ -106,7 +110,7 @@ final class PictureModels {
     return Double.NaN;
   }
 
-  private static double[] part(double[] re, double[] im, Part part) {
+  static double[] part(double[] re, double[] im, Part part) {
     return switch (part) {
       case REAL, BOTH -> re;
       case IMAGINARY -> im;
@@ -166,38 +170,5 @@ final class PictureModels {
       sum += x * x;
     }
     return Math.sqrt(sum / Math.max(1, v.length));
-  }
-
-  private static PlotModel spectrum(Spectrum s, Rung rung, Part part, String prefix) {
-    int n = s.points();
-    double[] f = new double[n];
-    Arrays.setAll(f, s::offsetHertz);
-    double[] magnitude = new double[n];
-    Arrays.setAll(magnitude, s::magnitude);
-    double[] y = part(s.re(), s.im(), part);
-    List<Series> series = new ArrayList<>();
-    series.add(Series.line(part == Part.BOTH ? "real" : part.words, Ink.SIGNAL, f, y));
-    if (part == Part.BOTH) {
-      series.add(Series.line("imaginary", Ink.SECOND, f, s.im()));
-    }
-    double noise = Peak.baseline(magnitude);
-    double[] ends = {f[0], f[n - 1]};
-    double[] half = {noise, noise};
-    series.add(0, Series.band("noise level", ends, new double[2], half));
-    Optional<Peak> peak = Peak.of(s, magnitude, noise);
-    double[] near = peak.map(Peak::around).orElse(new double[] {Double.NaN, Double.NaN});
-    return new PlotModel(
-        prefix + rung.id() + ".spectrum",
-        "spectrum, " + part.words + peak.map(Peak::text).orElse(""),
-        "offset",
-        "Hz",
-        "amplitude",
-        "V",
-        series,
-        List.of(),
-        s.carrierHertz(),
-        near[0],
-        near[1],
-        "");
   }
 }

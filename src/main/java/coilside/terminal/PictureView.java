@@ -27,6 +27,7 @@ final class PictureView {
   private Boolean alone;
   private boolean shownAlone;
   private List<PlotModel> shown = List.of();
+  private List<Integer> drawnNow = List.of();
 
   PictureView(Look look, Supplier<Snapshot> latest) {
     this.look = look;
@@ -40,6 +41,7 @@ final class PictureView {
   void source(Source s) {
     if (s != source) {
       source = s;
+      views.values().forEach(PlotView::rescale);
       outdated = true;
       focus = 0;
       alone = null;
@@ -48,6 +50,7 @@ final class PictureView {
 
   void rungChanged() {
     source = Source.RUNG;
+    views.values().forEach(PlotView::rescale);
     outdated = true;
     focus = 0;
     alone = null;
@@ -59,6 +62,16 @@ final class PictureView {
 
   void toggleAlone() {
     alone = !shownAlone;
+  }
+
+  /** Places the cursor of the plot at that cell and gives it the keys. */
+  void click(int column, int row) {
+    for (int i = 0; i < shown.size(); i++) {
+      if (drawnNow.contains(i) && view(shown.get(i)).placeCursor(column, row)) {
+        focus = i;
+        return;
+      }
+    }
   }
 
   boolean several() {
@@ -78,7 +91,8 @@ final class PictureView {
   }
 
   private PlotView view(PlotModel m) {
-    return views.computeIfAbsent(m.id() + look.part, k -> new PlotView());
+    return views.computeIfAbsent(
+        m.id() + look.part + m.xUnit(), k -> new PlotView(k.contains("noise.spectrum")));
   }
 
   private void choosePlots(Snapshot state) {
@@ -87,7 +101,10 @@ final class PictureView {
         source == Source.LOG
             ? LogModels.of(state.log())
             : picture
-                .map(p -> PictureModels.of(p, look.part, source == Source.LIVE ? "live." : ""))
+                .map(
+                    p ->
+                        PictureModels.of(
+                            p, look.part, look.ppm, source == Source.LIVE ? "live." : ""))
                 .orElse(List.of());
     outdated = false;
   }
@@ -111,11 +128,37 @@ final class PictureView {
     String caption = shown.get(0).caption();
     List<String> lines = caption.isEmpty() ? List.of() : Wrap.wrap(caption, area.width());
     int captionRows = Math.min(area.height() > 24 ? 3 : 2, lines.size());
+    List<String> standing = standing(state, area.width());
+    for (int i = 0; i < standing.size(); i++) {
+      int y = area.bottom() - captionRows - standing.size() + i;
+      Ink ink = LadderView.ink(state.status(look.chosen).state());
+      canvas.put(area.x(), y, standing.get(i), ink, area.right());
+    }
     for (int i = 0; i < captionRows; i++) {
       canvas.put(area.x(), area.bottom() - captionRows + i, lines.get(i), Ink.STRONG, area.right());
     }
-    plots = new Area(plots.x(), plots.y(), plots.width(), plots.height() - captionRows);
+    plots =
+        new Area(
+            plots.x(), plots.y(), plots.width(), plots.height() - captionRows - standing.size());
     drawPlots(canvas, plots);
+  }
+
+  /** Why the rung shown is stale or refused, short; the details panel has all of it. */
+  private List<String> standing(Snapshot state, int width) {
+    RungStatus status = state.status(look.chosen);
+    boolean measuring = state.measuring().filter(r -> r == look.chosen).isPresent();
+    if (source != Source.RUNG
+        || measuring
+        || status.reasons().isEmpty()
+        || status.state() == RungStatus.State.FRESH
+        || status.state() == RungStatus.State.MISSING) {
+      return List.of();
+    }
+    String text = LadderView.word(status.state()) + ": " + String.join("; ", status.reasons());
+    List<String> lines = Wrap.wrap(text, width);
+    return lines.size() <= 2
+        ? lines
+        : List.of(lines.get(0), Wrap.wrap(lines.get(1), width - 14).get(0) + " (i: all of it)");
   }
 
   private void drawPlots(Canvas canvas, Area area) {
@@ -132,6 +175,7 @@ final class PictureView {
     Plot plot = new Plot(canvas, look.style);
     if (one) {
       PlotModel m = shown.get(focus);
+      drawnNow = List.of(focus);
       plot.draw(m, view(m), area, look.residuals, true);
       return;
     }
@@ -140,6 +184,7 @@ final class PictureView {
             ? focus - 1
             : Math.min(focus, shown.size() - 2);
     List<PlotModel> two = List.of(shown.get(first), shown.get(first + 1));
+    drawnNow = List.of(first, first + 1);
     boolean beside = area.width() >= 130;
     for (int i = 0; i < 2; i++) {
       int half = beside ? area.width() / 2 : area.height() / 2;

@@ -50,7 +50,35 @@ final class Plot {
       new PlotSeries(canvas, style, logFloor).draw(model.residuals(), inner, x, r, false);
     }
     xTicks(area, plot, plot.bottom() + residualRows, x);
+    inset(plot);
+    view.drawnIn(plot);
     cursor(plot, plot.bottom() + residualRows, y, x);
+  }
+
+  /** Lines in the emptier upper corner, where the plot has room to spare. */
+  private void inset(Area plot) {
+    List<String> lines = model.inset();
+    int width = lines.stream().mapToInt(String::length).max().orElse(0);
+    if (lines.isEmpty() || plot.width() < 2 * width || plot.height() < lines.size() + 8) {
+      return;
+    }
+    Area left = new Area(plot.x() + 1, plot.y() + 1, width, lines.size());
+    Area right = new Area(plot.right() - width - 1, plot.y() + 1, width, lines.size());
+    Area corner = drawn(left) < drawn(right) ? left : right;
+    canvas.clear(corner);
+    for (int i = 0; i < lines.size(); i++) {
+      canvas.put(corner.x(), corner.y() + i, lines.get(i), Ink.PLAIN, corner.right());
+    }
+  }
+
+  private int drawn(Area area) {
+    int n = 0;
+    for (int row = area.y(); row < area.bottom(); row++) {
+      for (int column = area.x(); column < area.right(); column++) {
+        n += canvas.at(column, row) == ' ' ? 0 : 1;
+      }
+    }
+    return n;
   }
 
   private Axis xAxis() {
@@ -107,6 +135,13 @@ final class Plot {
       for (int k = 0; k < s.y().length; k++) {
         double v = s.y()[k];
         if (!Double.isFinite(v) || s.x()[k] < x.low() || s.x()[k] > x.high()) {
+          continue;
+        }
+        if (log && s.form() == Series.Form.BAND) {
+          // A band about zero has no lower edge on a logarithmic scale.
+          double edge = PlotSeries.scaled(Math.abs(v) + s.uncertainty(k), true, logFloor);
+          low = Math.min(low, edge);
+          high = Math.max(high, edge);
           continue;
         }
         double u = log ? 0 : s.uncertainty(k);

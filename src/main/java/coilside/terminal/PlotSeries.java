@@ -29,7 +29,7 @@ final class PlotSeries {
     for (Series s : all) {
       switch (s.form()) {
         case LINE -> line(dots, s, x, y, log);
-        case BAND -> band(dots, s, x, y);
+        case BAND -> band(dots, s, x, y, log);
         case POINTS -> {
           errorBars(dots, s, x, y, log);
           if (crowded(s, plot)) {
@@ -120,18 +120,27 @@ final class PlotSeries {
     }
   }
 
-  private void band(Dots dots, Series s, Axis x, Axis y) {
+  private void band(Dots dots, Series s, Axis x, Axis y, boolean log) {
     for (int k = 0; k + 1 < s.x().length; k++) {
       int from = (int) Math.max(0, Math.round(column(dots, x, s.x()[k])));
       int to = (int) Math.min(dots.width() - 1.0, Math.round(column(dots, x, s.x()[k + 1])));
-      double top = dotRow(dots, y, s.y()[k] + s.uncertainty(k));
-      double bottom = dotRow(dots, y, s.y()[k] - s.uncertainty(k));
+      double u = s.uncertainty(k);
+      double nextU = s.uncertainty(k + 1);
+      double[] upper = {s.y()[k] + u, s.y()[k + 1] + nextU};
+      double[] lower = {s.y()[k] - u, s.y()[k + 1] - nextU};
       for (int c = from; c <= to; c++) {
         if (c % 2 == 0) {
-          dots.dot(c, (int) Math.round(top), s.ink());
-          dots.dot(c, (int) Math.round(bottom), s.ink());
+          double share = to > from ? (double) (c - from) / (to - from) : 0;
+          edge(dots, c, y, upper[0] + share * (upper[1] - upper[0]), log, s.ink());
+          edge(dots, c, y, lower[0] + share * (lower[1] - lower[0]), log, s.ink());
         }
       }
+    }
+  }
+
+  private void edge(Dots dots, int column, Axis y, double value, boolean log, Ink ink) {
+    if (!log || value > logFloor) {
+      dots.dot(column, (int) Math.round(dotRow(dots, y, scaled(value, log, logFloor))), ink);
     }
   }
 

@@ -10,6 +10,14 @@ final class PlotView {
   private boolean touched;
   private double cursor = Double.NaN;
   private boolean logarithmic;
+  private Area drawn = new Area(0, 0, 0, 0);
+
+  /**
+   * @param logarithmic whether the scale starts out logarithmic
+   */
+  PlotView(boolean logarithmic) {
+    this.logarithmic = logarithmic;
+  }
 
   double from() {
     return from;
@@ -61,6 +69,20 @@ final class PlotView {
     cursor = cursorOn() ? Double.NaN : 0.5;
   }
 
+  /** Where it was drawn last. */
+  void drawnIn(Area area) {
+    drawn = area;
+  }
+
+  /** Places the cursor there; false when that is outside. */
+  boolean placeCursor(int column, int row) {
+    if (column < drawn.x() || column >= drawn.right() || row < drawn.y() || row >= drawn.bottom()) {
+      return false;
+    }
+    cursor = (column - drawn.x()) / Math.max(1.0, drawn.width() - 1.0);
+    return true;
+  }
+
   void moveCursor(double by) {
     if (cursorOn()) {
       cursor = Math.max(0, Math.min(1, cursor + by));
@@ -91,6 +113,11 @@ final class PlotView {
     touched = !(touched && from == 0 && to == 1);
     from = 0;
     to = 1;
+    rescale();
+  }
+
+  /** Finds its scales anew: what was shown before does not matter any more. */
+  void rescale() {
     xScale.reset();
     yScale.reset();
     residualScale.reset();

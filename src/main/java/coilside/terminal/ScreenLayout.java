@@ -23,6 +23,7 @@ final class ScreenLayout {
   private final PictureView pictures;
   private final List<Action> actions;
   private final InstantSource clock;
+  private Area ladderArea = new Area(0, 0, 0, 0);
 
   ScreenLayout(
       Desk desk, Look look, PictureView pictures, List<Action> actions, InstantSource clock) {
@@ -46,9 +47,9 @@ final class ScreenLayout {
       ShotView.draw(canvas, new Area(1, 1, w - 2, shotRows), state, t90[0], t90[1], now);
       Area middle = new Area(0, 1 + shotRows, w, h - 3 - shotRows);
       int ladder = look.wide && panel.isEmpty() ? 0 : w >= 120 ? LADDER_WIDTH + 10 : LADDER_WIDTH;
+      ladderArea = new Area(0, middle.y(), Math.max(0, ladder - 1), middle.height());
       if (ladder > 0) {
-        LadderView.draw(
-            canvas, new Area(0, middle.y(), ladder - 1, middle.height()), state, look.chosen, now);
+        LadderView.draw(canvas, ladderArea, state, look.chosen, now);
       }
       Area rest = new Area(ladder, middle.y(), w - ladder, middle.height());
       if (panel.isPresent()) {
@@ -65,6 +66,14 @@ final class ScreenLayout {
     }
     message(canvas, state, h - 2);
     keys(canvas, h - 1, panel);
+  }
+
+  /** The rung drawn at that cell. */
+  Optional<Rung> rungAt(int column, int row) {
+    if (column >= ladderArea.right()) {
+      return Optional.empty();
+    }
+    return LadderView.rungAt(ladderArea, row);
   }
 
   /** The 90-degree pulse and the amplitude it holds at; NaN when the bench does not know it. */

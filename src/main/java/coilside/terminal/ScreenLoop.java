@@ -139,11 +139,12 @@ final class ScreenLoop {
     if (surface.palette().light() != cockpit.look().light) {
       surface.palette(surface.palette().withLight(cockpit.look().light));
     }
+    surface.mouse(cockpit.look().mouse);
     long before = bytesWritten.getAsLong();
     surface.show(
         cockpit.frame(surface.width(), surface.height(), state),
         cockpit.takeRedraw() || everything);
-    if (cockpit.takeBell(state)) {
+    if (cockpit.work().takeBell(state)) {
       surface.bell();
     }
     frameBytes = bytesWritten.getAsLong() - before;

@@ -181,8 +181,19 @@ final class SettingsPanel implements Panel {
     if (key.is(Key.Name.ENTER)) {
       Row row = rows.get(chosen);
       try {
+        List<Rung> stale = row.stale().apply(typed.toString());
         row.apply().accept(typed.toString());
-        tell.accept(false, row.name() + " is now " + row.shown().get() + ".");
+        tell.accept(
+            false,
+            row.name()
+                + " is now "
+                + row.shown().get()
+                + (stale.isEmpty()
+                    ? "."
+                    : "; "
+                        + stale.size()
+                        + (stale.size() == 1 ? " rung is" : " rungs are")
+                        + " stale, r measures."));
         typed = null;
       } catch (IllegalArgumentException | IllegalStateException e) {
         tell.accept(true, e.getMessage());

@@ -2,7 +2,12 @@ package coilside.terminal;
 
 import com.googlecode.lanterna.TerminalSize;
 import com.googlecode.lanterna.input.KeyStroke;
+import com.googlecode.lanterna.input.MouseAction;
+import com.googlecode.lanterna.input.MouseActionType;
 import com.googlecode.lanterna.screen.Screen;
+import com.googlecode.lanterna.screen.TerminalScreen;
+import com.googlecode.lanterna.terminal.ExtendedTerminal;
+import com.googlecode.lanterna.terminal.MouseCaptureMode;
 import java.io.IOException;
 
 /** Shows canvases on a Lanterna screen, sending only what changed, and reads its keys. */
@@ -10,6 +15,7 @@ final class Surface {
   private final Screen screen;
   private final Runnable ring;
   private Palette palette;
+  private boolean mouse;
 
   /**
    * @param screen a started screen
@@ -28,6 +34,16 @@ final class Surface {
 
   void palette(Palette other) {
     palette = other;
+  }
+
+  /** Asks the terminal to tell clicks, or to keep them for itself (copying text). */
+  void mouse(boolean wanted) throws IOException {
+    if (wanted != mouse
+        && screen instanceof TerminalScreen s
+        && s.getTerminal() instanceof ExtendedTerminal t) {
+      t.setMouseCaptureMode(wanted ? MouseCaptureMode.CLICK : null);
+    }
+    mouse = wanted;
   }
 
   /** Takes a changed size over; true when there was one. */
@@ -66,6 +82,11 @@ final class Surface {
   }
 
   static Key key(KeyStroke stroke) {
+    if (stroke instanceof MouseAction click) {
+      return click.getActionType() == MouseActionType.CLICK_DOWN
+          ? Key.click(click.getPosition().getColumn(), click.getPosition().getRow())
+          : Key.of(Key.Name.OTHER);
+    }
     Key.Name name =
         switch (stroke.getKeyType()) {
           case Character -> Key.Name.CHARACTER;
@@ -92,6 +113,6 @@ final class Surface {
     if (stroke.isAltDown()) {
       return Key.of(Key.Name.OTHER);
     }
-    return new Key(name, stroke.getCharacter(), stroke.isCtrlDown());
+    return new Key(name, stroke.getCharacter(), stroke.isCtrlDown(), 0, 0);
   }
 }

@@ -59,6 +59,31 @@ public final class TextInterface {
     return Optional.empty();
   }
 
+  /** Loads what the first picture of the screen needs; touches no terminal. */
+  public static void loadAhead() {
+    Palette palette = Palette.from(java.util.Map.of("TERM", "xterm-256color"), false);
+    palette.character('x', Ink.PLAIN);
+    new Canvas(Cockpit.LEAST_WIDTH, Cockpit.LEAST_HEIGHT, new Glyphs(true));
+    try {
+      java.lang.invoke.MethodHandles.Lookup here = java.lang.invoke.MethodHandles.lookup();
+      for (Class<?> c :
+          new Class<?>[] {
+            Console.class,
+            QuietUnixTerminal.class,
+            com.googlecode.lanterna.screen.TerminalScreen.class,
+            com.googlecode.lanterna.input.DefaultKeyDecodingProfile.class,
+            PictureView.class,
+            Plot.class,
+            ShotView.class,
+            LadderView.class
+          }) {
+        here.ensureInitialized(c);
+      }
+    } catch (IllegalAccessException e) {
+      throw new IllegalStateException("classes of this package are open to it", e);
+    }
+  }
+
   static boolean unicode(TerminalOptions options) {
     return !options.asciiOnly() && StandardCharsets.UTF_8.equals(options.charset());
   }

@@ -89,12 +89,23 @@ final class Watch implements Consumer<Progress> {
     } else if (event instanceof Progress.Message e) {
       note(e.warning(), e.text());
     } else if (event instanceof Progress.WorkEnded e) {
+      String what = e.reason().orElse(e.done() ? doneText() : "Ended.");
       work = null;
       measuring = null;
       shotRunning = false;
       step = null;
-      note(!e.done(), e.reason().orElse(e.done() ? "Done." : "Ended."));
+      note(!e.done(), what);
     }
+  }
+
+  private String doneText() {
+    if (work instanceof Work.Ready) {
+      return "The bench is ready: every rung is up to date.";
+    }
+    if (work instanceof Work.Measure m) {
+      return "Measured: " + m.rung().id() + ".";
+    }
+    return work instanceof Work.TakeFid ? "The FID is taken and kept." : "Done.";
   }
 
   synchronized void note(boolean warning, String text) {

@@ -91,9 +91,9 @@ class ScreenTest {
     s.press("7");
     assertShows(s, "FID, real", "residual", "time (ms)");
     s.press("u");
-    assertShows(s, "spectrum, real", "peak at 122.1 Hz", "offset (");
+    assertShows(s, "spectrum, real", "line at 12", "offset (");
     s.press("1");
-    assertShows(s, "no line above 5 sigma", "noise level");
+    assertShows(s, "no line above 5 sigma", "░ noise");
     s.press("2");
     assertShows(s, "resonance: detection", "carrier (MHz)", "sigma");
   }
@@ -173,7 +173,7 @@ class ScreenTest {
     s.press(KeyType.Enter);
     assertEquals("doped water 2", s.desk.settings().sample());
     s.press("q");
-    assertShows(s, "sample is now doped water 2.", "◐ stale");
+    assertShows(s, "sample is now doped water 2; 4 rungs are stale, r measures.", "◐ stale");
   }
 
   @Test
