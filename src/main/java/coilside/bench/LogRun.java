@@ -62,23 +62,28 @@ final class LogRun {
     bench.note(
         "log started",
         run + ": every " + plan.every().toNanos() * 1e-9 + " s, " + plan.scans() + " scans a row");
-    LogEnd end = null;
+    LogEnd end;
     try {
       warnOfWhatIsStale();
       end = slots();
-      return end;
-    } finally {
-      bench.note(
-          "log ended",
-          run
-              + ": "
-              + rows
-              + " rows, "
-              + gaps
-              + " gaps"
-              + (end == null
-                  ? ", by an error"
-                  : end.reason().isEmpty() ? "" : ": " + end.reason()));
+    } catch (BoardException | KeepException | RuntimeException e) {
+      noteTheEndIfPossible();
+      throw e;
+    }
+    bench.note("log ended", told() + (end.reason().isEmpty() ? "" : ": " + end.reason()));
+    return end;
+  }
+
+  private String told() {
+    return run + ": " + rows + " rows, " + gaps + " gaps";
+  }
+
+  /** What ended the run may also be in the way of this; it is the first that matters. */
+  private void noteTheEndIfPossible() {
+    try {
+      bench.note("log ended", told() + ", by an error");
+    } catch (KeepException e) {
+      bench.say(true, e.getMessage());
     }
   }
 

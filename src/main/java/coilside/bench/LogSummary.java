@@ -144,12 +144,24 @@ public record LogSummary(
         x[i] = (number[i] - firstNumber) * interval;
       }
       double[] y = Arrays.copyOf(hertz, count);
-      Optional<DriftFit.Line> overTime =
-          line(x, y, Arrays.copyOf(u, count), "no drift rate", notes);
-      Optional<Measured> mean = overTime.map(l -> Measured.of(l.mean(), l.uMean(), Unit.HERTZ));
+      double[] uy = Arrays.copyOf(u, count);
+      Optional<DriftFit.Line> overTime = line(x, y, uy, "no drift rate", notes);
+      double wide = overTime.map(l -> widening(l, x, y, uy)).orElse(1.0);
+      if (wide > 1) {
+        notes.add(
+            String.format(
+                Locale.ROOT,
+                "the frequency does not scatter about a straight line but wanders: the"
+                    + " uncertainties of mean and drift are widened %.3g times for that",
+                wide));
+      }
+      Optional<Measured> mean =
+          overTime.map(l -> Measured.of(l.mean(), wide * l.uMean(), Unit.HERTZ));
       Optional<Slope> drift =
           overTime.map(
-              l -> new Slope(l.ppmPerHour(l.mean()), l.uSlope() * 3600e6 / Math.abs(l.mean())));
+              l ->
+                  new Slope(
+                      l.ppmPerHour(l.mean()), wide * l.uSlope() * 3600e6 / Math.abs(l.mean())));
       Warmth warmth = warmth(x, notes);
       return new LogSummary(
           run,
@@ -166,6 +178,25 @@ public record LogSummary(
           warmth.coefficient(),
           wander(interval, notes),
           notes);
+    }
+
+    /**
+     * By how much neighbouring residuals that go together widen the uncertainties of a line: with a
+     * correlation r from one to the next, n values are worth n (1 - r) / (1 + r) (first-order
+     * autoregression; common practice, from memory). 1 where they do not.
+     */
+    private static double widening(DriftFit.Line line, double[] x, double[] y, double[] u) {
+      double together = 0;
+      double alone = 0;
+      double before = 0;
+      for (int i = 0; i < x.length; i++) {
+        double residual = (y[i] - line.at(x[i])) / u[i];
+        together += i == 0 ? 0 : residual * before;
+        alone += residual * residual;
+        before = residual;
+      }
+      double r = alone > 0 ? together / alone : 0;
+      return r > 2 / Math.sqrt(x.length) ? Math.sqrt((1 + r) / (1 - r)) : 1;
     }
 
     /** From one slot to the next, s: the usual distance, since the clock may have stepped. */
@@ -219,13 +250,10 @@ public record LogSummary(
                 high - low,
                 LEAST_TEMPERATURE_SPAN));
       } else {
+        double[] values = Arrays.copyOf(y, n);
+        double[] uncertainties = Arrays.copyOf(uy, n);
         coefficient =
-            line(
-                    temperatures,
-                    Arrays.copyOf(y, n),
-                    Arrays.copyOf(uy, n),
-                    "no temperature coefficient",
-                    notes)
+            line(temperatures, values, uncertainties, "no temperature coefficient", notes)
                 .map(l -> new Slope(l.ppmPerUnit(l.mean()), l.uSlope() * 1e6 / Math.abs(l.mean())));
         double together = correlation(temperatures, Arrays.copyOf(at, n));
         if (coefficient.isPresent() && Math.abs(together) > CONFOUNDED) {
@@ -238,6 +266,11 @@ public record LogSummary(
         }
       }
       return new Warmth(OptionalDouble.of(low), OptionalDouble.of(high), coefficient);
+    }
+
+    private static Slope coefficient(DriftFit.Line l, double[] t, double[] y, double[] u) {
+      double wide = widening(l, t, y, u);
+      return new Slope(l.ppmPerUnit(l.mean()), wide * l.uSlope() * 1e6 / Math.abs(l.mean()));
     }
 
     private static double correlation(double[] a, double[] b) {

@@ -202,6 +202,9 @@ final class LogCommand extends BenchCommand {
       open.listen(reporter);
       LogEnd end = open.bench().log(plan);
       reporter.ended(LogList.summary(open.view(), end.run()), end);
+      if (end.rows() == 0 && end.gaps() > 0) {
+        output.aside("Not one row could be measured; the gaps say why.");
+      }
       return reporter.csvFailed() ? ExitStatus.NOT_KEPT : status(end);
     }
   }

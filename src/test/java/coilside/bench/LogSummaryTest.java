@@ -119,6 +119,38 @@ class LogSummaryTest {
     assertTrue(within > 116 && within < 157, within + " of 200 within one u");
   }
 
+  /** A magnet that wanders by itself: neighbours go together with a correlation of 0.8. */
+  @Test
+  void theUncertaintyOfTheDriftCoversAWanderingMagnet() {
+    int within = 0;
+    for (int trial = 0; trial < 200; trial++) {
+      LogSummary.Builder one = new LogSummary.Builder();
+      Random random = new Random(trial);
+      double wander = 5 * random.nextGaussian();
+      for (int i = 0; i < 400; i++) {
+        wander = 0.8 * wander + 3 * random.nextGaussian();
+        Instant due = START.plusSeconds(60L * i);
+        one.add(
+            new LogRow(
+                "log-a",
+                i,
+                due,
+                due,
+                Map.of("larmor_frequency", Measured.of(8.09e6 + wander, 0.1, Unit.HERTZ)),
+                OptionalDouble.empty(),
+                0,
+                "",
+                ""));
+      }
+      LogSummary summary = one.build();
+      LogSummary.Slope drift = summary.driftPpmPerHour().orElseThrow();
+      within += Math.abs(drift.value()) < drift.u() ? 1 : 0;
+      assertTrue(summary.notes().stream().anyMatch(n -> n.contains("wanders")));
+    }
+    // Without the widening it would be 26 %; 68 % of 200 is 136, three binomial spreads are 20.
+    assertTrue(within > 112 && within < 157, within + " of 200 within one u");
+  }
+
   @Test
   void theTemperatureCoefficientIsThatOfTheMagnet() {
     Random random = new Random(1);

@@ -25,10 +25,15 @@ class LongLogTest {
   @Tag("validation")
   void aHundredThousandRepetitionsNeitherGrowNorSlowDown() throws Exception {
     List<String> lines = run(100_000);
-    long[] micros = lines.stream().mapToLong(l -> Long.parseLong(l.split(" ")[0])).toArray();
-    long[] kilobytes = lines.stream().mapToLong(l -> Long.parseLong(l.split(" ")[1])).toArray();
-    assertTrue(micros[9] < 2 * micros[1], "a row costs more and more: " + lines);
+    long[] micros = column(lines, 1);
+    long[] kilobytes = column(lines, 2);
+    // By the processor's time: that of the disk depends on who else uses it.
+    assertTrue(micros[9] < 1.5 * micros[2], "a row costs more and more: " + lines);
     assertTrue(kilobytes[9] < kilobytes[1] + 4096, "the heap grows: " + lines);
+  }
+
+  private static long[] column(List<String> lines, int column) {
+    return lines.stream().mapToLong(l -> Long.parseLong(l.split(" ")[column])).toArray();
   }
 
   private List<String> run(int repetitions) throws Exception {
@@ -49,7 +54,7 @@ class LongLogTest {
     } finally {
       process.destroyForcibly();
     }
-    System.out.println("median us a row, kB in use, by tenth: " + lines);
+    System.out.println("median us a row, of that on the processor, kB in use, by tenth: " + lines);
     assertEquals(11, lines.size(), lines.toString());
     assertEquals("PLANNED " + repetitions + " 0", lines.get(10));
 

@@ -42,6 +42,9 @@ final class LogProcess implements AutoCloseable {
     List<String> command =
         new ArrayList<>(
             List.of(
+                // The serial library makes this process ignore HUP, which children inherit.
+                "env",
+                "--default-signal=HUP",
                 Path.of(System.getProperty("java.home"), "bin", "java").toString(),
                 "-XX:TieredStopAtLevel=1",
                 "-Xshare:auto",
