@@ -37,12 +37,15 @@ final class Surface {
     palette = other;
   }
 
-  /** Asks the terminal to tell clicks, or to keep them for itself (copying text). */
+  /**
+   * Asks the terminal to tell clicks, or to keep them for itself (copying text). Presses alone
+   * (mode 9) are unknown to tmux, so releases are taken along and left out.
+   */
   void mouse(boolean wanted) throws IOException {
     if (wanted != mouse
         && screen instanceof TerminalScreen s
         && s.getTerminal() instanceof ExtendedTerminal t) {
-      t.setMouseCaptureMode(wanted ? MouseCaptureMode.CLICK : null);
+      t.setMouseCaptureMode(wanted ? MouseCaptureMode.CLICK_RELEASE : null);
     }
     mouse = wanted;
   }
