@@ -10,6 +10,7 @@ import java.util.ArrayList;
 import java.util.EnumMap;
 import java.util.EnumSet;
 import java.util.List;
+import java.util.Locale;
 import java.util.Map;
 import java.util.Optional;
 import java.util.OptionalDouble;
@@ -22,6 +23,9 @@ import java.util.function.Consumer;
  * finds. Used from one thread; {@link #stop()} may be called from any.
  */
 public final class Bench {
+  /** Rests of a nutation curve that count as long enough, in T1. */
+  private static final double ENOUGH_RESTS = 4;
+
   private final Board board;
   private final Keeper keeper;
   private final InstantSource clock;
@@ -193,6 +197,9 @@ public final class Bench {
       if (stateOf(rung) != RungStatus.State.FRESH) {
         Finding finding = measureOne(rung);
         measured.add(finding);
+        if (rung == Rung.T1 && !finding.refused()) {
+          measured.addAll(checkRests(finding));
+        }
         if (finding.refused() && !(rung == Rung.T2 && !Methods.possible(rung, board.limits()))) {
           break;
         }
@@ -200,6 +207,31 @@ public final class Bench {
       done++;
     }
     return new Climb(ladder(), measured, Methods.impossible(board.limits()));
+  }
+
+  /**
+   * The circle of pulse and repetition time was cut by a guess of T1; now that T1 is known, the
+   * nutation is measured again when its rests were shorter than four T1.
+   */
+  private List<Finding> checkRests(Finding t1) throws BoardException, KeepException {
+    double guess = guesses.t1Seconds().orElse(Double.POSITIVE_INFINITY);
+    double longest = t1.value("repetition_time").value() / GainMethod.RECOVERED;
+    double rest = GainMethod.RECOVERED * guess;
+    guesses.rememberT1(Math.max(1.1 * longest, Double.isInfinite(guess) ? 0 : guess));
+    if (rest >= ENOUGH_RESTS * longest) {
+      return List.of();
+    }
+    out.accept(
+        new Progress.Message(
+            true,
+            String.format(
+                Locale.ROOT,
+                "T1 is %.3g s, and the nutation was measured with rests of %.3g s, less than %.0f T1:"
+                    + " it is measured again",
+                longest,
+                rest,
+                ENOUGH_RESTS)));
+    return List.of(measureOne(Rung.NUTATION));
   }
 
   private Finding measureOne(Rung rung) throws BoardException, KeepException {

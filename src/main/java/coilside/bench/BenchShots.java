@@ -45,6 +45,25 @@ final class BenchShots {
             new Receive(window.points(), window.dwellSeconds(), 0)));
   }
 
+  /**
+   * The phase of the next scan of a run whose pulses alternate: an error of the DC offset then
+   * changes its sign from scan to scan instead of passing for signal.
+   */
+  static double alternate(Acquisition a) {
+    return a.scans().size() % 2 * Math.PI;
+  }
+
+  /** The phase of the last pulse of a shot, the one that is read, rad. */
+  static double readingPhase(Shot shot) {
+    double phase = 0;
+    for (coilside.shot.Step step : shot.flat()) {
+      if (step instanceof Pulse pulse) {
+        phase = pulse.phaseRadians();
+      }
+    }
+    return phase;
+  }
+
   /** The phase of the first pulse of a shot, rad. */
   static double firstPhase(Shot shot) {
     return shot.flat().stream()

@@ -12,8 +12,8 @@ import java.util.ArrayList;
 import java.util.List;
 
 /**
- * The amplitudes of a run's scans on the decay they share: complex, at the pulse's centre, each
- * with the same standard uncertainty.
+ * The amplitudes of a run's scans on the decay they share: complex, at the pulse's centre, turned
+ * back by the phase of the scan's last pulse.
  *
  * @param indices which scans of the run they belong to (those with a pulse)
  * @param fids those scans' FIDs without the DC offset
@@ -31,6 +31,22 @@ record CommonShape(
     double[] u,
     DecayResult decay,
     Quiet quiet) {
+
+  /**
+   * The rate at which the FIDs decay as the projection sees it, 1/s: minus the derivative of the
+   * shape projected on the shape. For an exponential 1/T2*, for any other form the weighted mean,
+   * |s(first)|^2/(2 integral |s|^2).
+   */
+  double decayRate() {
+    Fid shape = decay.shape(fids.get(0));
+    double sum = 0;
+    for (int k = 0; k < shape.points(); k++) {
+      sum += Math.pow(shape.magnitude(k), 2);
+    }
+    double first = Math.pow(shape.magnitude(0), 2);
+    double last = Math.pow(shape.magnitude(shape.points() - 1), 2);
+    return (first - last) / ((2 * sum - first - last) * shape.dwellSeconds());
+  }
 
   /** From the scans of a run, the receive-only one among them. */
   static CommonShape of(List<Shot> shots, List<Scan> scans) throws NotMeasurable {
@@ -52,11 +68,25 @@ record CommonShape(
       Fid fid = fids.get(j);
       MatchedProjection p =
           MatchedProjection.onShape(List.of(fid), decay.shape(fid), quiet.sigma());
-      re[j] = p.re(0);
-      im[j] = p.im(0);
-      u[j] = p.uncertainty();
+      double phase = BenchShots.readingPhase(shots.get(indices.get(j)));
+      re[j] = p.re(0) * Math.cos(phase) + p.im(0) * Math.sin(phase);
+      im[j] = p.im(0) * Math.cos(phase) - p.re(0) * Math.sin(phase);
+      u[j] = Math.hypot(p.uncertainty(), quiet.uOffset() * constant(p.shape()));
     }
     return new CommonShape(indices, fids, re, im, u, decay, quiet);
+  }
+
+  /** What the projection on this shape makes of a constant of 1. */
+  private static double constant(Fid shape) {
+    double re = 0;
+    double im = 0;
+    double norm = 0;
+    for (int k = 0; k < shape.points(); k++) {
+      re += shape.re(k);
+      im += shape.im(k);
+      norm += Math.pow(shape.magnitude(k), 2);
+    }
+    return Math.hypot(re, im) / norm;
   }
 
   /** The decay of the strong scans, each turned so that it adds up. */

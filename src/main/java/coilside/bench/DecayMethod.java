@@ -73,7 +73,8 @@ final class DecayMethod implements Method {
 
   private static void show(Acquisition a) {
     try {
-      a.show(Readings.decay(mean(a.shots(), a.scans()), a.scans(), Double.NaN).picture());
+      a.show(
+          Readings.decay(mean(a.shots(), a.scans()), a.shots(), a.scans(), Double.NaN).picture());
     } catch (NotMeasurable e) {
       a.say(e.getMessage());
     }
@@ -169,6 +170,7 @@ final class DecayMethod implements Method {
   public Reading read(Capture capture) throws NotMeasurable {
     return Readings.decay(
         mean(capture.shots(), capture.scans()),
+        capture.shots(),
         capture.scans(),
         Notes.number(capture, "target", Double.NaN));
   }

@@ -40,6 +40,11 @@ public interface Desk extends AutoCloseable {
 
   boolean busy();
 
+  /** Who holds the bench, where this desk only watches: nothing can be begun or changed then. */
+  default java.util.Optional<String> watching() {
+    return java.util.Optional.empty();
+  }
+
   /**
    * Starts a piece of work.
    *

@@ -57,11 +57,13 @@ final class Diagnosis {
         String.format(
             Locale.ROOT,
             "the field is outside the range: %.6f MHz to %.6f MHz are %.2f mT to %.2f mT for %s;"
-                + " measure the field with a Hall probe, or search wider with --search",
+                + " measure the field with a Hall probe, or search wider with --search; only %s is looked"
+                + " for, so another nucleus needs its own range",
             low * 1e-6,
             high * 1e-6,
             low / a.settings().nucleus().larmorHertzPerTesla() * 1e3,
             high / a.settings().nucleus().larmorHertzPerTesla() * 1e3,
+            a.settings().nucleus().symbol(),
             a.settings().nucleus().symbol()));
     if (ring.seen()) {
       causes.add("the coil is tuned elsewhere: tune and match it at the expected resonance");

@@ -13,10 +13,17 @@ import java.util.Optional;
  * @param perSecond slope, unit of the value per second
  * @param u standard uncertainty of the slope
  * @param findings how many findings it was learned from
+ * @param spanSeconds from the first to the last of them, s
  */
-record Drift(double perSecond, double u, int findings) {
+record Drift(double perSecond, double u, int findings, double spanSeconds) {
   /** The fewest findings a slope is learned from. */
   static final int ENOUGH = 3;
+
+  /**
+   * How far beyond its span a straight line is trusted: a few spans, since a magnet's drift turns
+   * with the day (common practice, no source).
+   */
+  static final double FAR = 4;
 
   /** Findings older than this before the newest no longer say how the magnet drifts today. */
   static final Duration MEMORY = Duration.ofHours(12);
@@ -73,7 +80,8 @@ record Drift(double perSecond, double u, int findings) {
       chi += weight(f.value(valueName)) * r * r;
     }
     double scatter = Math.max(1, chi / Math.max(1, findings.size() - 2));
-    return new Drift(slope, Math.sqrt(scatter / stt), findings.size());
+    return new Drift(
+        slope, Math.sqrt(scatter / stt), findings.size(), -seconds(origin, findings.get(0)));
   }
 
   private static double weight(Measured m) {

@@ -33,6 +33,9 @@ final class EchoTrainMethod implements Method {
   private static final int WINDOW_POINTS = 64;
   private static final int PAIR = 2;
 
+  /** Part of the allowed duty cycle that the train's own pulses may use. */
+  private static final double DUTY_USED = 0.8;
+
   @Override
   public Rung rung() {
     return Rung.T2;
@@ -98,7 +101,8 @@ final class EchoTrainMethod implements Method {
     double shortestHalf = p180 / 2 + delay + window / 2;
     int most = mostEchoes(limits);
     double wantedHalf = LENGTH_IN_T1 * t1 / most / 2;
-    double half = Math.max(Math.max(shortestHalf, 0.5e-3), wantedHalf);
+    double byDuty = p180 / (DUTY_USED * limits.maxDutyCycle()) / 2;
+    double half = Math.max(Math.max(shortestHalf, 0.5e-3), Math.max(wantedHalf, byDuty));
     int echoes = (int) Math.max(8, Math.min(most, Math.ceil(LENGTH_IN_T1 * t1 / (2 * half))));
     double open = limits.waitSeconds().snap(half - p180 / 2 - window / 2);
     double before = limits.waitSeconds().snap(open + window / 2 - p90 / 2);

@@ -5,6 +5,7 @@ import coilside.board.BoardLimits;
 import coilside.quantity.Measured;
 import coilside.quantity.Unit;
 import coilside.shot.Shot;
+import coilside.signal.Averager;
 import coilside.signal.Fid;
 import coilside.signal.Fourier;
 import coilside.signal.MatchedProjection;
@@ -28,6 +29,12 @@ final class GainMethod implements Method {
   private static final double[] GUESS_RESTS = {0.02, 0.06, 0.2, 0.6, 2, 6};
   private static final double[] WIDTHS = {10e-6, 25e-6, 60e-6};
   private static final double GUESS_WIDTH = 15e-6;
+
+  /** So many samples at exactly the largest value are a flat top. */
+  private static final int FLAT_SAMPLES = 12;
+
+  /** ... where the signal spans more steps of the digitiser than this. */
+  private static final int FEWEST_STEPS = 100;
 
   /** Rest after which the magnetisation counts as recovered, in T1: 99.3 %, common practice. */
   static final double RECOVERED = 5;
@@ -61,18 +68,90 @@ final class GainMethod implements Method {
     BoardLimits.Range range = a.limits().gainDecibels();
     double wanted = 20 * Math.log10(TARGET / bestPeak);
     gain = floor(range, Math.min(range.max(), Math.max(range.min(), wanted)));
-    for (int turn = 0; turn < 4; turn++) {
+    double rail = Double.NaN;
+    for (int turn = 0; turn < 12; turn++) {
       a.startAgain();
       Shot shot = BenchShots.single(a, gain, bestWidth, 0, rest);
       Scan scan = a.play(shot);
-      if (scan.peakFraction() <= 1.2 * TARGET || lower(a, gain, 3) >= gain) {
+      boolean flat = flatTopped(scan);
+      if (flat) {
+        rail = scan.peakFraction();
+      }
+      boolean lowEnough = scan.peakFraction() <= (Double.isNaN(rail) ? 1.2 * TARGET : rail / 1.4);
+      if (!flat && lowEnough || lower(a, gain, 3) >= gain) {
         break;
       }
       gain = lower(a, gain, 3);
     }
+    if (!Double.isNaN(rail)) {
+      a.note("rail_fraction", rail);
+    }
     a.note("noise_density", a.known().need(Rung.NOISE, "noise_density"));
     a.note("highest_gain", range.max());
     a.note("lowest_gain", range.min());
+  }
+
+  /**
+   * A phase that grows quadratically with the number of the scan, in quarter turns, so that echoes
+   * of earlier pulses do not add up (Zur, Wood and Neuringer, Magn. Reson. Med. 21, 251, 1991).
+   */
+  private static double spoiling(int scan) {
+    return scan * (scan + 1) / 2 % 4 * Math.PI / 2;
+  }
+
+  /** The receiver's DC offset at this gain, by a scan without a pulse. */
+  private static Quiet quiet(Acquisition a, double gain) throws BoardException {
+    Shot like = BenchShots.single(a, gain, Choices.pulse(a.limits(), GUESS_WIDTH), 0, 0);
+    Shot shot =
+        new Shot(
+            like.carrierHertz(),
+            gain,
+            Choices.rest(a, GUESS_RESTS[0]),
+            List.of(like.steps().get(like.steps().size() - 1)));
+    Fid fid = a.playAside(shot).fid();
+    double re = 0;
+    double im = 0;
+    for (int k = 0; k < fid.points(); k++) {
+      re += fid.re(k) / fid.points();
+      im += fid.im(k) / fid.points();
+    }
+    return new Quiet(0, re, im, 0);
+  }
+
+  private static Fid turned(Fid fid, double phase) {
+    Averager one = new Averager();
+    one.add(fid, phase);
+    return one.mean();
+  }
+
+  /**
+   * Whether the signal is cut off before the digitiser: many samples, two or three in a row among
+   * them, stand at exactly the same largest value, which noise does not let happen.
+   */
+  static boolean flatTopped(Scan scan) {
+    Fid fid = scan.fid();
+    return flatTopped(fid.re()) || flatTopped(fid.im());
+  }
+
+  private static boolean flatTopped(double[] values) {
+    double[] sorted = values.clone();
+    java.util.Arrays.sort(sorted);
+    int n = sorted.length;
+    double step = Double.POSITIVE_INFINITY;
+    for (int k = 1; k < n; k++) {
+      double d = sorted[k] - sorted[k - 1];
+      if (d > 0) {
+        step = Math.min(step, d);
+      }
+    }
+    int up = 0;
+    int down = 0;
+    for (double v : sorted) {
+      up += v == sorted[n - 1] ? 1 : 0;
+      down += v == sorted[0] ? 1 : 0;
+    }
+    double size = Math.max(sorted[n - 1], -sorted[0]);
+    return Math.max(up, down) >= FLAT_SAMPLES && size > FEWEST_STEPS * step;
   }
 
   private static double floor(BoardLimits.Range range, double x) {
@@ -102,16 +181,20 @@ final class GainMethod implements Method {
     List<Double> rests = new ArrayList<>();
     double gain = Choices.gain(a);
     double guess = 0;
+    Quiet quiet = quiet(a, gain);
     for (double rest : GUESS_RESTS) {
       double width = Choices.pulse(a.limits(), GUESS_WIDTH);
-      Scan scan = a.playAside(BenchShots.single(a, gain, width, 0, Choices.rest(a, rest)));
-      if (scan.clippedSamples() > 0 && lower(a, gain, 10) < gain) {
+      double phase = spoiling(a.scansPlayed());
+      Scan scan = a.playAside(BenchShots.single(a, gain, width, phase, Choices.rest(a, rest)));
+      while ((scan.clippedSamples() > 0 || flatTopped(scan)) && lower(a, gain, 10) < gain) {
         gain = lower(a, gain, 10);
         fids.clear();
         rests.clear();
-        scan = a.playAside(BenchShots.single(a, gain, width, 0, Choices.rest(a, rest)));
+        quiet = quiet(a, gain);
+        phase = spoiling(a.scansPlayed());
+        scan = a.playAside(BenchShots.single(a, gain, width, phase, Choices.rest(a, rest)));
       }
-      fids.add(scan.fid());
+      fids.add(turned(quiet.strip(scan.fid()), phase));
       rests.add(scan.restSeconds());
       if (fids.size() < 3) {
         continue;
@@ -160,6 +243,15 @@ final class GainMethod implements Method {
               "%d samples clip at the lowest gain of %.0f dB: put an attenuator before the"
                   + " receiver or use a smaller sample",
               scan.clippedSamples(),
+              shot.gainDecibels()));
+    } else if (!Double.isNaN(Notes.number(capture, "rail_fraction", Double.NaN))) {
+      warnings.add(
+          String.format(
+              Locale.ROOT,
+              "the receiver clips before the digitiser: from %.1f %% of the digitiser's range on the"
+                  + " signal is cut off flat; an amplifier in front of it gives out. The gain was"
+                  + " lowered to %.0f dB to stay clear of that",
+              100 * Notes.number(capture, "rail_fraction", Double.NaN),
               shot.gainDecibels()));
     } else if (scan.peakFraction() < 0.1
         && shot.gainDecibels() >= Notes.number(capture, "highest_gain") - 1e-9) {

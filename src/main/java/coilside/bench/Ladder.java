@@ -136,6 +136,14 @@ final class Ladder {
                 ageing.tolerance(),
                 ageing.unit()));
       }
+      double span = drift.get().spanSeconds();
+      if (age > Math.max(ageing.lifetimeSeconds(), Drift.FAR * span)) {
+        return List.of(
+            "measured "
+                + Staleness.age(age)
+                + " ago; its drift was learned over no more than "
+                + Staleness.age(span));
+      }
       return List.of();
     }
     if (age > ageing.lifetimeSeconds()) {

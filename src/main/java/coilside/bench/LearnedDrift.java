@@ -48,7 +48,9 @@ public record LearnedDrift(
                     d.u(),
                     newest.get().value(ageing.valueName()).unit(),
                     d.findings(),
-                    ageing.tolerance() / d.reach(1)));
+                    Math.min(
+                        ageing.tolerance() / d.reach(1),
+                        Math.max(ageing.lifetimeSeconds(), Drift.FAR * d.spanSeconds()))));
   }
 
   /** How long a finding of this rung is trusted while no drift is learned, s; empty without one. */

@@ -47,6 +47,7 @@ final class LogRun {
   private int lostInARow;
   private int refusedInARow;
   private long tookNanos;
+  private boolean thermometerTold;
 
   LogRun(Bench bench, Work.Log plan, Waiter waiter) {
     this.bench = bench;
@@ -156,7 +157,7 @@ final class LogRun {
     for (int tries = 1; ; tries++) {
       Instant started = bench.now();
       try {
-        OptionalDouble celsius = bench.askTemperature();
+        OptionalDouble celsius = temperature();
         Bench.Repetition taken = bench.repeat(plan.scans(), carrier, plan.keepCaptures());
         tookNanos = waiter.nanos() - began;
         refusedInARow = 0;
@@ -193,6 +194,19 @@ final class LogRun {
       if (bench.stopRequested()) {
         throw new BoardException.Stopped("stopped by the operator");
       }
+    }
+  }
+
+  /** A thermometer out of order keeps no row from being measured. */
+  private OptionalDouble temperature() throws BoardException {
+    try {
+      return bench.askTemperature();
+    } catch (BoardException.BadAnswer | BoardException.Refused e) {
+      if (!thermometerTold) {
+        thermometerTold = true;
+        bench.say(true, "No temperature: " + e.getMessage());
+      }
+      return OptionalDouble.empty();
     }
   }
 

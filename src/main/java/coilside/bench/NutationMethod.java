@@ -27,6 +27,11 @@ final class NutationMethod implements Method {
   private static final double LONGEST_90 = 200e-6;
   private static final int FEWEST = 4;
 
+  /** Scans after which points that scatter this much (reduced chi-square) will not come right. */
+  private static final int HOPELESS = 24;
+
+  private static final double SCATTER = 25;
+
   @Override
   public Rung rung() {
     return Rung.NUTATION;
@@ -44,11 +49,10 @@ final class NutationMethod implements Method {
     a.note("longest_90", longest90);
     a.note("target", a.settings().pulse90Target());
     NutationFit.Options options = NutationFit.Options.between(shortest90, longest90);
-    NutationPlan plan = new NutationPlan(options, a.settings().pulse90Target(), shortest, longest);
     Quiet.play(a, BenchShots.single(a, gain, longest, 0, rest));
     double width = Choices.pulse(a.limits(), Math.sqrt(shortest90 * longest90) / 2);
     while (a.scansLeft() > 0) {
-      Scan scan = a.play(BenchShots.single(a, gain, width, 0, rest));
+      Scan scan = a.play(BenchShots.single(a, gain, width, BenchShots.alternate(a), rest));
       if (scan.clippedSamples() > 0 && a.limits().gainDecibels().snap(gain - 6) < gain) {
         gain = a.limits().gainDecibels().snap(gain - 6);
         a.say(
@@ -58,8 +62,8 @@ final class NutationMethod implements Method {
         Quiet.play(a, BenchShots.single(a, gain, longest, 0, rest));
         continue;
       }
-      NutationPlan.Advice advice = advice(a, plan, width);
-      if (advice.enough()) {
+      NutationPlan.Advice advice = advice(a, options, shortest, longest, width);
+      if (advice.enough() || a.scans().size() > HOPELESS && scatters(advice)) {
         break;
       }
       width = Choices.pulse(a.limits(), advice.pulseSeconds());
@@ -67,7 +71,12 @@ final class NutationMethod implements Method {
     }
   }
 
-  private NutationPlan.Advice advice(Acquisition a, NutationPlan plan, double width)
+  private static boolean scatters(NutationPlan.Advice advice) {
+    return advice.result().map(r -> r.reducedChiSquare() > SCATTER).orElse(false);
+  }
+
+  private static NutationPlan.Advice advice(
+      Acquisition a, NutationFit.Options options, double shortest, double longest, double width)
       throws NotMeasurable {
     int pulses = a.shots().size() - 1;
     if (pulses < FEWEST) {
@@ -81,7 +90,13 @@ final class NutationMethod implements Method {
     }
     CommonShape shape = CommonShape.of(a.shots(), a.scans());
     List<NutationPoint> points = points(a.shots(), a.scans(), shape);
-    NutationPlan.Advice advice = plan.next(points);
+    NutationPlan.Advice advice =
+        new NutationPlan(
+                options.withDecayRate(shape.decayRate()),
+                a.settings().pulse90Target(),
+                shortest,
+                longest)
+            .next(points);
     a.show(picture(points, advice.result(), new double[] {advice.pulseSeconds()}));
     return advice;
   }
@@ -126,7 +141,8 @@ final class NutationMethod implements Method {
     List<NutationPoint> points = points(capture.shots(), capture.scans(), shape);
     NutationFit.Options options =
         NutationFit.Options.between(
-            Notes.number(capture, "shortest_90"), Notes.number(capture, "longest_90"));
+                Notes.number(capture, "shortest_90"), Notes.number(capture, "longest_90"))
+            .withDecayRate(shape.decayRate());
     NutationResult fit;
     try {
       fit = NutationFit.fit(points, options);

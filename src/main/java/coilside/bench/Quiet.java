@@ -15,8 +15,11 @@ import java.util.List;
  * @param sigma noise of one real channel, one sample, V
  * @param offsetRe DC offset, V
  * @param offsetIm DC offset, V
+ * @param uOffset standard uncertainty of each part of the offset, V
  */
-record Quiet(double sigma, double offsetRe, double offsetIm) {
+record Quiet(double sigma, double offsetRe, double offsetIm, double uOffset) {
+  /** So many that the offset's uncertainty is small beside that of a scan's amplitude. */
+  private static final int POINTS = 16384;
 
   /**
    * Plays the receive-only scan that belongs to shots like this one, after the same rest: what is
@@ -25,7 +28,7 @@ record Quiet(double sigma, double offsetRe, double offsetIm) {
   static void play(Acquisition a, Shot like) throws BoardException {
     Receive window =
         (Receive) like.flat().stream().filter(Receive.class::isInstance).findFirst().orElseThrow();
-    int points = Math.max(window.points(), Choices.points(a.limits(), 1024));
+    int points = Math.max(window.points(), Choices.points(a.limits(), POINTS));
     a.play(
         new Shot(
             like.carrierHertz(),
@@ -41,7 +44,10 @@ record Quiet(double sigma, double offsetRe, double offsetIm) {
         try {
           NoiseEstimate noise = NoiseEstimate.of(scans.get(i).fid());
           return new Quiet(
-              noise.sigma().value(), noise.offsetRe().value(), noise.offsetIm().value());
+              noise.sigma().value(),
+              noise.offsetRe().value(),
+              noise.offsetIm().value(),
+              noise.offsetRe().u());
         } catch (IllegalArgumentException e) {
           throw new NotMeasurable(
               "the receive-only scan cannot be used: " + e.getMessage(),

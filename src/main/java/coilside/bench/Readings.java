@@ -6,6 +6,7 @@ import coilside.fit.NotDetermined;
 import coilside.quantity.Measured;
 import coilside.quantity.Nucleus;
 import coilside.quantity.Unit;
+import coilside.shot.Shot;
 import coilside.signal.Fid;
 import coilside.signal.Fourier;
 import coilside.signal.Scan;
@@ -18,12 +19,17 @@ import java.util.Optional;
 
 /** What a fitted decay says, under the value names of the ladder. */
 final class Readings {
+  /** Part of its width by which a line without a simple form has no definite middle. */
+  private static final double FORM = 0.01;
+
   private Readings() {}
 
   /** The values of the resonance rung. */
-  static Reading resonance(Fid fid, List<Scan> scans) throws NotMeasurable {
+  static Reading resonance(Fid fid, Capture capture) throws NotMeasurable {
+    List<Scan> scans = capture.scans();
     DecayResult fit = fit(fid, scans.size());
-    Measured larmor = larmor(fid, fit);
+    Wander wander = Wander.of(capture.shots(), scans);
+    Measured larmor = wander.widen(middle(larmor(fid, fit), fit));
     Map<String, Measured> values = new LinkedHashMap<>();
     values.put("larmor_frequency", larmor);
     values.put("field", field(larmor));
@@ -34,7 +40,14 @@ final class Readings {
             "resonance at %.6f MHz, offset %+.1f Hz",
             larmor.value() * 1e-6,
             fit.offsetHertz().value());
-    return new Reading(values, warnings(fit, scans), trace(Rung.RESONANCE, fid, fit, caption));
+    List<String> warnings = warnings(fit, scans);
+    wander.warning().ifPresent(w -> warnings.add(0, w));
+    return new Reading(values, warnings, trace(Rung.RESONANCE, fid, fit, caption));
+  }
+
+  /** The values of the T2* rung from one scan, as it came. */
+  static Reading decay(Fid fid, List<Scan> scans, double target) throws NotMeasurable {
+    return decay(fid, List.of(), List.of(), scans, target);
   }
 
   /**
@@ -42,11 +55,19 @@ final class Readings {
    *
    * @param target wanted relative uncertainty of T2*; NaN where none is
    */
-  static Reading decay(Fid fid, List<Scan> scans, double target) throws NotMeasurable {
+  static Reading decay(Fid fid, List<Shot> shots, List<Scan> scans, double target)
+      throws NotMeasurable {
+    return decay(fid, shots, scans, scans, target);
+  }
+
+  private static Reading decay(
+      Fid fid, List<Shot> shots, List<Scan> single, List<Scan> scans, double target)
+      throws NotMeasurable {
     DecayResult fit = fit(fid, scans.size());
-    Measured larmor = larmor(fid, fit);
+    Wander wander = Wander.of(shots, single);
+    Measured larmor = wander.widen(middle(larmor(fid, fit), fit));
     Map<String, Measured> values = new LinkedHashMap<>();
-    values.put("t2_star", fit.t2Star());
+    values.put("t2_star", effective(fit));
     values.put("linewidth", fit.linewidthHertz());
     values.put("amplitude", fit.amplitude());
     values.put("snr", fit.snr());
@@ -54,6 +75,7 @@ final class Readings {
     values.put("field_spread", fit.fieldSpread(larmor.value()));
     values.put("field", field(larmor));
     List<String> warnings = warnings(fit, scans);
+    wander.warning().ifPresent(w -> warnings.add(0, w));
     double reached = fit.t2Star().relative();
     if (reached > target) {
       warnings.add(
@@ -90,6 +112,27 @@ final class Readings {
             ? "; about " + e.scansNeeded().getAsLong() + " scans would do"
             : "";
     return new NotMeasurable(what + ": " + e.getMessage() + scans, List.of(e.remedy()));
+  }
+
+  /**
+   * The middle of a line that is not one exponential's is uncertain by a part of its width,
+   * whichever form is fitted to it.
+   */
+  private static Measured middle(Measured larmor, DecayResult fit) {
+    return fit.envelope() == DecayResult.Envelope.EXPONENTIAL
+        ? larmor
+        : Measured.of(
+            larmor.value(),
+            Math.hypot(larmor.u(), FORM * fit.linewidthHertz().value()),
+            larmor.unit());
+  }
+
+  /** T2*; the 1/e time of a decay that is not one exponential depends on the form fitted to it. */
+  private static Measured effective(DecayResult fit) {
+    Measured t = fit.t2Star();
+    return fit.envelope() == DecayResult.Envelope.EXPONENTIAL
+        ? t
+        : Measured.of(t.value(), Math.hypot(t.u(), FORM / 2 * t.value()), t.unit());
   }
 
   static Measured larmor(Fid fid, DecayResult fit) {

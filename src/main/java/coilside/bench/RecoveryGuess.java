@@ -16,6 +16,9 @@ final class RecoveryGuess {
   private static final int ANGLES = 25;
   private static final int STARTS = 5;
 
+  /** What the model leaves out (echoes of earlier pulses, B1 spread), relative. */
+  private static final double MODEL_ERROR = 0.01;
+
   private RecoveryGuess() {}
 
   /**
@@ -33,7 +36,7 @@ final class RecoveryGuess {
       best[t] = misfit(t1(t), rests, amplitudes);
       lowest = Math.min(lowest, best[t]);
     }
-    double model = 0.003 * largest(amplitudes);
+    double model = MODEL_ERROR * largest(amplitudes);
     double allowed = lowest + 4 * (sigma * sigma + model * model);
     double longest = t1(0);
     for (int t = 0; t < STEPS; t++) {

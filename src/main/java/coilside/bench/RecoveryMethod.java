@@ -31,6 +31,15 @@ final class RecoveryMethod implements Method {
   private static final double REST_IN_T1 = 3;
   private static final double SHORTEST_T1 = 1e-3;
 
+  /** Scans after which points that scatter without measure will not come right. */
+  private static final int HOPELESS = 24;
+
+  /** Scans spent on telling two T1 from one. */
+  private static final int MOST_FOR_TWO = 16;
+
+  /** Steps of the golden section fill an interval evenly, however many there are. */
+  private static final double GOLDEN = 0.6180339887;
+
   @Override
   public Rung rung() {
     return Rung.T1;
@@ -72,10 +81,18 @@ final class RecoveryMethod implements Method {
       List<RecoveryPoint> points = points(a.shots(), a.scans(), shape, inversion);
       RecoveryPlan.Advice advice = plan.next(points);
       a.show(picture(points, advice.result(), new double[] {advice.recoverySeconds()}));
-      if (advice.enough()) {
+      boolean scatters = advice.result().map(r -> r.reducedChiSquare() > 25).orElse(true);
+      boolean another = advice.enough() && advice.result().get().scatters();
+      if (advice.enough() && (!another || points.size() >= MOST_FOR_TWO)
+          || a.scans().size() > HOPELESS && scatters) {
         break;
       }
-      time = Math.max(advice.recoverySeconds(), shortest);
+      // Points all over the recovery show whether it is another T1 that makes them scatter.
+      double spread = 0.1 * Math.pow(50, points.size() * GOLDEN % 1);
+      time =
+          Math.max(
+              another ? spread * advice.result().get().t1().value() : advice.recoverySeconds(),
+              shortest);
       rest = Choices.rest(a, inversion ? advice.restSeconds() : 0);
       advice
           .result()
@@ -115,10 +132,14 @@ final class RecoveryMethod implements Method {
   }
 
   private static Shot single(Acquisition a, double rest) {
-    return BenchShots.single(a, Choices.gain(a), Choices.pulse90(a), 0, rest);
+    return BenchShots.single(a, Choices.gain(a), Choices.pulse90(a), BenchShots.alternate(a), rest);
   }
 
-  /** 180 degrees, the recovery time from centre to centre, 90 degrees, receive. */
+  /**
+   * 180 degrees, the recovery time from centre to centre, 90 degrees, receive. Both phases
+   * alternate, the second every scan, the first every other: an error of the DC offset and what the
+   * first pulse leaves across the field then do not pile up.
+   */
   private static Shot inversion(Acquisition a, double recovery, double rest) {
     double p90 = Choices.pulse90(a);
     double p180 = Choices.pulse(a.limits(), a.known().need(Rung.NUTATION, "pulse_180"));
@@ -126,14 +147,15 @@ final class RecoveryMethod implements Method {
     Choices.Window w =
         Choices.window(a.limits(), BenchShots.FIRST_SECONDS, BenchShots.FIRST_POINTS);
     double amplitude = Choices.amplitude(a);
+    double inverting = a.scans().size() / 2 % 2 * Math.PI;
     return new Shot(
         Choices.carrier(a),
         Choices.gain(a),
         rest,
         List.of(
-            new Pulse(p180, 0, amplitude),
+            new Pulse(p180, inverting, amplitude),
             new Wait(wait),
-            new Pulse(p90, 0, amplitude),
+            new Pulse(p90, BenchShots.alternate(a), amplitude),
             new Wait(Choices.delay(a)),
             new Receive(w.points(), w.dwellSeconds(), 0)));
   }
@@ -203,8 +225,8 @@ final class RecoveryMethod implements Method {
     values.put(
         "repetition_time",
         Measured.of(
-            GainMethod.RECOVERED * fit.t1().value(),
-            GainMethod.RECOVERED * fit.t1().u(),
+            GainMethod.RECOVERED * fit.longestT1Seconds(),
+            GainMethod.RECOVERED * fit.longestT1Seconds() * fit.t1().relative(),
             Unit.SECOND));
     List<String> warnings = new ArrayList<>(fit.warnings());
     double target = Notes.number(capture, "target");

@@ -30,7 +30,13 @@ final class ResonanceMethod implements Method {
   private static final double BESIDE = 3000;
 
   private static final double SEARCH_REST = 0.15;
-  private static final int FINAL_SCANS = 2;
+  private static final int FINAL_SCANS = 4;
+
+  /** By how much the rests before the final scans differ, s: a third of a mains period. */
+  private static final double REST_STEP = 6.3e-3;
+
+  private static final int MOST_PASSES = 6;
+  private static final int PULSES = 3;
 
   /** The part of the spectral width, each side of the carrier, that a step of the search covers. */
   private static final double COVERED = 0.3;
@@ -42,34 +48,43 @@ final class ResonanceMethod implements Method {
 
   @Override
   public void acquire(Acquisition a) throws BoardException, NotMeasurable {
-    Search search = new Search(a);
-    double found = search.find();
-    settle(a, found);
+    Seen first = new Search(a).find();
+    settle(a, first);
+  }
+
+  /** A line seen at an offset from a carrier, Hz. */
+  private record Seen(double carrierHertz, double offsetHertz) {
+    double lineHertz() {
+      return carrierHertz + offsetHertz;
+    }
+
+    /** Where the line is if the spectrum is mirrored. */
+    double mirroredHertz() {
+      return carrierHertz - offsetHertz;
+    }
   }
 
   /**
    * Looks at the line from a little beside it, clear of the receiver's DC offset, then plays the
-   * scans that count with the carrier on it and the pulse's phase alternating.
+   * scans that count with the carrier on it, on all four phases of the pulse and after different
+   * rests, so that DC offset, the receiver's mirror image, the mains and echoes of earlier pulses
+   * do not all pull the same way.
    */
-  private static void settle(Acquisition a, double lineHertz) throws BoardException, NotMeasurable {
+  private static void settle(Acquisition a, Seen first) throws BoardException, NotMeasurable {
     a.startAgain();
-    double beside = a.limits().carrierHertz().snap(lineHertz - BESIDE);
+    double side = first.offsetHertz() > 0 ? 1 : -1;
+    double beside = a.limits().carrierHertz().snap(first.lineHertz() + side * BESIDE);
     Scan scan = a.playAside(shot(a, beside, Choices.gain(a), SEARCH_PULSE, 0, SEARCH_REST));
-    Fid fid = withoutOffset(scan.fid());
-    Detection d =
-        Detection.of(
-            fid,
-            sigma(a, fid),
-            List.of(new Detection.Excluded(0, BESIDE / 2)),
-            1,
-            FALSE_ALARM_PROBABILITY);
-    if (!d.found() || Math.abs(d.offsetHertz() - BESIDE) > BESIDE) {
+    Detection d = detectBeside(a, scan.fid());
+    double expected = first.lineHertz() - beside;
+    if (!d.found() || Math.abs(d.offsetHertz() - expected) > BESIDE) {
+      checkMirrored(a, first, beside, d);
       throw new NotMeasurable(
           String.format(
               Locale.ROOT,
               "a line was seen at %.6f MHz, but with the carrier moved there it was gone: %.1f sigma"
                   + " at %.6f MHz against a threshold of %.1f",
-              lineHertz * 1e-6,
+              first.lineHertz() * 1e-6,
               d.statisticSigma(),
               (beside + d.offsetHertz()) * 1e-6,
               d.thresholdSigma()),
@@ -84,8 +99,55 @@ final class ResonanceMethod implements Method {
       scan = a.playAside(shot(a, carrier, gain, SEARCH_PULSE, 0, SEARCH_REST));
     }
     for (int i = 0; i < FINAL_SCANS; i++) {
-      a.play(shot(a, carrier, gain, SEARCH_PULSE, i % 2 * Math.PI, SEARCH_REST));
+      double rest = SEARCH_REST + REST_STEP * i;
+      a.play(shot(a, carrier, gain, SEARCH_PULSE, i * Math.PI / 2, rest));
     }
+  }
+
+  private static Detection detectBeside(Acquisition a, Fid raw) {
+    Fid fid = withoutOffset(raw);
+    return Detection.of(
+        fid,
+        sigma(a, fid),
+        List.of(new Detection.Excluded(0, BESIDE / 2)),
+        1,
+        FALSE_ALARM_PROBABILITY);
+  }
+
+  /**
+   * Refuses when the line moved up with the carrier, or is found where a mirrored spectrum would
+   * have it: with f the offset shown, a true line keeps carrier + f, a mirrored one carrier - f.
+   */
+  private static void checkMirrored(Acquisition a, Seen first, double moved, Detection atMoved)
+      throws BoardException, NotMeasurable {
+    double line = first.mirroredHertz();
+    double carrier = moved;
+    Detection d = atMoved;
+    if (!d.found() || Math.abs(carrier - d.offsetHertz() - line) > BESIDE) {
+      carrier = a.limits().carrierHertz().snap(line - BESIDE);
+      d =
+          detectBeside(
+              a,
+              a.playAside(shot(a, carrier, Choices.gain(a), SEARCH_PULSE, 0, SEARCH_REST)).fid());
+      if (!d.found() || Math.abs(carrier - d.offsetHertz() - line) > BESIDE) {
+        return;
+      }
+    }
+    throw new NotMeasurable(
+        String.format(
+            Locale.ROOT,
+            "the spectrum is mirrored: with the carrier moved by %+.1f kHz the line moved by %+.1f"
+                + " kHz, and it should move by as much the other way; the resonance is at about"
+                + " %.6f MHz",
+            (carrier - first.carrierHertz()) * 1e-3,
+            (d.offsetHertz() - first.offsetHertz()) * 1e-3,
+            line * 1e-6),
+        List.of(
+            "I and Q are exchanged or the board delivers the conjugate: in the [samples] part of the"
+                + " device profile turn 'layout' (iq to qi or back) or 'conjugated' (false to true"
+                + " or back), one of the two",
+            "the two receiver cables are exchanged",
+            "the mixer takes the other sideband"));
   }
 
   private static Shot shot(
@@ -106,7 +168,7 @@ final class ResonanceMethod implements Method {
       re += fid.re(k) / (n - n / 2);
       im += fid.im(k) / (n - n / 2);
     }
-    return new Quiet(0, re, im).strip(fid);
+    return new Quiet(0, re, im, 0).strip(fid);
   }
 
   /** The noise of one sample as the noise rung found it, for this dwell time, V. */
@@ -117,7 +179,7 @@ final class ResonanceMethod implements Method {
   @Override
   public Reading read(Capture capture) throws NotMeasurable {
     Fid fid = DecayMethod.mean(capture.shots(), capture.scans());
-    return Readings.resonance(fid, capture.scans());
+    return Readings.resonance(fid, capture);
   }
 
   /** The coarse search. */
@@ -159,34 +221,36 @@ final class ResonanceMethod implements Method {
       return out;
     }
 
-    double find() throws BoardException, NotMeasurable {
-      int passes = 0;
-      double pulse = SEARCH_PULSE;
-      double played = pulse;
+    Seen find() throws BoardException, NotMeasurable {
+      double longest = SEARCH_PULSE;
       a.plan(0);
-      while (a.scansLeft() >= carriers.size() + 4 || passes == 0) {
-        int averaged = passes == 0 ? 1 : 2;
-        played = pulse;
+      for (int pass = 0; pass < MOST_PASSES; pass++) {
+        int averaged = pass == 0 ? 1 : 1 << (pass - 1);
+        if (pass > 0 && a.scansLeft() < averaged * carriers.size() + 4) {
+          break;
+        }
+        double pulse = SEARCH_PULSE * Math.pow(2.3, pass % PULSES);
+        longest = Math.max(longest, Choices.pulse(a.limits(), pulse));
         for (double c : carriers) {
-          Optional<Double> line = look(c, pulse, averaged);
+          Optional<Seen> line = look(c, pulse, averaged);
           if (line.isPresent()) {
             return line.get();
           }
         }
-        passes++;
-        pulse *= 2.3;
       }
-      throw Diagnosis.noResonance(a, largest, largestAt, threshold, played, interference);
+      throw Diagnosis.noResonance(a, largest, largestAt, threshold, longest, interference);
     }
 
-    private Optional<Double> look(double wanted, double pulse, int averaged)
+    private Optional<Seen> look(double wanted, double pulse, int averaged)
         throws BoardException, NotMeasurable {
       double carrier = a.limits().carrierHertz().snap(wanted);
       Averager average = new Averager();
-      Shot shot = shot(a, carrier, Choices.gain(a), pulse, 0, SEARCH_REST);
       for (int i = 0; i < averaged; i++) {
-        average.add(a.play(shot).fid());
+        double phase = i % 2 * Math.PI;
+        average.add(
+            a.play(shot(a, carrier, Choices.gain(a), pulse, phase, SEARCH_REST)).fid(), phase);
       }
+      Shot shot = shot(a, carrier, Choices.gain(a), pulse, 0, SEARCH_REST);
       Fid fid = withoutOffset(average.mean());
       double sigma = sigma(a, fid) / Math.sqrt(averaged);
       Detection d = detect(fid, sigma, carrier);
@@ -210,10 +274,10 @@ final class ResonanceMethod implements Method {
                 (carrier + d.offsetHertz()) * 1e-6));
         Detection again = detect(fid, sigma, carrier);
         return again.found() && !isThereWithoutPulse(shot, again)
-            ? Optional.of(carrier + again.offsetHertz())
+            ? Optional.of(new Seen(carrier, again.offsetHertz()))
             : Optional.empty();
       }
-      return Optional.of(carrier + d.offsetHertz());
+      return Optional.of(new Seen(carrier, d.offsetHertz()));
     }
 
     private Detection detect(Fid fid, double sigma, double carrier) {
@@ -224,7 +288,7 @@ final class ResonanceMethod implements Method {
           out.add(new Detection.Excluded(f - carrier, 500));
         }
       }
-      return Detection.of(fid, sigma, out, carriers.size() * 2, FALSE_ALARM_PROBABILITY);
+      return Detection.of(fid, sigma, out, carriers.size() * MOST_PASSES, FALSE_ALARM_PROBABILITY);
     }
 
     private boolean isThereWithoutPulse(Shot shot, Detection d) throws BoardException {

@@ -21,9 +21,10 @@ import java.util.Optional;
 /**
  * The ring-down rung: pairs of scans with the pulse's phase turned by 180 degrees and the receiver
  * opened as early as it can be. What turns with the pulse is ring-down and signal; the signal is
- * fitted late, drawn back and taken off. On a board that knows no pulse phase nothing can be
- * turned: the DC offset is taken off as the receive-only scan has it, and what remains counts as
- * following.
+ * fitted late, drawn back and taken off. The second pair is played a quarter turn from the first,
+ * so that the mirror image which unequal receiver channels make drops out. On a board that knows no
+ * pulse phase nothing can be turned: the DC offset is taken off as the receive-only scan has it,
+ * and what remains counts as following.
  */
 final class RingDownMethod implements Method {
   private static final int PAIRS = 2;
@@ -49,7 +50,8 @@ final class RingDownMethod implements Method {
     double earliest = limits.waitSeconds().min();
     double pulse = Choices.pulse(limits, PULSE);
     for (int i = 0; i < 2 * PAIRS; i++) {
-      double phase = limits.pulsePhases() ? i % 2 * Math.PI : 0;
+      double turned = i % 2 * Math.PI + i / 2 % 2 * Math.PI / 2;
+      double phase = limits.pulsePhases() ? turned : 0;
       Shot shot =
           BenchShots.single(
               a, Choices.carrier(a), Choices.gain(a), pulse, phase, rest, earliest, window);
@@ -73,7 +75,9 @@ final class RingDownMethod implements Method {
         continue;
       }
       Scan scan = capture.scans().get(i);
-      (BenchShots.firstPhase(shot) == 0 ? plus : minus).add(scan.fid());
+      double phase = BenchShots.firstPhase(shot);
+      boolean turned = phase > Math.PI - 0.01;
+      (turned ? minus : plus).add(scan.fid(), turned ? phase - Math.PI : phase);
       clippedUntil = Math.max(clippedUntil, clippedUntil(scan));
     }
     double one = Quiet.of(capture.shots(), capture.scans()).sigma();
@@ -116,6 +120,10 @@ final class RingDownMethod implements Method {
               "the receiver clips for %.0f us after the pulse",
               (following.time(clippedUntil) - pulseHalf) * 1e6));
     }
+    if (fit.visible()) {
+      offTune(following, clippedUntil, one, fit.timeConstant().value())
+          .ifPresent(w -> warnings.add(0, w));
+    }
     String caption =
         fit.visible()
             ? String.format(
@@ -139,6 +147,34 @@ final class RingDownMethod implements Method {
             List.of(),
             caption);
     return new Reading(values, warnings, picture);
+  }
+
+  /**
+   * Where the coil rings is where it is tuned: a warning when the carrier lies outside the half
+   * width of its resonance, 1/(2 pi tau).
+   */
+  private static Optional<String> offTune(Fid ring, int from, double sigma, double tau) {
+    double re = 0;
+    double im = 0;
+    for (int k = from; k + 1 < ring.points() && ring.magnitude(k + 1) > 10 * sigma; k++) {
+      re += ring.re(k) * ring.re(k + 1) + ring.im(k) * ring.im(k + 1);
+      im += ring.re(k) * ring.im(k + 1) - ring.im(k) * ring.re(k + 1);
+    }
+    double offset = Math.atan2(im, re) / (2 * Math.PI * ring.dwellSeconds());
+    double halfWidth = 1 / (2 * Math.PI * tau);
+    if (Math.hypot(re, im) < 100 * sigma * sigma || Math.abs(offset) < halfWidth) {
+      return Optional.empty();
+    }
+    double response = 1 / Math.hypot(1, offset / halfWidth);
+    return Optional.of(
+        String.format(
+            Locale.ROOT,
+            "the coil is off tune: it rings at %.3f MHz, %+.0f kHz from the resonance, where its"
+                + " response is about %.2f of the best; pulses are as much longer, signals as much"
+                + " weaker: tune and match it",
+            (ring.carrierHertz() + offset) * 1e-6,
+            offset * 1e-3,
+            response));
   }
 
   private static double pulseHalf(Capture capture) {

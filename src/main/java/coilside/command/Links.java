@@ -5,9 +5,11 @@ import coilside.board.link.HostPort;
 import coilside.board.link.Link;
 import coilside.board.link.LinkException;
 import coilside.board.link.NativeFolder;
+import coilside.board.link.PortIdentity;
 import coilside.board.link.PortInfo;
 import coilside.board.link.PortLocks;
 import coilside.board.link.Ports;
+import coilside.board.link.Reopening;
 import coilside.board.link.SerialLink;
 import coilside.board.link.SerialSettings;
 import coilside.board.link.SerialSettings.LineState;
@@ -17,6 +19,7 @@ import coilside.board.profile.SerialAttachment;
 import java.nio.file.Path;
 import java.time.InstantSource;
 import java.util.List;
+import java.util.Optional;
 
 /** Opens the line to a board where the address and its profile say it is. */
 final class Links {
@@ -67,6 +70,36 @@ final class Links {
       throw new BoardException.Unreachable(e.getMessage(), e);
     } catch (IllegalArgumentException e) {
       throw new UsageException("--board: " + e.getMessage());
+    }
+  }
+
+  /**
+   * How a lost line to the same board is opened again. A serial port with USB numbers is found by
+   * them, whatever name it comes back under; any other by its address. Asked while it is open.
+   */
+  static Reopening.Opener again(BoardAddress address, DeviceProfile profile) {
+    Optional<PortIdentity> identity = serialIdentity(address);
+    return () -> {
+      if (identity.isPresent()) {
+        return serial(identity.get().find(new Ports(locks())), profile);
+      }
+      try {
+        return open(address, profile);
+      } catch (BoardException e) {
+        throw new LinkException(LinkException.Kind.MISSING, e.getMessage(), e);
+      }
+    };
+  }
+
+  private static Optional<PortIdentity> serialIdentity(BoardAddress address) {
+    boolean network = !address.port().startsWith("/") && address.port().contains(":");
+    if (address.port().isEmpty() || network) {
+      return Optional.empty();
+    }
+    try {
+      return Optional.of(PortIdentity.of(address.port(), new Ports(locks())));
+    } catch (LinkException e) {
+      return Optional.empty();
     }
   }
 

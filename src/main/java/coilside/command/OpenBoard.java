@@ -5,7 +5,6 @@ import coilside.board.BoardException;
 import coilside.board.driver.Boards;
 import coilside.board.driver.ReconnectingBoard;
 import coilside.board.link.Link;
-import coilside.board.link.LinkException;
 import coilside.board.link.Reopening;
 import coilside.board.link.WireLog;
 import coilside.board.profile.DeviceProfile;
@@ -34,15 +33,7 @@ final class OpenBoard {
     }
 
     private Reopening reopening() {
-      return new Reopening(
-          () -> {
-            try {
-              return Links.open(address, profile);
-            } catch (BoardException e) {
-              throw new LinkException(LinkException.Kind.MISSING, e.getMessage(), e);
-            }
-          },
-          System::nanoTime);
+      return new Reopening(Links.again(address, profile), System::nanoTime);
     }
   }
 

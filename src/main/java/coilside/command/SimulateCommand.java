@@ -74,9 +74,7 @@ final class SimulateCommand implements CoilsideCommand {
         announce(where, output);
         server.join();
       } finally {
-        if (link != null) {
-          Files.deleteIfExists(link);
-        }
+        takeLinkAway(server.address());
       }
     }
     return ExitStatus.DONE;
@@ -111,6 +109,15 @@ final class SimulateCommand implements CoilsideCommand {
       throw new BoardException.Unreachable(e.getMessage(), e);
     } catch (IllegalArgumentException e) {
       throw new UsageException("--listen: " + e.getMessage());
+    }
+  }
+
+  /** Takes our own link away: not a file that was in its way, nor a link that leads elsewhere. */
+  private void takeLinkAway(String address) throws IOException {
+    if (link != null
+        && Files.isSymbolicLink(link)
+        && Files.readSymbolicLink(link).equals(Path.of(address))) {
+      Files.delete(link);
     }
   }
 

@@ -329,6 +329,11 @@ final class WatchDesk implements Desk {
   }
 
   @Override
+  public Optional<String> watching() {
+    return Optional.of(holder);
+  }
+
+  @Override
   public void begin(Work work) {
     throw refusal();
   }

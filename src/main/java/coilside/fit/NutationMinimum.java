@@ -44,7 +44,8 @@ record NutationMinimum(
   static List<NutationMinimum> search(
       List<NutationPoint> points, NutationFit.Options options, NutationFit.Spread spread)
       throws NotDetermined {
-    NutationModel model = new NutationModel(points, options.recovery(), spread);
+    NutationModel model =
+        new NutationModel(points, options.recovery(), spread, options.decayRate());
     List<Candidate> candidates = grid(points, options, spread, model);
     List<NutationMinimum> minima = new ArrayList<>();
     NotDetermined failure = null;
@@ -83,7 +84,7 @@ record NutationMinimum(
         points,
         options,
         other,
-        new NutationModel(points, options.recovery(), other),
+        new NutationModel(points, options.recovery(), other, options.decayRate()),
         new Candidate(rate, start, chiSquare));
   }
 

@@ -6,6 +6,7 @@ import coilside.quantity.Unit;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
+import java.util.Optional;
 import java.util.OptionalLong;
 
 /**
@@ -19,6 +20,15 @@ import java.util.OptionalLong;
  */
 public final class RecoveryFit {
   private static final double GRID_STEP = 0.04;
+
+  /**
+   * Part of the distance between two T1 by which their common 1/e time is uncertain: the amplitudes
+   * weigh the components by their FIDs, too, by some percent.
+   */
+  private static final double WEIGHTS = 0.01;
+
+  /** So much must chi-square fall before two T1 are believed. */
+  private static final double CLEARLY = 25;
 
   private RecoveryFit() {}
 
@@ -64,6 +74,7 @@ public final class RecoveryFit {
    * @param reducedChiSquare squared residuals over uncertainties, by degree of freedom
    * @param degreesOfFreedom of that
    * @param kind preparation
+   * @param longestT1Seconds the longest T1 in the sample, for the repetition time, s
    * @param warnings one sentence each
    */
   public record Result(
@@ -73,9 +84,15 @@ public final class RecoveryFit {
       double reducedChiSquare,
       int degreesOfFreedom,
       Kind kind,
+      double longestT1Seconds,
       List<String> warnings) {
     public Result {
       warnings = List.copyOf(warnings);
+    }
+
+    /** Whether the points scatter more about the fit than their uncertainties allow. */
+    public boolean scatters() {
+      return degreesOfFreedom > 0 && NutationFit.improbable(reducedChiSquare, degreesOfFreedom);
     }
 
     /** The fitted curve for full rest before each preparation, V. */
@@ -167,6 +184,12 @@ public final class RecoveryFit {
                   + " more than one T1 looks like this",
               inflate));
     }
+    if (inflate > 1) {
+      Optional<Result> two = two(s, points, options);
+      if (two.isPresent()) {
+        return two.get();
+      }
+    }
     double t1 = Math.exp(p[2]);
     double relative = inflate * s.u(2);
     if (!(relative <= options.largestRelative()) || significance < 3) {
@@ -209,7 +232,44 @@ public final class RecoveryFit {
         s.weightedSquares() / dof,
         s.degreesOfFreedom(),
         options.kind(),
+        Math.exp(p[2]),
         warnings);
+  }
+
+  /** Two T1 where they leave noise only and the 1/e time is determined. */
+  private static Optional<Result> two(
+      LeastSquares.Solution one, List<RecoveryPoint> points, Options options) {
+    Optional<TwoRecoveries> fit = TwoRecoveries.fit(points, options.kind(), one.parameters());
+    if (fit.isEmpty()) {
+      return Optional.empty();
+    }
+    TwoRecoveries t = fit.get();
+    double reduced = t.weightedSquares() / t.degreesOfFreedom();
+    if (one.weightedSquares() - t.weightedSquares() < CLEARLY
+        || NutationFit.improbable(reduced, t.degreesOfFreedom())
+        || t.oneOverE().relative() > options.largestRelative()) {
+      return Optional.empty();
+    }
+    double weights = WEIGHTS * (t.longer().value() - t.shorter().value());
+    return Optional.of(
+        new Result(
+            Measured.of(t.oneOverE().value(), Math.hypot(t.oneOverE().u(), weights), Unit.SECOND),
+            t.amplitude(),
+            t.preparation(),
+            reduced,
+            t.degreesOfFreedom(),
+            options.kind(),
+            t.longer().value(),
+            List.of(
+                String.format(
+                    Locale.ROOT,
+                    "the sample recovers with two T1, %.3g s (%.0f %% of the signal) and %.3g s:"
+                        + " the T1 given is the time in which what is missing falls to 1/e"
+                        + " (chi-square lower by %.0f than with one)",
+                    t.longer().value(),
+                    100 * t.longerFraction().value(),
+                    t.shorter().value(),
+                    one.weightedSquares() - t.weightedSquares()))));
   }
 
   /** The two linear terms and their derivatives with respect to ln T1. */

@@ -262,4 +262,15 @@ class LadderTest {
     assertTrue(drift.u() > 0);
     assertEquals(5, drift.findings());
   }
+
+  @Test
+  void aSteadyDriftIsNotTrustedFarBeyondTheTimeItWasLearnedOver() {
+    for (int i = 0; i < 4; i++) {
+      add(Rung.T2STAR, Duration.ofMinutes(20 * i), USUAL, "t2_star", 6e-3, Unit.SECOND);
+    }
+    assertEquals(RungStatus.State.FRESH, state(Rung.T2STAR, USUAL, Duration.ofHours(3)).state());
+    RungStatus s = state(Rung.T2STAR, USUAL, Duration.ofHours(6));
+    assertEquals(RungStatus.State.STALE, s.state());
+    assertTrue(s.reasons().get(0).contains("learned over no more than 60 min"), "" + s);
+  }
 }

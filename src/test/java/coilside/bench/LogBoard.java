@@ -67,6 +67,7 @@ final class LogBoard implements Board, Waiter, InstantSource {
   DoubleUnaryOperator larmor = seconds -> 8.09e6;
   DoubleUnaryOperator celsius = seconds -> 25;
   boolean sample = true;
+  boolean brokenThermometer;
   Trouble trouble = shot -> {};
   int shots;
   double lastCarrier;
@@ -159,7 +160,10 @@ final class LogBoard implements Board, Waiter, InstantSource {
   }
 
   @Override
-  public OptionalDouble temperature() {
+  public OptionalDouble temperature() throws BoardException {
+    if (brokenThermometer) {
+      throw new BoardException.BadAnswer("the board says its temperature is 'nan' degC");
+    }
     return OptionalDouble.of(celsius.applyAsDouble(seconds()));
   }
 

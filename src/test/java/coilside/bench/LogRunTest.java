@@ -305,4 +305,13 @@ class LogRunTest {
                     false));
     assertEquals(11, end.rows());
   }
+
+  @Test
+  void aBrokenThermometerCostsTheTemperatureAndNoRow() throws Exception {
+    board.brokenThermometer = true;
+    LogEnd end = run(2, 5);
+    assertEquals(5, end.rows());
+    assertTrue(keeper.rows.get(0).temperatureCelsius().isEmpty());
+    assertEquals(1, told.stream().filter(e -> e instanceof Progress.Message).count());
+  }
 }

@@ -2,7 +2,9 @@ package coilside.bench;
 
 import java.time.Instant;
 import java.util.ArrayList;
+import java.util.HashMap;
 import java.util.List;
+import java.util.Map;
 import java.util.Optional;
 
 /** Keeps everything in memory, for tests. */
@@ -11,21 +13,27 @@ public final class MemoryKeeper implements Keeper {
   public final List<Finding> findings = new ArrayList<>();
   public final List<LogRow> rows = new ArrayList<>();
   public final List<String> notes = new ArrayList<>();
+  private final Map<String, String> settings = new HashMap<>();
   int failRowsFrom = Integer.MAX_VALUE;
 
   @Override
-  public String keep(Capture capture) {
+  public synchronized String keep(Capture capture) {
     captures.add(capture);
-    return "capture-" + (captures.size() - 1);
+    return capture.purpose() + "-" + captures.size();
+  }
+
+  /** The capture of this name. */
+  synchronized Capture capture(String name) {
+    return captures.get(Integer.parseInt(name.substring(name.lastIndexOf('-') + 1)) - 1);
   }
 
   @Override
-  public void keep(Finding finding) {
+  public synchronized void keep(Finding finding) {
     findings.add(finding);
   }
 
   @Override
-  public void keep(LogRow row) throws KeepException {
+  public synchronized void keep(LogRow row) throws KeepException {
     if (rows.size() >= failRowsFrom) {
       throw new KeepException("the disk is full");
     }
@@ -33,25 +41,27 @@ public final class MemoryKeeper implements Keeper {
   }
 
   @Override
-  public void note(Instant when, String kind, String text) {
+  public synchronized void note(Instant when, String kind, String text) {
     notes.add(kind + ": " + text);
   }
 
   @Override
-  public List<Finding> findings(Rung rung) {
+  public synchronized List<Finding> findings(Rung rung) {
     return findings.stream().filter(f -> f.rung() == rung).toList();
   }
 
   @Override
-  public Optional<Finding> newest(Rung rung) {
+  public synchronized Optional<Finding> newest(Rung rung) {
     return findings(rung).stream().reduce((a, b) -> b);
   }
 
   @Override
-  public Optional<String> setting(String name) {
-    return Optional.empty();
+  public synchronized Optional<String> setting(String name) {
+    return Optional.ofNullable(settings.get(name));
   }
 
   @Override
-  public void setSetting(String name, String value) {}
+  public synchronized void setSetting(String name, String value) {
+    settings.put(name, value);
+  }
 }

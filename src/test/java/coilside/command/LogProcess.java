@@ -88,10 +88,30 @@ final class LogProcess implements AutoCloseable {
         0, new ProcessBuilder("kill", "-" + name, Long.toString(process.pid())).start().waitFor());
   }
 
+  /** What the program's threads do, for a failure's report. */
+  private String threads() {
+    try {
+      Process dump =
+          new ProcessBuilder(
+                  Path.of(System.getProperty("java.home"), "bin", "jstack").toString(),
+                  Long.toString(process.pid()))
+              .redirectErrorStream(true)
+              .start();
+      return new String(dump.getInputStream().readAllBytes(), StandardCharsets.UTF_8);
+    } catch (IOException e) {
+      return "not to be had: " + e.getMessage();
+    }
+  }
+
   /** Waits for the end, with all lines read, and gives the exit status. */
   int end() throws InterruptedException {
     if (!process.waitFor(PATIENCE_SECONDS, TimeUnit.SECONDS)) {
-      throw new AssertionError("the program does not end: " + lines);
+      queue.drainTo(lines);
+      throw new AssertionError(
+          "the program does not end: "
+              + lines.subList(Math.max(0, lines.size() - 5), lines.size())
+              + "\nwhat its threads do:\n"
+              + threads());
     }
     reader.join(TimeUnit.SECONDS.toMillis(PATIENCE_SECONDS));
     queue.drainTo(lines);

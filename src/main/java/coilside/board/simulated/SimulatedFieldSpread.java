@@ -6,12 +6,13 @@ import coilside.board.simulated.Scenario.Shape;
  * Isochromats that stand for a field distribution: offsets with weights that sum to 1.
  *
  * <p>Offsets lie on x(u) with u uniform, weights are density times spacing. For the Lorentzian x =
- * w sinh(b u), which is dense in the middle and still reaches 300 half widths: the sum follows the
- * exponential decay within 1e-3 for seconds. Equal-weight quantiles do worse, since their few
- * isochromats in the wings beat visibly against each other.
+ * w sinh(b u), which is dense in the middle and still reaches 3000 half widths: what is cut off is
+ * 2e-4 of the line, and the sum follows the exponential decay within 1e-4 while it lasts.
+ * Equal-weight quantiles do worse, since their few isochromats in the wings beat visibly against
+ * each other.
  */
 record SimulatedFieldSpread(double[] hertz, double[] weight) {
-  private static final double WING = 300;
+  private static final double WING = 3000;
   private static final double SIGMAS = 5.5;
   private static final double LOWER_PART = 0.3;
   private static final double HALF_HEIGHT = Math.sqrt(2 * Math.log(2));

@@ -15,7 +15,7 @@ import java.util.Map;
  * on the carrier and its factors can be kept.
  */
 final class SimulatedSpins {
-  private static final int ISOCHROMATS = 2048;
+  private static final int ISOCHROMATS = 4096;
   private static final int KEPT = 64;
 
   /** Transverse magnetisation older than this many T2 is taken as gone. */
@@ -55,6 +55,7 @@ final class SimulatedSpins {
         SimulatedFieldSpread.of(scenario.magnet().shape(), scenario.magnet().widthHertz(), each);
     double[] deviates = SimulatedFieldSpread.normalDeviates(each);
     double sum = components.stream().mapToDouble(Component::fraction).sum();
+    standardise(deviates, spread.weight());
     for (int c = 0; c < components.size(); c++) {
       for (int j = 0; j < each; j++) {
         int at = c * each + j;
@@ -63,6 +64,20 @@ final class SimulatedSpins {
         equilibrium[at] = spread.weight()[j] * components.get(c).fraction() / sum;
         mz[at] = equilibrium[at];
       }
+    }
+  }
+
+  /** So that mean and deviation of B1 over the sample are exactly what the scenario says. */
+  private static void standardise(double[] deviates, double[] weight) {
+    double mean = 0;
+    double square = 0;
+    for (int j = 0; j < deviates.length; j++) {
+      mean += weight[j] * deviates[j];
+      square += weight[j] * deviates[j] * deviates[j];
+    }
+    double deviation = Math.sqrt(square - mean * mean);
+    for (int j = 0; j < deviates.length; j++) {
+      deviates[j] = (deviates[j] - mean) / deviation;
     }
   }
 
@@ -113,18 +128,6 @@ final class SimulatedSpins {
       sum += z;
     }
     return sum;
-  }
-
-  /** Size of an FID's envelope after so many seconds, 1 at its start. */
-  double envelope(double seconds) {
-    double re = 0;
-    double im = 0;
-    double[][] p = precession(seconds);
-    for (int j = 0; j < equilibrium.length; j++) {
-      re += equilibrium[j] * p[0][j];
-      im += equilibrium[j] * p[1][j];
-    }
-    return Math.hypot(re, im);
   }
 
   /** Free precession and relaxation. */
