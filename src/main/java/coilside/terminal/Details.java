@@ -3,6 +3,7 @@ package coilside.terminal;
 import coilside.bench.Conditions;
 import coilside.bench.Desk;
 import coilside.bench.Finding;
+import coilside.bench.Refusal;
 import coilside.bench.Rung;
 import coilside.bench.RungStatus;
 import coilside.quantity.Measured;
@@ -14,6 +15,7 @@ import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
 import java.util.Map;
+import java.util.Optional;
 
 /** The texts about one rung: why it stands as it does, what it rests on, its history. */
 final class Details {
@@ -48,7 +50,10 @@ final class Details {
                 + LadderView.word(s.state())
                 + (age.isEmpty() ? "" : ", measured " + age + " ago"),
             LadderView.ink(s.state())));
-    s.reasons().forEach(r -> out.add(line("  because " + r, LadderView.ink(s.state()))));
+    Optional<String> refused = s.finding().flatMap(Finding::refusal).map(Refusal::reason);
+    s.reasons().stream()
+        .filter(r -> refused.isEmpty() || !refused.get().equals(r))
+        .forEach(r -> out.add(line("  because " + r, LadderView.ink(s.state()))));
     s.finding().ifPresent(f -> finding(out, f, g));
     out.add(line("", Ink.PLAIN));
     out.add(line("Rests on", Ink.TITLE));

@@ -56,6 +56,11 @@ final class LogSeries {
     return gaps;
   }
 
+  /** When the newest row was started, s since 1970; NaN when there is none. */
+  synchronized double newest() {
+    return count == 0 ? Double.NaN : values[0][count - 1];
+  }
+
   /** Seconds since the first row kept. */
   synchronized double[] seconds() {
     double[] out = new double[count];

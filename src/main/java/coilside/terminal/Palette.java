@@ -61,6 +61,11 @@ final class Palette {
     return made.computeIfAbsent(c << 8 | ink.ordinal(), k -> make(c, ink));
   }
 
+  /** The blank between two words of one ink: in that ink, so that the colour is not sent twice. */
+  TextCharacter gap(Ink ink) {
+    return made.computeIfAbsent(1 << 24 | ink.ordinal(), k -> make('x', ink).withCharacter(' '));
+  }
+
   private TextCharacter make(char c, Ink ink) {
     // A blank shows no foreground: one colour for all of them keeps the runs long.
     Ink shown = c == ' ' && ink != Ink.CHOSEN ? Ink.PLAIN : ink;

@@ -9,6 +9,9 @@ import java.io.IOException;
 import java.io.InputStream;
 import java.io.InputStreamReader;
 import java.io.PrintStream;
+import java.time.Duration;
+import java.time.Instant;
+import java.time.InstantSource;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
@@ -26,16 +29,21 @@ final class PlainMode {
   private static final String INTERRUPT = "\u0003";
 
   /** Keys that only change what is drawn. */
-  private static final String DRAWN_ONLY = "gpuvczx,.0ydwtLB?/";
+  private static final String DRAWN_ONLY = "gpuvczx,.0yjdwtLBM?/";
+
+  private static final Duration LIVE_EVERY = Duration.ofSeconds(3);
 
   private final Desk desk;
   private final Cockpit cockpit;
   private final Watch watch;
   private final PrintStream out;
   private final PlainText text;
+  private final InstantSource clock;
+  private Instant liveTold = Instant.EPOCH;
 
   private PlainMode(Desk desk, TerminalOptions options, PrintStream out) {
     this.desk = desk;
+    clock = options.clock();
     watch = new Watch(options.clock());
     desk.listen(watch);
     cockpit = new Cockpit(desk, watch, options, false);
@@ -89,6 +97,7 @@ final class PlainMode {
       String line = lines.poll(200, TimeUnit.MILLISECONDS);
       cockpit.tick();
       print(text.changes(watch.snapshot()));
+      print(live(watch.snapshot()));
       if (INTERRUPT.equals(line)) {
         return true;
       }
@@ -103,6 +112,17 @@ final class PlainMode {
       }
     }
     return false;
+  }
+
+  /** While it runs live: the numbers, often enough to turn a screw by. */
+  private List<String> live(Snapshot state) {
+    Instant now = clock.instant();
+    if (state.work().filter(Work.Live.class::isInstance).isEmpty()
+        || Duration.between(liveTold, now).compareTo(LIVE_EVERY) < 0) {
+      return List.of();
+    }
+    liveTold = now;
+    return text.headline(state, cockpit.look().headline);
   }
 
   private void command(String line) {

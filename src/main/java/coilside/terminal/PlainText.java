@@ -58,6 +58,32 @@ final class PlainText {
     return out;
   }
 
+  /** The headline number, its trend and the best so far, in one sentence; empty without one. */
+  List<String> headline(Snapshot s, Headline headline) {
+    HeadlineHistory history = s.headlines().get(headline);
+    if (history.latest().isEmpty()) {
+      return List.of();
+    }
+    String trend = history.trend() == 0 ? "steady" : history.trend() > 0 ? "rising" : "falling";
+    String best =
+        history
+            .best()
+            .map(
+                m ->
+                    history.best().equals(history.latest())
+                        ? ", the best so far"
+                        : ", best " + Numbers.concise(m, glyphs.unicode()))
+            .orElse("");
+    return List.of(
+        shown(
+            headline.words
+                + " "
+                + Numbers.concise(history.latest().get(), glyphs.unicode())
+                + ", "
+                + trend
+                + best));
+  }
+
   private static String caption(Picture picture) {
     return picture instanceof Picture.Trace t ? t.caption() : ((Picture.Curve) picture).caption();
   }

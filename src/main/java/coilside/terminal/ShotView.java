@@ -1,6 +1,7 @@
 package coilside.terminal;
 
 import coilside.bench.Progress;
+import coilside.bench.Work;
 import coilside.shot.Shot;
 import java.time.Duration;
 import java.time.Instant;
@@ -109,7 +110,10 @@ final class ShotView {
       canvas.putRight(end, y, adc, ink, Math.max(x, end - adc.length()));
       end -= adc.length() + 2;
     }
-    if (state.step().isPresent()) {
+    double rest = untilNextRow(state, now);
+    if (rest > 0) {
+      canvas.put(x, y, "waiting, next row in " + Numbers.clock(rest), Ink.PLAIN, end);
+    } else if (state.step().isPresent()) {
       Progress.Step step = state.step().get();
       if (!Double.isNaN(step.fraction())) {
         int bar = Math.max(6, area.width() / 10);
@@ -126,6 +130,18 @@ final class ShotView {
       }
       canvas.put(x, y, step.what(), Ink.PLAIN, end);
     }
+  }
+
+  /** Seconds until the log takes its next row, while it waits for that; else 0 or NaN. */
+  private static double untilNextRow(Snapshot state, Instant now) {
+    boolean shotOver =
+        state.shot().isEmpty()
+            || Duration.between(state.shotStarted(), now).toMillis() / 1e3
+                > state.shot().get().seconds() + 1;
+    if (shotOver && state.work().isPresent() && state.work().get() instanceof Work.Log log) {
+      return state.log().newest() + log.every().toMillis() / 1e3 - now.toEpochMilli() / 1e3;
+    }
+    return 0;
   }
 
   private static String percent(double fraction) {

@@ -1,6 +1,7 @@
 package coilside.terminal;
 
 import com.googlecode.lanterna.TerminalSize;
+import com.googlecode.lanterna.TextCharacter;
 import com.googlecode.lanterna.input.KeyStroke;
 import com.googlecode.lanterna.input.MouseAction;
 import com.googlecode.lanterna.input.MouseActionType;
@@ -36,12 +37,15 @@ final class Surface {
     palette = other;
   }
 
-  /** Asks the terminal to tell clicks, or to keep them for itself (copying text). */
+  /**
+   * Asks the terminal to tell clicks, or to keep them for itself (copying text). Presses alone
+   * (mode 9) are unknown to tmux, so releases are taken along and left out.
+   */
   void mouse(boolean wanted) throws IOException {
     if (wanted != mouse
         && screen instanceof TerminalScreen s
         && s.getTerminal() instanceof ExtendedTerminal t) {
-      t.setMouseCaptureMode(wanted ? MouseCaptureMode.CLICK : null);
+      t.setMouseCaptureMode(wanted ? MouseCaptureMode.CLICK_RELEASE : null);
     }
     mouse = wanted;
   }
@@ -65,10 +69,23 @@ final class Surface {
     int h = Math.min(size.getRows(), canvas.height());
     for (int y = 0; y < h; y++) {
       for (int x = 0; x < w; x++) {
-        screen.setCharacter(x, y, palette.character(canvas.at(x, y), canvas.inkAt(x, y)));
+        screen.setCharacter(x, y, cell(canvas, x, y));
       }
     }
     screen.refresh(everything ? Screen.RefreshType.COMPLETE : Screen.RefreshType.DELTA);
+  }
+
+  private TextCharacter cell(Canvas canvas, int x, int y) {
+    char c = canvas.at(x, y);
+    Ink ink = canvas.inkAt(x, y);
+    if (c == ' ' && ink != Ink.CHOSEN && x > 0 && x + 1 < canvas.width()) {
+      Ink before = canvas.inkAt(x - 1, y);
+      boolean words = canvas.at(x - 1, y) != ' ' && canvas.at(x + 1, y) != ' ';
+      if (words && before == canvas.inkAt(x + 1, y) && before != Ink.CHOSEN) {
+        return palette.gap(before);
+      }
+    }
+    return palette.character(c, ink);
   }
 
   void bell() {

@@ -22,6 +22,7 @@ final class EmulatedTerminal {
   private int row;
   private boolean alternate;
   private boolean cursorShown = true;
+  private boolean mouse;
   private long bytes;
   private int unknown;
   private StringBuilder sequence;
@@ -139,6 +140,7 @@ final class EmulatedTerminal {
       case 'h', 'l' -> {
         boolean on = last == 'h';
         alternate = inside.equals("?1049") ? on : alternate;
+        mouse = inside.equals("?1000") ? on : mouse;
         cursorShown = inside.equals("?25") ? on : cursorShown;
       }
       default -> unknown++;
@@ -165,6 +167,11 @@ final class EmulatedTerminal {
 
   synchronized boolean cursorShown() {
     return cursorShown;
+  }
+
+  /** Whether the program asked to be told of clicks. */
+  synchronized boolean mouse() {
+    return mouse;
   }
 
   synchronized long bytes() {

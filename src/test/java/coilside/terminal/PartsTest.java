@@ -236,6 +236,16 @@ class PartsTest {
   }
 
   @Test
+  void theFilterHoldsBackAnUnfinishedMouseReport() throws Exception {
+    AtomicLong time = new AtomicLong();
+    EscapeFilter filter = new EscapeFilter(InputStream.nullInputStream(), time::get);
+    filter.offer(new byte[] {27, '[', 'M', ' '}, 4);
+    assertEquals(0, filter.available());
+    filter.offer(new byte[] {'A', '5'}, 2);
+    assertEquals(6, filter.available());
+  }
+
+  @Test
   void theFilterPassesEverythingOnInOrder() throws Exception {
     byte[] all = "abc\u001b[A\u001b[5~z".getBytes(StandardCharsets.US_ASCII);
     try (EscapeFilter filter =

@@ -144,7 +144,7 @@ class RandomKeysOnBenchTest {
         RandomKeysTest.something(rig.terminal, random, i);
         rig.loop.turn();
         assertFalse(rig.cockpit.done(), "left at round " + i);
-        if (random.nextInt(8) == 0) {
+        if (random.nextInt(16) == 0) {
           // Lets the bench get somewhere between keys.
           LockSupport.parkNanos(1_000_000L * random.nextInt(20));
         }

@@ -36,6 +36,7 @@ class RealTerminalTest {
     assertEquals(before, t.settings());
     assertFalse(t.screen.alternate());
     assertTrue(t.screen.cursorShown());
+    assertFalse(t.screen.mouse());
     assertEquals(0, t.screen.unknown());
   }
 
@@ -47,7 +48,14 @@ class RealTerminalTest {
       String before = t.settings();
       assertShows(t, "8 t2        ○ missing");
       assertTrue(t.screen.alternate());
-      t.type("1m");
+      assertFalse(t.screen.mouse());
+      t.type("M");
+      assertShows(t, "The mouse is on");
+      assertTrue(t.screen.mouse());
+      // A press of the left button in column 4, row 7 of 1, as xterm reports it.
+      t.type("\u001b[M $'");
+      assertShows(t, "▶1 noise");
+      t.type("m");
       assertShows(t, "1 noise     ● fresh");
       t.size(130, 40);
       assertShows(t, "    DC ");

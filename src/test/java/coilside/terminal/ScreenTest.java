@@ -1,9 +1,11 @@
 package coilside.terminal;
 
+import static org.junit.jupiter.api.Assertions.assertArrayEquals;
 import static org.junit.jupiter.api.Assertions.assertEquals;
 import static org.junit.jupiter.api.Assertions.assertFalse;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
+import coilside.bench.Picture;
 import coilside.bench.Rung;
 import coilside.bench.RungStatus;
 import coilside.bench.Work;
@@ -308,6 +310,59 @@ class ScreenTest {
     assertShows(s, "FID, magnitude");
     s.press("y");
     assertShows(s, "log");
+  }
+
+  @Test
+  void aClickChoosesARungOrPlacesTheCursor() throws Exception {
+    Stage s = new Stage(80, 24);
+    s.press("r");
+    s.finish();
+    assertFalse(s.cockpit.look().mouse);
+    s.press("M");
+    assertTrue(s.cockpit.look().mouse);
+    s.click(3, 14);
+    assertEquals(Rung.NUTATION, s.cockpit.look().chosen);
+    s.press("7");
+    s.click(60, 9);
+    assertTrue(s.cockpit.pictures().focused().orElseThrow().cursorOn());
+    assertShows(s, " ms  real ");
+  }
+
+  @Test
+  void theSpectrumListsItsLinesAndItsNoiseInHertzOrPpm() throws Exception {
+    Stage s = new Stage(160, 50);
+    s.press("r");
+    s.finish();
+    s.press("7u");
+    s.press(KeyType.Tab);
+    assertShows(s, "offset (Hz)", "     width ", "widths and areas include the window");
+    assertShows(s, "noise level ");
+    s.press("j");
+    assertShows(s, "offset (ppm)");
+  }
+
+  @Test
+  void aFittedCurveShowsItsUncertainty() {
+    double[] x = {0, 1, 2};
+    double[] y = {0, 0.5, 1};
+    double[] u = {0.1, 0.2, 0.3};
+    Picture.Curve curve =
+        new Picture.Curve(
+            Rung.T1, "recovery time", "s", "signal", "V", x, y, u, x, y, u, new double[0], "");
+    List<Series> series = PictureModels.of(curve, Part.REAL, false, "").get(0).series();
+    Series band = series.stream().filter(v -> v.form() == Series.Form.BAND).findAny().orElseThrow();
+    assertArrayEquals(u, band.u());
+    assertArrayEquals(y, band.y());
+  }
+
+  @Test
+  void aStaleRungSaysWhyBesideItsPicture() throws Exception {
+    Stage s = new Stage(80, 24);
+    s.press("r");
+    s.finish();
+    s.desk.apply(s.desk.settings().withSample("cooking oil"));
+    s.press("7");
+    assertShows(s, "stale: ");
   }
 
   @Test

@@ -1,8 +1,11 @@
 package coilside.terminal;
 
+import com.googlecode.lanterna.TerminalPosition;
 import com.googlecode.lanterna.TerminalSize;
 import com.googlecode.lanterna.input.KeyStroke;
 import com.googlecode.lanterna.input.KeyType;
+import com.googlecode.lanterna.input.MouseAction;
+import com.googlecode.lanterna.input.MouseActionType;
 import com.googlecode.lanterna.screen.TerminalScreen;
 import com.googlecode.lanterna.terminal.virtual.DefaultVirtualTerminal;
 import java.io.IOException;
@@ -104,6 +107,12 @@ final class Stage {
 
   void press(KeyType type) throws IOException {
     terminal.addInput(new KeyStroke(type));
+    turn();
+  }
+
+  void click(int column, int row) throws IOException {
+    terminal.addInput(
+        new MouseAction(MouseActionType.CLICK_DOWN, 1, new TerminalPosition(column, row)));
     turn();
   }
 
