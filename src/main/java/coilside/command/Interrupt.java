@@ -29,6 +29,16 @@ final class Interrupt implements AutoCloseable {
             arrived();
           }
         });
+    if (!survivesHangUp) {
+      LostTerminal.watch(this::hangUp, finished);
+    }
+  }
+
+  /** The terminal went away, whether or not HUP told so. */
+  private void hangUp() {
+    if (!happened) {
+      arrived();
+    }
   }
 
   /** From now on an interrupt calls {@code stop}. */

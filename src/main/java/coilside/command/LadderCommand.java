@@ -1,7 +1,10 @@
 package coilside.command;
 
 import coilside.bench.Rung;
+import coilside.bench.RungStatus;
+import coilside.bench.ScanAdvice;
 import coilside.record.Json;
+import java.util.List;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Option;
@@ -29,7 +32,9 @@ final class LadderCommand implements CoilsideCommand {
       } else if (common.json) {
         output.line(Json.ladder(known.ladder()).text());
       } else {
-        LadderTable.of(known.ladder(), known.now(), common.plain).forEach(output::line);
+        List<RungStatus> ladder = known.ladder();
+        LadderTable.of(ladder, known.now(), common.plain).forEach(output::line);
+        ScanAdvice.lines(ladder).forEach(line -> output.line("advice: " + line));
       }
     }
     return ExitStatus.DONE;

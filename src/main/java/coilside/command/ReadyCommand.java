@@ -4,6 +4,7 @@ import coilside.bench.Bench;
 import coilside.bench.Climb;
 import coilside.bench.Finding;
 import coilside.bench.RungStatus;
+import coilside.bench.ScanAdvice;
 import coilside.record.Json;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
@@ -30,6 +31,7 @@ final class ReadyCommand extends BenchCommand {
       output.line(Json.ready(climb).text());
     } else {
       LadderTable.of(climb.ladder(), open.now(), common.plain).forEach(output::line);
+      ScanAdvice.lines(climb.ladder()).forEach(line -> output.line("advice: " + line));
       for (RungStatus status : climb.ladder()) {
         status.finding().filter(Finding::refused).ifPresent(f -> Refusals.print(f, output));
       }

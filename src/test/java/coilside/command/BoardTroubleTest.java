@@ -19,6 +19,7 @@ import java.time.Duration;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.concurrent.TimeUnit;
+import org.junit.jupiter.api.Tag;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
 import org.junit.jupiter.api.condition.EnabledOnOs;
@@ -68,6 +69,7 @@ class BoardTroubleTest {
   }
 
   @Test
+  @Tag("machine")
   void aPortThatOneMayNotOpenNamesOwnerAndGroup() throws Exception {
     assumeTrue(
         System.getProperty("user.name").equals("root") && new File("/usr/bin/setpriv").canExecute(),

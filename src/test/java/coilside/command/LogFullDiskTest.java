@@ -13,6 +13,7 @@ import java.util.ArrayList;
 import java.util.List;
 import java.util.stream.Stream;
 import org.junit.jupiter.api.Assumptions;
+import org.junit.jupiter.api.Tag;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 
@@ -20,6 +21,7 @@ import org.junit.jupiter.api.io.TempDir;
  * A log that fills a real small file system, where this user may mount one. Elsewhere the stand-ins
  * in {@code coilside.record} have to do, and the skipped test says so.
  */
+@Tag("machine")
 class LogFullDiskTest {
   @TempDir Path folder;
 
