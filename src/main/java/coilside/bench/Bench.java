@@ -106,6 +106,16 @@ public final class Bench {
     }
   }
 
+  /** Shows a picture made again from a capture, unless a newer one has come meanwhile. */
+  void showOld(Picture picture) {
+    synchronized (pictures) {
+      if (pictures.putIfAbsent(picture.rung(), picture) != null) {
+        return;
+      }
+    }
+    listener.accept(new Progress.PictureChanged(picture));
+  }
+
   /** The picture last made of this rung since the program started. */
   public Optional<Picture> picture(Rung rung) {
     synchronized (pictures) {

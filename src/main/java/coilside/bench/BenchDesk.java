@@ -8,6 +8,8 @@ import java.time.InstantSource;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
+import java.util.Set;
+import java.util.concurrent.ConcurrentHashMap;
 import java.util.concurrent.CopyOnWriteArrayList;
 import java.util.concurrent.ExecutorService;
 import java.util.concurrent.Executors;
@@ -26,13 +28,18 @@ public final class BenchDesk implements Desk {
   private final Bench bench;
   private final List<Consumer<Progress>> listeners = new CopyOnWriteArrayList<>();
   private final AtomicBoolean busy = new AtomicBoolean();
-  private final ExecutorService worker =
-      Executors.newSingleThreadExecutor(
-          task -> {
-            Thread thread = new Thread(task, "bench");
-            thread.setDaemon(true);
-            return thread;
-          });
+  private final Set<Rung> asked = ConcurrentHashMap.newKeySet();
+  private final ExecutorService worker = oneDaemon("bench");
+  private final ExecutorService pictures = oneDaemon("pictures");
+
+  private static ExecutorService oneDaemon(String name) {
+    return Executors.newSingleThreadExecutor(
+        task -> {
+          Thread thread = new Thread(task, name);
+          thread.setDaemon(true);
+          return thread;
+        });
+  }
 
   public BenchDesk(
       Board board, Keeper keeper, BenchSettings settings, InstantSource clock, Waiter waiter)
@@ -118,7 +125,36 @@ public final class BenchDesk implements Desk {
 
   @Override
   public Optional<Picture> picture(Rung rung) {
-    return bench.picture(rung);
+    Optional<Picture> picture = bench.picture(rung);
+    if (picture.isEmpty() && asked.add(rung)) {
+      rebuild(rung);
+    }
+    return picture;
+  }
+
+  /**
+   * Makes a rung's picture again from the capture of its newest finding, and tells it when done.
+   */
+  private void rebuild(Rung rung) {
+    List<Finding> findings = bench.history(rung);
+    String name = findings.isEmpty() ? "" : findings.get(findings.size() - 1).capture();
+    if (name.isEmpty()) {
+      return;
+    }
+    try {
+      pictures.execute(
+          () -> keeper.capture(name).flatMap(BenchDesk::picture).ifPresent(bench::showOld));
+    } catch (RejectedExecutionException e) {
+      // The desk is being closed: nobody will look.
+    }
+  }
+
+  private static Optional<Picture> picture(Capture capture) {
+    try {
+      return Optional.of(Analysis.of(capture).picture());
+    } catch (Analysis.Refused | IllegalArgumentException e) {
+      return Optional.empty();
+    }
   }
 
   @Override
@@ -191,6 +227,7 @@ public final class BenchDesk implements Desk {
   public void close() {
     bench.stop();
     worker.shutdown();
+    pictures.shutdownNow();
     try {
       worker.awaitTermination(CLOSE_SECONDS, TimeUnit.SECONDS);
     } catch (InterruptedException e) {

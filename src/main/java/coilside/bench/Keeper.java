@@ -30,6 +30,11 @@ public interface Keeper {
   /** The newest finding of a rung. */
   Optional<Finding> newest(Rung rung) throws KeepException;
 
+  /** A kept capture by its base name; empty where it is gone or cannot be read. */
+  default Optional<Capture> capture(String name) {
+    return Optional.empty();
+  }
+
   /** A small setting that outlives the program ("sample", "coil"). */
   Optional<String> setting(String name) throws KeepException;
 

@@ -160,6 +160,15 @@ public final class BenchRecord implements Keeper, AutoCloseable {
   }
 
   @Override
+  public Optional<Capture> capture(String name) {
+    try {
+      return Optional.of(CaptureReader.read(folder().resolve(name)));
+    } catch (CaptureException e) {
+      return Optional.empty();
+    }
+  }
+
+  @Override
   public Optional<String> setting(String name) throws KeepException {
     return view.setting(name);
   }

@@ -103,7 +103,7 @@ final class BenchTrial implements AutoCloseable {
 
   /** The capture that a finding came from. */
   Capture capture(Finding finding) {
-    return keeper.capture(finding.capture());
+    return keeper.capture(finding.capture()).orElseThrow();
   }
 
   /** All scans played so far. */

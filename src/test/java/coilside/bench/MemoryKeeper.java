@@ -22,9 +22,10 @@ public final class MemoryKeeper implements Keeper {
     return capture.purpose() + "-" + captures.size();
   }
 
-  /** The capture of this name. */
-  synchronized Capture capture(String name) {
-    return captures.get(Integer.parseInt(name.substring(name.lastIndexOf('-') + 1)) - 1);
+  @Override
+  public synchronized Optional<Capture> capture(String name) {
+    int number = Integer.parseInt(name.substring(name.lastIndexOf('-') + 1));
+    return number <= captures.size() ? Optional.of(captures.get(number - 1)) : Optional.empty();
   }
 
   @Override
