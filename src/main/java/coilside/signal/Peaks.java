@@ -33,6 +33,8 @@ public final class Peaks {
       Measured widthHertz,
       Measured area) {}
 
+  private static final double MOST_RISE = 1.125;
+
   /** Noise of the real part of one point, V: from the median distance to the median. */
   public static double noise(Spectrum s) {
     double[] re = s.re().clone();
@@ -113,7 +115,7 @@ public final class Peaks {
           best = k;
         }
       }
-      if (part[1] > part[0]) {
+      if (part[1] > part[0] && y[best] > limit) {
         split(s, noise, limit, part[0], part[1], best, peaks);
       }
     }
@@ -131,7 +133,9 @@ public final class Peaks {
       double curve = a - 2 * y[top] + c;
       if (curve < 0) {
         shift = Math.max(-0.5, Math.min(0.5, 0.5 * (a - c) / curve));
-        height = y[top] - 0.25 * (a - c) * shift;
+        // A parabola through neighbours of a true peak rises by an eighth at most; more means a
+        // dispersive line, whose deep neighbour would lift it without end.
+        height = Math.min(y[top] - 0.25 * (a - c) * shift, MOST_RISE * y[top]);
       }
     }
     double left = crossing(y, top, -1, height / 2);

@@ -127,4 +127,40 @@ class SpectrumToolsTest {
     int k = (int) Math.round(300 / s.stepHertz()) + s.points() / 2;
     assertEquals(clean.re()[k], s.re()[k], 4);
   }
+
+  @Test
+  void aPeakBesideADeepHoleKeepsItsHeightAndAWidthAboveZero() {
+    double[] y = new double[64];
+    y[31] = 0.99;
+    y[32] = 1;
+    y[33] = -1000;
+    Peaks.Peak peak = Peaks.find(new Spectrum(y, new double[64], 1, 1e6), 0.01, 5).get(0);
+    org.junit.jupiter.api.Assertions.assertEquals(1, peak.height().value(), 0.13);
+    org.junit.jupiter.api.Assertions.assertTrue(peak.widthHertz().value() > 0, peak.toString());
+  }
+
+  @Test
+  void spectraThatAreNotPhasedGivePeaksAboveTheThresholdOrNone() {
+    java.util.SplittableRandom random = new java.util.SplittableRandom(5);
+    int found = 0;
+    for (int draw = 0; draw < 300; draw++) {
+      int n = 512;
+      double[] re = new double[n];
+      double[] im = new double[n];
+      double phase = 2 * Math.PI * random.nextDouble();
+      double f = 2e3 * (random.nextDouble() - 0.5);
+      for (int k = 0; k < n; k++) {
+        double t = k * 1e-4;
+        double size = Math.exp(-t / 0.01) + 0.3 * Math.exp(-t / 0.002);
+        re[k] = size * Math.cos(phase + 2 * Math.PI * f * t) + 0.05 * random.nextGaussian();
+        im[k] = size * Math.sin(phase + 2 * Math.PI * f * t) + 0.05 * random.nextGaussian();
+      }
+      for (Peaks.Peak peak : Peaks.find(spectrum(new Fid(re, im, 1e-4, 0, 1e6)), 0.8, 5)) {
+        org.junit.jupiter.api.Assertions.assertTrue(peak.height().value() > 4, peak.toString());
+        org.junit.jupiter.api.Assertions.assertTrue(peak.widthHertz().u() >= 0, peak.toString());
+        found++;
+      }
+    }
+    org.junit.jupiter.api.Assertions.assertTrue(found > 100, found + " peaks");
+  }
 }
