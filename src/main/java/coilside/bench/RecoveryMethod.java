@@ -34,6 +34,9 @@ final class RecoveryMethod implements Method {
   /** Scans after which points that scatter without measure will not come right. */
   private static final int HOPELESS = 24;
 
+  /** Reduced chi-square of points that scatter without measure. */
+  private static final double SCATTER = 25;
+
   /** Scans spent on telling two T1 from one. */
   private static final int MOST_FOR_TWO = 16;
 
@@ -79,9 +82,14 @@ final class RecoveryMethod implements Method {
       CommonShape shape = CommonShape.of(a.shots(), a.scans());
       shortest = inversion ? shortest(a, shape, guess) : afterEcho(a, shape, guess);
       List<RecoveryPoint> points = points(a.shots(), a.scans(), shape, inversion);
-      RecoveryPlan.Advice advice = plan.next(points);
+      RecoveryPlan.Advice advice = plan.next(points, shortest);
       a.show(picture(points, advice.result(), new double[] {advice.recoverySeconds()}));
-      boolean scatters = advice.result().map(r -> r.reducedChiSquare() > 25).orElse(true);
+      boolean scatters =
+          advice
+                  .result()
+                  .map(RecoveryFit.Result::reducedChiSquare)
+                  .orElseGet(() -> RecoveryFit.reducedChiSquare(points, options))
+              > SCATTER;
       boolean another = advice.enough() && advice.result().get().scatters();
       if (advice.enough() && (!another || points.size() >= MOST_FOR_TWO)
           || a.scans().size() > HOPELESS && scatters) {
