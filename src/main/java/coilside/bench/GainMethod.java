@@ -150,19 +150,27 @@ final class GainMethod implements Method {
     double[] sorted = values.clone();
     java.util.Arrays.sort(sorted);
     int n = sorted.length;
+    double step = step(sorted);
+    double size = Math.max(sorted[n - 1], -sorted[0]);
+    return size > FEWEST_STEPS * step
+        && (flat(values, sorted[n - 1], step, FLAT_SAMPLES)
+            || flat(values, sorted[0], step, FLAT_SAMPLES));
+  }
+
+  /** The smallest step between sorted values, which the digitiser makes. */
+  static double step(double[] sorted) {
     double step = Double.POSITIVE_INFINITY;
-    for (int k = 1; k < n; k++) {
+    for (int k = 1; k < sorted.length; k++) {
       double d = sorted[k] - sorted[k - 1];
       if (d > 0) {
         step = Math.min(step, d);
       }
     }
-    double size = Math.max(sorted[n - 1], -sorted[0]);
-    return size > FEWEST_STEPS * step
-        && (flat(values, sorted[n - 1], step) || flat(values, sorted[0], step));
+    return step;
   }
 
-  private static boolean flat(double[] values, double extreme, double step) {
+  /** Whether so many samples stand at this extreme, and few one step of the digitiser inside it. */
+  static boolean flat(double[] values, double extreme, double step, int fewest) {
     int at = 0;
     int beside = 0;
     for (double v : values) {
@@ -170,7 +178,7 @@ final class GainMethod implements Method {
       at += steps < 0.5 ? 1 : 0;
       beside += steps >= 0.5 && steps < 1.5 ? 1 : 0;
     }
-    return at >= FLAT_SAMPLES && at >= FLATNESS * beside;
+    return at >= fewest && at >= FLATNESS * beside;
   }
 
   private static double floor(BoardLimits.Range range, double x) {

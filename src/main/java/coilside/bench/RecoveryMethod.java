@@ -216,17 +216,16 @@ final class RecoveryMethod implements Method {
   public Reading read(Capture capture) throws NotMeasurable {
     boolean inversion = Notes.number(capture, "inversion") != 0;
     double guess = Notes.number(capture, "guess");
-    List<RecoveryPoint> points =
-        points(
-            capture.shots(),
-            capture.scans(),
-            CommonShape.of(capture.shots(), capture.scans()),
-            inversion);
+    CommonShape shape = CommonShape.of(capture.shots(), capture.scans());
+    List<RecoveryPoint> points = points(capture.shots(), capture.scans(), shape, inversion);
     RecoveryFit.Result fit;
     try {
       fit = RecoveryFit.fit(points, options(inversion, guess));
     } catch (NotDetermined e) {
-      throw Readings.refused("T1 is not determined", e);
+      Refusal plain = Readings.refused("T1 is not determined", e).refusal();
+      List<String> causes = new ArrayList<>(plain.likelyCauses());
+      shape.track().cause().ifPresent(c -> causes.add(0, c));
+      throw new NotMeasurable(plain.reason(), causes);
     }
     Map<String, Measured> values = new LinkedHashMap<>();
     values.put("t1", fit.t1());
@@ -237,6 +236,7 @@ final class RecoveryMethod implements Method {
             GainMethod.RECOVERED * fit.longestT1Seconds() * fit.t1().relative(),
             Unit.SECOND));
     List<String> warnings = new ArrayList<>(fit.warnings());
+    shape.track().cause().ifPresent(warnings::add);
     double target = Notes.number(capture, "target");
     if (fit.t1().relative() > target) {
       warnings.add(
