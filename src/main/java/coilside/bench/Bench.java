@@ -173,7 +173,11 @@ public final class Bench {
         }
       }
     }
-    return measureOne(target);
+    Finding finding = measureOne(target);
+    if (target == Rung.T1 && !finding.refused()) {
+      checkRests(finding);
+    }
+    return finding;
   }
 
   private static void collect(Rung rung, Set<Rung> into) {
@@ -226,7 +230,13 @@ public final class Bench {
   private List<Finding> checkRests(Finding t1) throws BoardException, KeepException {
     double guess = guesses.t1Seconds().orElse(Double.POSITIVE_INFINITY);
     double longest = t1.value("repetition_time").value() / GainMethod.RECOVERED;
-    double rest = GainMethod.RECOVERED * guess;
+    double rest =
+        ladder
+            .newestGood(Rung.NUTATION)
+            .map(Finding::values)
+            .filter(values -> values.containsKey("rest"))
+            .map(values -> values.get("rest").value())
+            .orElse(GainMethod.RECOVERED * guess);
     guesses.rememberT1(Math.max(1.1 * longest, Double.isInfinite(guess) ? 0 : guess));
     if (rest >= ENOUGH_RESTS * longest) {
       return List.of();

@@ -22,6 +22,7 @@ import java.util.List;
  * @param u standard uncertainty of each part, V
  * @param decay the shared decay
  * @param quiet what the receive-only scan said
+ * @param track where the line stood from scan to scan
  */
 record CommonShape(
     List<Integer> indices,
@@ -30,7 +31,8 @@ record CommonShape(
     double[] im,
     double[] u,
     DecayResult decay,
-    Quiet quiet) {
+    Quiet quiet,
+    LineTrack track) {
 
   /** u(T2*)/T2* at which a shape still projects well: its error enters amplitudes squared. */
   private static final double LOOSE = 0.5;
@@ -70,7 +72,8 @@ record CommonShape(
         seconds[j++] = now;
       }
     }
-    fids = LineTrack.of(fids, seconds).steadied(fids);
+    LineTrack track = LineTrack.of(fids, seconds);
+    fids = track.steadied(fids);
     DecayResult decay = sharedDecay(fids, quiet.sigma());
     int n = fids.size();
     double[] re = new double[n];
@@ -85,7 +88,7 @@ record CommonShape(
       im[j] = p.im(0) * Math.cos(phase) - p.re(0) * Math.sin(phase);
       u[j] = Math.hypot(p.uncertainty(), quiet.uOffset() * constant(p.shape()));
     }
-    return new CommonShape(indices, fids, re, im, u, decay, quiet);
+    return new CommonShape(indices, fids, re, im, u, decay, quiet, track);
   }
 
   /** What the projection on this shape makes of a constant of 1. */

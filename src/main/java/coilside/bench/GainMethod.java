@@ -30,8 +30,21 @@ final class GainMethod implements Method {
   private static final double[] WIDTHS = {10e-6, 25e-6, 60e-6};
   private static final double GUESS_WIDTH = 15e-6;
 
+  /** T1, flip angle, amplitude and what stood before the first scan are unknown. */
+  private static final int FEWEST_FOR_GUESS = 4;
+
+  /** The longest T1 that fits is taken this much longer. */
+  private static final double MARGIN = 1.1;
+
   /** So many samples at exactly the largest value are a flat top. */
   private static final int FLAT_SAMPLES = 12;
+
+  /**
+   * ... and this many times as many as stand one step lower. The crest of a slow signal is
+   * parabolic: so many steps of the digitiser down it takes the root of their number, at most 1 :
+   * (root 2 - 1) = 2.4 times as many samples in its top step as in the next.
+   */
+  private static final double FLATNESS = 3;
 
   /** ... where the signal spans more steps of the digitiser than this. */
   private static final int FEWEST_STEPS = 100;
@@ -125,8 +138,8 @@ final class GainMethod implements Method {
   }
 
   /**
-   * Whether the signal is cut off before the digitiser: many samples, two or three in a row among
-   * them, stand at exactly the same largest value, which noise does not let happen.
+   * Whether the signal is cut off before the digitiser: many samples stand at exactly the same
+   * largest value and few just below it.
    */
   static boolean flatTopped(Scan scan) {
     Fid fid = scan.fid();
@@ -137,21 +150,35 @@ final class GainMethod implements Method {
     double[] sorted = values.clone();
     java.util.Arrays.sort(sorted);
     int n = sorted.length;
+    double step = step(sorted);
+    double size = Math.max(sorted[n - 1], -sorted[0]);
+    return size > FEWEST_STEPS * step
+        && (flat(values, sorted[n - 1], step, FLAT_SAMPLES)
+            || flat(values, sorted[0], step, FLAT_SAMPLES));
+  }
+
+  /** The smallest step between sorted values, which the digitiser makes. */
+  static double step(double[] sorted) {
     double step = Double.POSITIVE_INFINITY;
-    for (int k = 1; k < n; k++) {
+    for (int k = 1; k < sorted.length; k++) {
       double d = sorted[k] - sorted[k - 1];
       if (d > 0) {
         step = Math.min(step, d);
       }
     }
-    int up = 0;
-    int down = 0;
-    for (double v : sorted) {
-      up += v == sorted[n - 1] ? 1 : 0;
-      down += v == sorted[0] ? 1 : 0;
+    return step;
+  }
+
+  /** Whether so many samples stand at this extreme, and few one step of the digitiser inside it. */
+  static boolean flat(double[] values, double extreme, double step, int fewest) {
+    int at = 0;
+    int beside = 0;
+    for (double v : values) {
+      double steps = Math.abs(v - extreme) / step;
+      at += steps < 0.5 ? 1 : 0;
+      beside += steps >= 0.5 && steps < 1.5 ? 1 : 0;
     }
-    double size = Math.max(sorted[n - 1], -sorted[0]);
-    return Math.max(up, down) >= FLAT_SAMPLES && size > FEWEST_STEPS * step;
+    return at >= fewest && at >= FLATNESS * beside;
   }
 
   private static double floor(BoardLimits.Range range, double x) {
@@ -182,21 +209,24 @@ final class GainMethod implements Method {
     double gain = Choices.gain(a);
     double guess = 0;
     Quiet quiet = quiet(a, gain);
-    for (double rest : GUESS_RESTS) {
+    double played =
+        BenchShots.single(a, gain, Choices.pulse(a.limits(), GUESS_WIDTH), 0, 0).playedSeconds();
+    for (int next = 0; next < GUESS_RESTS.length; ) {
+      double rest = GUESS_RESTS[next++];
       double width = Choices.pulse(a.limits(), GUESS_WIDTH);
       double phase = BenchShots.phase(a, spoiling(a.scansPlayed()));
       Scan scan = a.playAside(BenchShots.single(a, gain, width, phase, Choices.rest(a, rest)));
-      while ((scan.clippedSamples() > 0 || flatTopped(scan)) && lower(a, gain, 10) < gain) {
+      if ((scan.clippedSamples() > 0 || flatTopped(scan)) && lower(a, gain, 10) < gain) {
         gain = lower(a, gain, 10);
         fids.clear();
         rests.clear();
         quiet = quiet(a, gain);
-        phase = BenchShots.phase(a, spoiling(a.scansPlayed()));
-        scan = a.playAside(BenchShots.single(a, gain, width, phase, Choices.rest(a, rest)));
+        next = 0;
+        continue;
       }
       fids.add(turned(quiet.strip(scan.fid()), phase));
-      rests.add(scan.restSeconds());
-      if (fids.size() < 3) {
+      rests.add(scan.restSeconds() + played);
+      if (fids.size() < FEWEST_FOR_GUESS) {
         continue;
       }
       MatchedProjection p =
@@ -207,7 +237,7 @@ final class GainMethod implements Method {
         amplitudes[k] = p.amplitude(k).value();
         r[k] = rests.get(k);
       }
-      guess = RecoveryGuess.longest(r, amplitudes, p.uncertainty());
+      guess = MARGIN * RecoveryGuess.longest(r, amplitudes, p.uncertainty());
       if (guess < rest) {
         break;
       }

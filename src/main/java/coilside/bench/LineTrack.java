@@ -6,14 +6,17 @@ import coilside.fit.NotDetermined;
 import coilside.signal.Fid;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Optional;
 
 /**
  * Where the line stood in each scan of a run whose field moves: the frequency of every scan strong
  * enough to show it, drawn on to the weak ones between.
  *
  * @param offsets one a scan, Hz; empty when the line did not move more than noise explains
+ * @param deviation standard deviation of those, Hz
+ * @param alone what noise explains of that, Hz
  */
-record LineTrack(double[] offsets) {
+record LineTrack(double[] offsets, double deviation, double alone) {
   /** As in {@link Wander}. */
   private static final double IMPROBABLE = 9.2;
 
@@ -50,7 +53,7 @@ record LineTrack(double[] offsets) {
       }
     }
     if (seen < FEWEST) {
-      return new LineTrack(new double[0]);
+      return new LineTrack(new double[0], 0, 0);
     }
     mean /= weights;
     double chi = 0;
@@ -59,13 +62,13 @@ record LineTrack(double[] offsets) {
     }
     double deviation = Math.sqrt(chi * seen / weights);
     if (chi < IMPROBABLE || deviation < PART * width / seen) {
-      return new LineTrack(new double[0]);
+      return new LineTrack(new double[0], 0, 0);
     }
     double[] out = new double[n];
     for (int j = 0; j < n; j++) {
       out[j] = Double.isNaN(f[j]) ? between(f, seconds, j) : f[j];
     }
-    return new LineTrack(out);
+    return new LineTrack(out, deviation, deviation / Math.sqrt(chi));
   }
 
   private static double between(double[] f, double[] seconds, int at) {
@@ -89,6 +92,13 @@ record LineTrack(double[] offsets) {
 
   boolean moved() {
     return offsets.length > 0;
+  }
+
+  /** What a line that moves is most likely to come from, with the figures. */
+  Optional<String> cause() {
+    return moved()
+        ? Optional.of(Wander.movement(deviation, offsets.length, alone))
+        : Optional.empty();
   }
 
   /** The scans as if the line had stood at its mean offset all the time, time zero kept. */

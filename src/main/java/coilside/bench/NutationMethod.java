@@ -134,6 +134,16 @@ final class NutationMethod implements Method {
     return points;
   }
 
+  private static double shortestRest(Capture capture) {
+    double shortest = Double.POSITIVE_INFINITY;
+    for (int i = 0; i < capture.scans().size(); i++) {
+      if (!capture.shots().get(i).receiveOnly()) {
+        shortest = Math.min(shortest, capture.scans().get(i).restSeconds());
+      }
+    }
+    return shortest;
+  }
+
   static Pulse pulse(Shot shot) {
     return (Pulse) shot.flat().stream().filter(Pulse.class::isInstance).findFirst().orElseThrow();
   }
@@ -171,6 +181,10 @@ final class NutationMethod implements Method {
     values.put("nutation_rate", fit.nutationRate());
     values.put("b1", b1(fit.nutationRate()));
     values.put("b1_spread", fit.spread());
+    values.put(
+        "rest",
+        Measured.withoutUncertainty(
+            shortestRest(capture), Unit.SECOND, "as it was before the shots, by the clock"));
     List<String> warnings = new ArrayList<>(fit.warnings());
     double target = Notes.number(capture, "target");
     double reached = fit.pulse90().relative();

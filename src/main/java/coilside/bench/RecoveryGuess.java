@@ -7,14 +7,16 @@ package coilside.bench;
  *
  * <p>Model: scan k sees A sin(theta) m_k; after the pulse m cos(theta) is left, and during rest r
  * it recovers as m' = 1 + (m cos(theta) - 1) exp(-r/T1). T1 and cos(theta) are searched on a grid,
- * A is linear.
+ * A and what stood before the first scan are linear.
  */
 final class RecoveryGuess {
   private static final double SHORTEST = 3e-3;
   private static final double LONGEST = 20;
-  private static final int STEPS = 90;
-  private static final int ANGLES = 25;
-  private static final int STARTS = 5;
+  private static final int STEPS = 180;
+  private static final int ANGLES = 100;
+
+  /** Deviations by which a T1 may miss the best fit and still count as possible. */
+  private static final double DEVIATIONS = 2;
 
   /** What the model leaves out (echoes of earlier pulses, B1 spread), relative. */
   private static final double MODEL_ERROR = 0.01;
@@ -24,7 +26,7 @@ final class RecoveryGuess {
   /**
    * The longest T1 that still fits the amplitudes about as well as the best.
    *
-   * @param rests rest before each scan, s
+   * @param rests from the pulse before to that of each scan, s
    * @param amplitudes amplitude of each scan, any unit
    * @param sigma noise of one amplitude, same unit
    * @return T1, s
@@ -37,7 +39,7 @@ final class RecoveryGuess {
       lowest = Math.min(lowest, best[t]);
     }
     double model = MODEL_ERROR * largest(amplitudes);
-    double allowed = lowest + 4 * (sigma * sigma + model * model);
+    double allowed = lowest + DEVIATIONS * DEVIATIONS * (sigma * sigma + model * model);
     double longest = t1(0);
     for (int t = 0; t < STEPS; t++) {
       if (best[t] <= allowed) {
@@ -62,27 +64,59 @@ final class RecoveryGuess {
   private static double misfit(double t1, double[] rests, double[] amplitudes) {
     double lowest = Double.POSITIVE_INFINITY;
     for (int c = 0; c < ANGLES; c++) {
-      double cos = -1 + 1.98 * c / (ANGLES - 1);
-      for (int s = 0; s < STARTS; s++) {
-        double start = cos + (1 - cos) * s / (STARTS - 1.0);
-        lowest = Math.min(lowest, misfit(t1, cos, start, rests, amplitudes));
+      lowest = Math.min(lowest, misfit(t1, -1 + 1.98 * c / (ANGLES - 1), rests, amplitudes));
+    }
+    return lowest;
+  }
+
+  /**
+   * Every m is p + q times what stood before the first scan, so amplitude and start are linear; the
+   * start is held between what a pulse leaves and full recovery.
+   */
+  private static double misfit(double t1, double cos, double[] rests, double[] amplitudes) {
+    int n = rests.length;
+    double[] p = new double[n];
+    double[] q = new double[n];
+    double afterP = 0;
+    double afterQ = 1;
+    double pp = 0;
+    double pq = 0;
+    double qq = 0;
+    double py = 0;
+    double qy = 0;
+    for (int k = 0; k < n; k++) {
+      double e = Math.exp(-rests[k] / t1);
+      p[k] = 1 + (afterP - 1) * e;
+      q[k] = afterQ * e;
+      afterP = p[k] * cos;
+      afterQ = q[k] * cos;
+      pp += p[k] * p[k];
+      pq += p[k] * q[k];
+      qq += q[k] * q[k];
+      py += p[k] * amplitudes[k];
+      qy += q[k] * amplitudes[k];
+    }
+    double det = pp * qq - pq * pq;
+    double start = det > 1e-12 * pp * qq ? (pp * qy - pq * py) / (qq * py - pq * qy) : 1;
+    double lowestStart = Math.min(cos, 0);
+    double lowest = Double.POSITIVE_INFINITY;
+    for (double s : new double[] {start, lowestStart, 1}) {
+      if (s >= lowestStart && s <= 1) {
+        lowest = Math.min(lowest, scaled(p, q, s, amplitudes));
       }
     }
     return lowest;
   }
 
-  private static double misfit(
-      double t1, double cos, double start, double[] rests, double[] amplitudes) {
-    double after = start;
+  private static double scaled(double[] p, double[] q, double start, double[] amplitudes) {
     double mm = 0;
     double my = 0;
     double yy = 0;
-    for (int k = 0; k < rests.length; k++) {
-      double m = 1 + (after - 1) * Math.exp(-rests[k] / t1);
+    for (int k = 0; k < p.length; k++) {
+      double m = p[k] + q[k] * start;
       mm += m * m;
       my += m * amplitudes[k];
       yy += amplitudes[k] * amplitudes[k];
-      after = m * cos;
     }
     return mm > 0 ? yy - my * my / mm : yy;
   }

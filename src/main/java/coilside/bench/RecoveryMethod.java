@@ -34,6 +34,9 @@ final class RecoveryMethod implements Method {
   /** Scans after which points that scatter without measure will not come right. */
   private static final int HOPELESS = 24;
 
+  /** Reduced chi-square of points that scatter without measure. */
+  private static final double SCATTER = 25;
+
   /** Scans spent on telling two T1 from one. */
   private static final int MOST_FOR_TWO = 16;
 
@@ -79,9 +82,14 @@ final class RecoveryMethod implements Method {
       CommonShape shape = CommonShape.of(a.shots(), a.scans());
       shortest = inversion ? shortest(a, shape, guess) : afterEcho(a, shape, guess);
       List<RecoveryPoint> points = points(a.shots(), a.scans(), shape, inversion);
-      RecoveryPlan.Advice advice = plan.next(points);
+      RecoveryPlan.Advice advice = plan.next(points, shortest);
       a.show(picture(points, advice.result(), new double[] {advice.recoverySeconds()}));
-      boolean scatters = advice.result().map(r -> r.reducedChiSquare() > 25).orElse(true);
+      boolean scatters =
+          advice
+                  .result()
+                  .map(RecoveryFit.Result::reducedChiSquare)
+                  .orElseGet(() -> RecoveryFit.reducedChiSquare(points, options))
+              > SCATTER;
       boolean another = advice.enough() && advice.result().get().scatters();
       if (advice.enough() && (!another || points.size() >= MOST_FOR_TWO)
           || a.scans().size() > HOPELESS && scatters) {
@@ -208,17 +216,16 @@ final class RecoveryMethod implements Method {
   public Reading read(Capture capture) throws NotMeasurable {
     boolean inversion = Notes.number(capture, "inversion") != 0;
     double guess = Notes.number(capture, "guess");
-    List<RecoveryPoint> points =
-        points(
-            capture.shots(),
-            capture.scans(),
-            CommonShape.of(capture.shots(), capture.scans()),
-            inversion);
+    CommonShape shape = CommonShape.of(capture.shots(), capture.scans());
+    List<RecoveryPoint> points = points(capture.shots(), capture.scans(), shape, inversion);
     RecoveryFit.Result fit;
     try {
       fit = RecoveryFit.fit(points, options(inversion, guess));
     } catch (NotDetermined e) {
-      throw Readings.refused("T1 is not determined", e);
+      Refusal plain = Readings.refused("T1 is not determined", e).refusal();
+      List<String> causes = new ArrayList<>(plain.likelyCauses());
+      shape.track().cause().ifPresent(c -> causes.add(0, c));
+      throw new NotMeasurable(plain.reason(), causes);
     }
     Map<String, Measured> values = new LinkedHashMap<>();
     values.put("t1", fit.t1());
@@ -229,6 +236,7 @@ final class RecoveryMethod implements Method {
             GainMethod.RECOVERED * fit.longestT1Seconds() * fit.t1().relative(),
             Unit.SECOND));
     List<String> warnings = new ArrayList<>(fit.warnings());
+    shape.track().cause().ifPresent(warnings::add);
     double target = Notes.number(capture, "target");
     if (fit.t1().relative() > target) {
       warnings.add(

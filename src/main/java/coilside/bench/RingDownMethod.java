@@ -12,6 +12,7 @@ import coilside.signal.Fid;
 import coilside.signal.Fourier;
 import coilside.signal.Scan;
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Locale;
@@ -34,6 +35,15 @@ final class RingDownMethod implements Method {
 
   /** Ringing below this part of the noise counts as gone. */
   private static final double FRACTION = 0.5;
+
+  /** Part of the largest level within which a sample counts as clipped. */
+  private static final double NEAR = 0.02;
+
+  /** So many samples of a ring-down at exactly one level are a flat top ... */
+  private static final int FLAT_SAMPLES = 4;
+
+  /** ... where they span more steps of the digitiser than this. */
+  private static final int FEWEST_STEPS = 100;
 
   @Override
   public Rung rung() {
@@ -189,20 +199,30 @@ final class RingDownMethod implements Method {
   }
 
   /**
-   * One past the last sample of the first half that stands at the largest level, where it clips.
+   * One past the last sample of the first half that stands at the level where a channel clips: the
+   * digitiser's, or that of an amplifier before it, which shows as a flat top.
    */
   private static int clippedUntil(Scan scan) {
-    if (scan.clippedSamples() == 0) {
+    boolean digitiser = scan.clippedSamples() > 0;
+    Fid fid = scan.fid();
+    return Math.max(clippedUntil(fid.re(), digitiser), clippedUntil(fid.im(), digitiser));
+  }
+
+  private static int clippedUntil(double[] values, boolean digitiser) {
+    double[] sorted = values.clone();
+    Arrays.sort(sorted);
+    double step = GainMethod.step(sorted);
+    double lowest = sorted[0];
+    double highest = sorted[sorted.length - 1];
+    double near = NEAR * Math.max(Math.abs(lowest), Math.abs(highest));
+    boolean below = digitiser || GainMethod.flat(values, lowest, step, FLAT_SAMPLES);
+    boolean above = digitiser || GainMethod.flat(values, highest, step, FLAT_SAMPLES);
+    if (near < FEWEST_STEPS * NEAR * step) {
       return 0;
     }
-    Fid fid = scan.fid();
-    double top = 0;
-    for (int k = 0; k < fid.points(); k++) {
-      top = Math.max(top, Math.max(Math.abs(fid.re(k)), Math.abs(fid.im(k))));
-    }
     int last = 0;
-    for (int k = 0; k < fid.points() / 2; k++) {
-      if (Math.max(Math.abs(fid.re(k)), Math.abs(fid.im(k))) > 0.98 * top) {
+    for (int k = 0; k < values.length / 2; k++) {
+      if (below && values[k] < lowest + near || above && values[k] > highest - near) {
         last = k + 1;
       }
     }

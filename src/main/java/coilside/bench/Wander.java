@@ -85,16 +85,18 @@ record Wander(int scans, double deviation, double alone, double linewidth) {
   }
 
   Optional<String> warning() {
-    return moves()
-        ? Optional.of(
-            String.format(
-                Locale.ROOT,
-                "the line moves from scan to scan: %.3g Hz (standard deviation of %d scans), noise"
-                    + " explains %.2g Hz: mains hum in the field (a transformer or a motor nearby, a"
-                    + " ground loop), or a magnet that drifts or is shaken",
-                deviation,
-                scans,
-                alone))
-        : Optional.empty();
+    return moves() ? Optional.of(movement(deviation, scans, alone)) : Optional.empty();
+  }
+
+  /** How a moving line is told, with its likely causes. */
+  static String movement(double deviation, int scans, double alone) {
+    return String.format(
+        Locale.ROOT,
+        "the line moves from scan to scan: %.3g Hz (standard deviation of %d scans), noise"
+            + " explains %.2g Hz: mains hum in the field (a transformer or a motor nearby, a"
+            + " ground loop), or a magnet that drifts or is shaken",
+        deviation,
+        scans,
+        alone);
   }
 }

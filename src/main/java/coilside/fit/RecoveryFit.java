@@ -128,6 +128,27 @@ public final class RecoveryFit {
           points.size() + " recovery times cannot determine T1, amplitude and preparation",
           "measure at least 4 recovery times");
     }
+    return answer(solve(points, options), points.size(), points, options);
+  }
+
+  /**
+   * Squared residuals over uncertainties by degree of freedom of one T1, determined or not; NaN for
+   * fewer than 4 points or where the fit does not settle.
+   */
+  public static double reducedChiSquare(List<RecoveryPoint> points, Options options) {
+    if (points.size() < 4) {
+      return Double.NaN;
+    }
+    try {
+      LeastSquares.Solution s = solve(points, options);
+      return s.weightedSquares() / Math.max(1, s.degreesOfFreedom());
+    } catch (NotDetermined e) {
+      return Double.NaN;
+    }
+  }
+
+  private static LeastSquares.Solution solve(List<RecoveryPoint> points, Options options)
+      throws NotDetermined {
     int m = points.size();
     double[] y = new double[m];
     double[] u = new double[m];
@@ -136,24 +157,22 @@ public final class RecoveryFit {
       u[i] = points.get(i).u();
     }
     double[] start = grid(points, options);
-    LeastSquares.Solution s =
-        LeastSquares.solve(
-            (p, values, jacobian) -> {
-              double t1 = Math.exp(p[2]);
-              boolean outside =
-                  !(t1 > options.shortestT1Seconds() / 10 && t1 < options.longestT1Seconds() * 10);
-              for (int i = 0; i < m; i++) {
-                double[] b = basis(points.get(i), t1, options.kind());
-                values[i] = outside ? Double.NaN : p[0] * b[0] + p[1] * b[1];
-                jacobian[i][0] = b[0];
-                jacobian[i][1] = b[1];
-                jacobian[i][2] = p[0] * b[2] + p[1] * b[3];
-              }
-            },
-            y,
-            u,
-            start);
-    return answer(s, m, points, options);
+    return LeastSquares.solve(
+        (p, values, jacobian) -> {
+          double t1 = Math.exp(p[2]);
+          boolean outside =
+              !(t1 > options.shortestT1Seconds() / 10 && t1 < options.longestT1Seconds() * 10);
+          for (int i = 0; i < m; i++) {
+            double[] b = basis(points.get(i), t1, options.kind());
+            values[i] = outside ? Double.NaN : p[0] * b[0] + p[1] * b[1];
+            jacobian[i][0] = b[0];
+            jacobian[i][1] = b[1];
+            jacobian[i][2] = p[0] * b[2] + p[1] * b[3];
+          }
+        },
+        y,
+        u,
+        start);
   }
 
   private static Result answer(

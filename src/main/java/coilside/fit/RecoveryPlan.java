@@ -62,8 +62,18 @@ public final class RecoveryPlan {
       String why,
       Optional<RecoveryFit.Result> result) {}
 
-  /** Advice from the points so far. */
+  /** Advice from the points so far, where any recovery time can be played. */
   public Advice next(List<RecoveryPoint> points) {
+    return next(points, 0);
+  }
+
+  /**
+   * Advice from the points so far.
+   *
+   * @param shortestSeconds the shortest recovery time that can be played; a plan that asked for
+   *     less would be given this one over and over and learn nothing
+   */
+  public Advice next(List<RecoveryPoint> points, double shortestSeconds) {
     Optional<RecoveryFit.Result> fit = Optional.empty();
     try {
       fit = Optional.of(RecoveryFit.fit(points, options));
@@ -80,8 +90,8 @@ public final class RecoveryPlan {
       return new Advice(true, believed, rest, "the target is met", fit);
     }
     List<Double> times = new ArrayList<>();
-    double low = options.shortestT1Seconds() / 20;
-    double high = Math.min(4 * options.longestT1Seconds(), 6 * believed);
+    double low = Math.max(options.shortestT1Seconds() / 20, shortestSeconds);
+    double high = Math.max(2 * low, Math.min(4 * options.longestT1Seconds(), 6 * believed));
     for (int i = 0; i < CANDIDATES; i++) {
       times.add(low * Math.pow(high / low, i / (CANDIDATES - 1.0)));
     }

@@ -50,6 +50,13 @@ final class BenchTrial implements AutoCloseable {
     return new BenchTrial(ObservedBoard.open(scenario, profile, seed), OptionalDouble.empty(), 400);
   }
 
+  /** With an operator who says how long T1 is, rightly or not. */
+  static BenchTrial told(Scenario scenario, String profile, double t1Seconds, long seed)
+      throws BoardException, KeepException {
+    return new BenchTrial(
+        ObservedBoard.open(scenario, profile, seed), OptionalDouble.of(t1Seconds), 400);
+  }
+
   /** On a board that differs from a shipped profile in one piece of its text. */
   static BenchTrial of(Scenario scenario, String profile, String text, String other, long seed)
       throws BoardException, KeepException {

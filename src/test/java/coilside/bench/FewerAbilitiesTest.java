@@ -37,4 +37,19 @@ class FewerAbilitiesTest {
       assertEquals(0.12, t1.value("t1").value(), 0.05 * 0.12);
     }
   }
+
+  /** A guess far too long asks for recovery times shorter than the board can play. */
+  @Test
+  void saturationRecoveryFindsT1FromAnyGuess() throws Exception {
+    for (double guess : new double[] {0.05, 1, 20}) {
+      try (BenchTrial trial =
+          BenchTrial.told(ScenarioReader.named("doped-water"), "pulse-and-receive", guess, 1)) {
+        trial.bench.ready();
+        Finding t1 = trial.newest(Rung.T1);
+        assertTrue(t1.refusal().isEmpty(), () -> t1.refusal().toString());
+        assertTrue(Math.abs(trial.deviation(Rung.T1, "t1")) < 4, t1.value("t1").toString());
+        assertTrue(t1.scans() <= 40, () -> t1.scans() + " scans");
+      }
+    }
+  }
 }
