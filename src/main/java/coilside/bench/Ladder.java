@@ -1,5 +1,6 @@
 package coilside.bench;
 
+import coilside.quantity.AgeFormat;
 import coilside.quantity.Measured;
 import java.time.Duration;
 import java.time.Instant;
@@ -129,7 +130,7 @@ final class Ladder {
                 Locale.ROOT,
                 "measured %s ago; at the drift learned from %d findings it may have moved by"
                     + " %.3g %s, more than the %.3g %s it may",
-                Staleness.age(age),
+                AgeFormat.text(age),
                 drift.get().findings(),
                 reach,
                 ageing.unit(),
@@ -140,18 +141,18 @@ final class Ladder {
       if (age > Math.max(ageing.lifetimeSeconds(), Drift.FAR * span)) {
         return List.of(
             "measured "
-                + Staleness.age(age)
+                + AgeFormat.text(age)
                 + " ago; its drift was learned over no more than "
-                + Staleness.age(span));
+                + AgeFormat.text(span));
       }
       return List.of();
     }
     if (age > ageing.lifetimeSeconds()) {
       return List.of(
           "measured "
-              + Staleness.age(age)
+              + AgeFormat.text(age)
               + " ago; with no drift learned yet it is trusted for "
-              + Staleness.age(ageing.lifetimeSeconds()));
+              + AgeFormat.text(ageing.lifetimeSeconds()));
     }
     return List.of();
   }

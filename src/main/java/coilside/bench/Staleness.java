@@ -172,18 +172,4 @@ final class Staleness {
     Measured m = finding.values().get(name);
     return m == null ? Double.POSITIVE_INFINITY : Math.abs(m.value());
   }
-
-  /** An age in words: "12 s", "3 min", "2.5 h". */
-  static String age(double seconds) {
-    if (seconds < 120) {
-      return String.format(Locale.ROOT, "%.0f s", seconds);
-    }
-    if (seconds < 7200) {
-      return String.format(Locale.ROOT, "%.0f min", seconds / 60);
-    }
-    if (seconds < 48 * 3600) {
-      return String.format(Locale.ROOT, "%.1f h", seconds / 3600);
-    }
-    return String.format(Locale.ROOT, "%.0f days", seconds / 86400);
-  }
 }

@@ -2,6 +2,7 @@ package coilside.command;
 
 import coilside.bench.Finding;
 import coilside.bench.RungStatus;
+import coilside.quantity.AgeFormat;
 import coilside.quantity.ConciseFormat;
 import coilside.quantity.Measured;
 import java.time.Duration;
@@ -29,7 +30,7 @@ final class LadderTable {
     String age =
         status
             .finding()
-            .map(f -> Ages.text(Duration.between(f.started(), now).toMillis() * 1e-3))
+            .map(f -> AgeFormat.text(Duration.between(f.started(), now).toMillis() * 1e-3))
             .orElse("-");
     List<String> values = status.finding().map(f -> values(f, plain)).orElse(List.of());
     out.add(
