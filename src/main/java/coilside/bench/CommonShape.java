@@ -74,7 +74,12 @@ record CommonShape(
     }
     LineTrack track = LineTrack.of(fids, seconds);
     fids = track.steadied(fids);
-    DecayResult decay = sharedDecay(fids, quiet.sigma());
+    DecayResult decay;
+    try {
+      decay = sharedDecay(fids, quiet.sigma());
+    } catch (NotMeasurable e) {
+      throw track.named(e);
+    }
     int n = fids.size();
     double[] re = new double[n];
     double[] im = new double[n];

@@ -79,12 +79,14 @@ final class DecayMethod implements Method {
         .value(Rung.T1, "t1")
         .ifPresent(t1 -> a.note("unrecovered", Math.exp(-repetition(a) / t1)));
     a.note("target", target);
+    Readings.noteComponents(a);
   }
 
   private static void show(Acquisition a) {
     try {
       a.show(
-          Readings.decay(mean(a.shots(), a.scans()), a.shots(), a.scans(), Double.NaN).picture());
+          Readings.decay(mean(a.shots(), a.scans()), a.shots(), a.scans(), Double.NaN, false)
+              .picture());
     } catch (NotMeasurable e) {
       a.say(e.getMessage());
     }
@@ -126,6 +128,7 @@ final class DecayMethod implements Method {
       d = d == 0 ? advised.dwellSeconds() : d;
     }
     a.plan(a.scansPlayed() + scans);
+    Readings.noteComponents(a);
     for (int i = 0; i < scans; i++) {
       a.play(shot(a, i, cycle, n, d, carrier));
       a.step("FID", (i + 1) / (double) scans);
@@ -191,7 +194,8 @@ final class DecayMethod implements Method {
             mean(capture.shots(), capture.scans()),
             capture.shots(),
             capture.scans(),
-            Notes.number(capture, "target", Double.NaN));
+            Notes.number(capture, "target", Double.NaN),
+            Readings.twoComponents(capture));
     return withHonestAmplitude(reading, capture);
   }
 

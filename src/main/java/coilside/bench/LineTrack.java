@@ -101,6 +101,13 @@ record LineTrack(double[] offsets, double deviation, double alone) {
         : Optional.empty();
   }
 
+  /** The refusal with the movement as its first cause, where the line moved. */
+  NotMeasurable named(NotMeasurable plain) {
+    List<String> causes = new ArrayList<>(plain.refusal().likelyCauses());
+    cause().ifPresent(c -> causes.add(0, c));
+    return new NotMeasurable(plain.refusal().reason(), causes);
+  }
+
   /** The scans as if the line had stood at its mean offset all the time, time zero kept. */
   List<Fid> steadied(List<Fid> fids) {
     if (!moved()) {

@@ -108,7 +108,7 @@ final class NutationMethod implements Method {
     List<NutationPoint> points = points(a.shots(), a.scans(), shape);
     NutationPlan.Advice advice =
         new NutationPlan(
-                options.withDecayRate(shape.decayRate()),
+                options.withDecayRate(Math.max(0, shape.decayRate())),
                 a.settings().pulse90Target(),
                 shortest,
                 longest)
@@ -168,12 +168,12 @@ final class NutationMethod implements Method {
     NutationFit.Options options =
         NutationFit.Options.between(
                 Notes.number(capture, "shortest_90"), Notes.number(capture, "longest_90"))
-            .withDecayRate(shape.decayRate());
+            .withDecayRate(Math.max(0, shape.decayRate()));
     NutationResult fit;
     try {
       fit = NutationFit.fit(points, options);
     } catch (NotDetermined e) {
-      throw refused(e, points);
+      throw shape.track().named(refused(e, points));
     }
     Map<String, Measured> values = new LinkedHashMap<>();
     values.put("pulse_90", fit.pulse90());

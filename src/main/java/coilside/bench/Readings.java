@@ -22,6 +22,9 @@ final class Readings {
   /** Part of its width by which a line without a simple form has no definite middle. */
   private static final double FORM = 0.01;
 
+  /** Longest T1 over the 1/e time of the recovery from which on there are two components. */
+  private static final double APART = 1.02;
+
   private Readings() {}
 
   /** The values of the resonance rung. */
@@ -29,7 +32,8 @@ final class Readings {
     List<Scan> scans = capture.scans();
     DecayResult fit = fit(fid, scans.size());
     Wander wander = Wander.of(capture.shots(), scans);
-    Measured larmor = wander.widen(middle(larmor(fid, fit), fit));
+    boolean formOpen = twoComponents(capture) || fit.envelope() != DecayResult.Envelope.EXPONENTIAL;
+    Measured larmor = wander.widen(middle(larmor(fid, fit), fit, formOpen));
     Map<String, Measured> values = new LinkedHashMap<>();
     values.put("larmor_frequency", larmor);
     values.put("field", field(larmor));
@@ -41,33 +45,36 @@ final class Readings {
             larmor.value() * 1e-6,
             fit.offsetHertz().value());
     List<String> warnings = warnings(fit, scans);
+    hidden(fit, formOpen).ifPresent(warnings::add);
     wander.warning().ifPresent(w -> warnings.add(0, w));
     return new Reading(values, warnings, trace(Rung.RESONANCE, fid, fit, caption));
   }
 
   /** The values of the T2* rung from one scan, as it came. */
   static Reading decay(Fid fid, List<Scan> scans, double target) throws NotMeasurable {
-    return decay(fid, List.of(), List.of(), scans, target);
+    return decay(fid, List.of(), List.of(), scans, target, false);
   }
 
   /**
    * The values of the T2* rung.
    *
    * @param target wanted relative uncertainty of T2*; NaN where none is
+   * @param two whether the sample is known to hold two components
    */
-  static Reading decay(Fid fid, List<Shot> shots, List<Scan> scans, double target)
+  static Reading decay(Fid fid, List<Shot> shots, List<Scan> scans, double target, boolean two)
       throws NotMeasurable {
-    return decay(fid, shots, scans, scans, target);
+    return decay(fid, shots, scans, scans, target, two);
   }
 
   private static Reading decay(
-      Fid fid, List<Shot> shots, List<Scan> single, List<Scan> scans, double target)
+      Fid fid, List<Shot> shots, List<Scan> single, List<Scan> scans, double target, boolean two)
       throws NotMeasurable {
     DecayResult fit = fit(fid, scans.size());
     Wander wander = Wander.of(shots, single);
-    Measured larmor = wander.widen(middle(larmor(fid, fit), fit));
+    boolean formOpen = two || fit.envelope() != DecayResult.Envelope.EXPONENTIAL;
+    Measured larmor = wander.widen(middle(larmor(fid, fit), fit, formOpen));
     Map<String, Measured> values = new LinkedHashMap<>();
-    values.put("t2_star", effective(fit));
+    values.put("t2_star", effective(fit, formOpen));
     values.put("linewidth", fit.linewidthHertz());
     values.put("amplitude", fit.amplitude());
     values.put("snr", fit.snr());
@@ -75,6 +82,7 @@ final class Readings {
     values.put("field_spread", fit.fieldSpread(larmor.value()));
     values.put("field", field(larmor));
     List<String> warnings = warnings(fit, scans);
+    hidden(fit, formOpen).ifPresent(warnings::add);
     wander.warning().ifPresent(w -> warnings.add(0, w));
     double reached = fit.t2Star().relative();
     if (reached > target) {
@@ -115,24 +123,48 @@ final class Readings {
   }
 
   /**
-   * The middle of a line that is not one exponential's is uncertain by a part of its width,
-   * whichever form is fitted to it.
+   * The middle of a line that is not one exponential's, or that holds two components which one
+   * exponential happens to fit, is uncertain by a part of its width, whichever form is fitted.
    */
-  private static Measured middle(Measured larmor, DecayResult fit) {
-    return fit.envelope() == DecayResult.Envelope.EXPONENTIAL
-        ? larmor
-        : Measured.of(
+  private static Measured middle(Measured larmor, DecayResult fit, boolean formOpen) {
+    return formOpen
+        ? Measured.of(
             larmor.value(),
             Math.hypot(larmor.u(), FORM * fit.linewidthHertz().value()),
-            larmor.unit());
+            larmor.unit())
+        : larmor;
   }
 
-  /** T2*; the 1/e time of a decay that is not one exponential depends on the form fitted to it. */
-  private static Measured effective(DecayResult fit) {
+  /** T2*; the 1/e time of a decay of which the form is open depends on the form fitted to it. */
+  private static Measured effective(DecayResult fit, boolean formOpen) {
     Measured t = fit.t2Star();
-    return fit.envelope() == DecayResult.Envelope.EXPONENTIAL
-        ? t
-        : Measured.of(t.value(), Math.hypot(t.u(), FORM / 2 * t.value()), t.unit());
+    return formOpen ? Measured.of(t.value(), Math.hypot(t.u(), FORM / 2 * t.value()), t.unit()) : t;
+  }
+
+  private static Optional<String> hidden(DecayResult fit, boolean formOpen) {
+    return formOpen && fit.envelope() == DecayResult.Envelope.EXPONENTIAL
+        ? Optional.of(
+            "the sample recovers with two T1, so the line may hold two that these scans do not tell"
+                + " apart: T2* and frequency are widened by what that may hide")
+        : Optional.empty();
+  }
+
+  /** Notes whether T1 showed two components in this sample: its longest T1 is not its 1/e time. */
+  static void noteComponents(Acquisition a) {
+    a.known()
+        .finding(Rung.T1)
+        .filter(f -> f.conditions().sample().equals(a.settings().sample()))
+        .map(Finding::values)
+        .filter(v -> v.containsKey("repetition_time"))
+        .ifPresent(
+            v -> {
+              double longest = v.get("repetition_time").value() / GainMethod.RECOVERED;
+              a.note("components", longest > APART * v.get("t1").value() ? 2 : 1);
+            });
+  }
+
+  static boolean twoComponents(Capture capture) {
+    return Notes.number(capture, "components", 1) > 1;
   }
 
   static Measured larmor(Fid fid, DecayResult fit) {

@@ -222,10 +222,7 @@ final class RecoveryMethod implements Method {
     try {
       fit = RecoveryFit.fit(points, options(inversion, guess));
     } catch (NotDetermined e) {
-      Refusal plain = Readings.refused("T1 is not determined", e).refusal();
-      List<String> causes = new ArrayList<>(plain.likelyCauses());
-      shape.track().cause().ifPresent(c -> causes.add(0, c));
-      throw new NotMeasurable(plain.reason(), causes);
+      throw shape.track().named(Readings.refused("T1 is not determined", e));
     }
     Map<String, Measured> values = new LinkedHashMap<>();
     values.put("t1", fit.t1());

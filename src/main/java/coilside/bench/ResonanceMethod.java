@@ -75,6 +75,7 @@ final class ResonanceMethod implements Method {
    */
   private static void settle(Acquisition a, Seen first) throws BoardException, NotMeasurable {
     a.startAgain();
+    Readings.noteComponents(a);
     double side = first.offsetHertz() > 0 ? 1 : -1;
     double beside = a.limits().carrierHertz().snap(first.lineHertz() + side * BESIDE);
     Scan scan = a.playAside(shot(a, beside, Choices.gain(a), SEARCH_PULSE, 0, SEARCH_REST));

@@ -203,29 +203,36 @@ final class RingDownMethod implements Method {
    * digitiser's, or that of an amplifier before it, which shows as a flat top.
    */
   private static int clippedUntil(Scan scan) {
-    boolean digitiser = scan.clippedSamples() > 0;
     Fid fid = scan.fid();
-    return Math.max(clippedUntil(fid.re(), digitiser), clippedUntil(fid.im(), digitiser));
+    double top = 0;
+    for (int k = 0; k < fid.points(); k++) {
+      top = Math.max(top, Math.max(Math.abs(fid.re(k)), Math.abs(fid.im(k))));
+    }
+    double rail = scan.clippedSamples() > 0 ? (1 - NEAR) * top : Double.POSITIVE_INFINITY;
+    return Math.max(clippedUntil(fid.re(), rail), clippedUntil(fid.im(), rail));
   }
 
-  private static int clippedUntil(double[] values, boolean digitiser) {
+  private static int clippedUntil(double[] values, double rail) {
     double[] sorted = values.clone();
     Arrays.sort(sorted);
     double step = GainMethod.step(sorted);
-    double lowest = sorted[0];
-    double highest = sorted[sorted.length - 1];
-    double near = NEAR * Math.max(Math.abs(lowest), Math.abs(highest));
-    boolean below = digitiser || GainMethod.flat(values, lowest, step, FLAT_SAMPLES);
-    boolean above = digitiser || GainMethod.flat(values, highest, step, FLAT_SAMPLES);
-    if (near < FEWEST_STEPS * NEAR * step) {
-      return 0;
-    }
+    double low = flatLevel(values, sorted[0], step);
+    double high = flatLevel(values, sorted[sorted.length - 1], step);
     int last = 0;
     for (int k = 0; k < values.length / 2; k++) {
-      if (below && values[k] < lowest + near || above && values[k] > highest - near) {
+      double v = values[k];
+      if (Math.abs(v) > rail || v < -low || v > high) {
         last = k + 1;
       }
     }
     return last;
+  }
+
+  /** Size from which on a sample counts as cut off at this extreme; infinite where none is. */
+  private static double flatLevel(double[] values, double extreme, double step) {
+    double size = Math.abs(extreme);
+    return size > FEWEST_STEPS * step && GainMethod.flat(values, extreme, step, FLAT_SAMPLES)
+        ? (1 - NEAR) * size
+        : Double.POSITIVE_INFINITY;
   }
 }

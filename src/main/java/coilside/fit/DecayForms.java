@@ -109,7 +109,7 @@ final class DecayForms {
       String name,
       List<Tried> tried) {
     Exponentials fit = new Exponentials(fid.re(), fid.im(), re, im, constant);
-    if (!fit.run() || !fit.converged) {
+    if (!fit.run() || !fit.converged || !determined(fit)) {
       return;
     }
     double[] r = Scratch.residualRe(fid.points());
@@ -122,6 +122,17 @@ final class DecayForms {
             answer.of(fit, rss, misfit, "", List.of()),
             criterion(rss, fid.points(), 2 * (fit.terms + fit.poles)),
             name));
+  }
+
+  /** Whether the normal matrix could be inverted: two of its terms may be as good as one. */
+  private static boolean determined(Exponentials fit) {
+    for (int k = 0; k < fit.terms + fit.poles; k++) {
+      double variance = fit.inverseRe[k][k];
+      if (!(variance > 0 && Double.isFinite(variance))) {
+        return false;
+      }
+    }
+    return true;
   }
 
   /** -2 ln(likelihood) + parameters ln(values), up to a constant. */

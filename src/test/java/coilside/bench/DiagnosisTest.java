@@ -124,7 +124,7 @@ class DiagnosisTest {
   void strongMainsHumIsNamedByT1() throws Exception {
     String text =
         Files.readString(Path.of("src/test/resources/scenarios/faults/mains-modulated-magnet.toml"))
-            .replace("mains_swing = \"30Hz\"", "mains_swing = \"150Hz\"");
+            .replace("mains_swing = \"30Hz\"", "mains_swing = \"100Hz\"");
     Scenario scenario =
         ScenarioReader.read("strong", text.getBytes(StandardCharsets.UTF_8))
             .scenario()

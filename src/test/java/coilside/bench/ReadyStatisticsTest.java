@@ -112,6 +112,39 @@ class ReadyStatisticsTest {
     }
   }
 
+  /** The guess of T1 is long enough, so that nutation need not be measured twice. */
+  @Test
+  void nutationIsMeasuredOnce() throws Exception {
+    for (String scenario : List.of("doped-water", "cooking-oil", "plain-water")) {
+      for (int seed = 1; seed <= 3; seed++) {
+        try (BenchTrial trial = BenchTrial.of(ScenarioReader.named(scenario), seed)) {
+          trial.bench.ready();
+          assertEquals(
+              1,
+              trial.keeper.findings.stream().filter(f -> f.rung() == Rung.NUTATION).count(),
+              () -> scenario + ": " + trial.messages);
+          double rest = trial.newest(Rung.NUTATION).value("rest").value();
+          double longest = trial.newest(Rung.T1).value("repetition_time").value();
+          assertTrue(rest < 2 * longest, () -> scenario + " rests for " + rest + " s");
+        }
+      }
+    }
+  }
+
+  /** Two components that one exponential may happen to fit do not pass for certainty. */
+  @Test
+  void anOilsDecayAdmitsWhatItMayHide() throws Exception {
+    for (int seed : new int[] {2, 9, 10, 16}) {
+      try (BenchTrial trial = BenchTrial.of(ScenarioReader.named("cooking-oil"), seed)) {
+        trial.bench.ready();
+        for (String value : List.of("t2_star", "larmor_frequency")) {
+          double z = trial.deviation(Rung.T2STAR, value);
+          assertTrue(Math.abs(z) < 3, () -> value + " is " + z + " u off");
+        }
+      }
+    }
+  }
+
   @Test
   @Tag("validation")
   void uncertaintiesAreNeitherTooProudNorTooTimid() throws Exception {
