@@ -155,7 +155,7 @@ final class Readings {
         .finding(Rung.T1)
         .filter(f -> f.conditions().sample().equals(a.settings().sample()))
         .map(Finding::values)
-        .filter(v -> v.containsKey("repetition_time"))
+        .filter(v -> v.containsKey("repetition_time") && v.containsKey("t1"))
         .ifPresent(
             v -> {
               double longest = v.get("repetition_time").value() / GainMethod.RECOVERED;
