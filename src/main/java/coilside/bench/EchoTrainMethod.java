@@ -192,15 +192,8 @@ final class EchoTrainMethod implements Method {
     warnings.add(
         "diffusion in a field gradient shortens T2 measured this way: a shorter echo spacing that"
             + " gives a longer T2 shows it");
-    double target = Notes.number(capture, "target", Double.NaN);
-    if (fit.t2().relative() > target) {
-      warnings.add(
-          String.format(
-              Locale.ROOT,
-              "T2 is known to %.1f %%, not to the wanted %.1f %%",
-              100 * fit.t2().relative(),
-              100 * target));
-    }
+    Readings.missedTarget("T2", fit.t2(), Notes.number(capture, "target", Double.NaN))
+        .ifPresent(warnings::add);
     return new Reading(values, warnings, picture(t, p, fit, spacing));
   }
 

@@ -167,6 +167,19 @@ final class Readings {
     return Notes.number(capture, "components", 1) > 1;
   }
 
+  /** Says so when a value is not known as well as wanted; a target of NaN is always met. */
+  static Optional<String> missedTarget(String name, Measured value, double target) {
+    return value.relative() > target
+        ? Optional.of(
+            String.format(
+                Locale.ROOT,
+                "%s is known to %.1f %%, not to the wanted %.1f %%",
+                name,
+                100 * value.relative(),
+                100 * target))
+        : Optional.empty();
+  }
+
   static Measured larmor(Fid fid, DecayResult fit) {
     return Measured.of(
         fid.carrierHertz() + fit.offsetHertz().value(), fit.offsetHertz().u(), Unit.HERTZ);

@@ -234,15 +234,7 @@ final class RecoveryMethod implements Method {
             Unit.SECOND));
     List<String> warnings = new ArrayList<>(fit.warnings());
     shape.track().cause().ifPresent(warnings::add);
-    double target = Notes.number(capture, "target");
-    if (fit.t1().relative() > target) {
-      warnings.add(
-          String.format(
-              Locale.ROOT,
-              "T1 is known to %.1f %%, not to the wanted %.1f %%",
-              100 * fit.t1().relative(),
-              100 * target));
-    }
+    Readings.missedTarget("T1", fit.t1(), Notes.number(capture, "target")).ifPresent(warnings::add);
     return new Reading(values, warnings, picture(points, Optional.of(fit), new double[0]));
   }
 

@@ -141,15 +141,8 @@ final class SingleEchoes {
     warnings.add(
         "measured by single echoes, one a scan: diffusion in a field gradient and a field that moves"
             + " within an echo time shorten it more than an echo train");
-    double target = Notes.number(capture, "target", Double.NaN);
-    if (fit.t2().relative() > target) {
-      warnings.add(
-          String.format(
-              Locale.ROOT,
-              "T2 is known to %.1f %%, not to the wanted %.1f %%",
-              100 * fit.t2().relative(),
-              100 * target));
-    }
+    Readings.missedTarget("T2", fit.t2(), Notes.number(capture, "target", Double.NaN))
+        .ifPresent(warnings::add);
     String caption =
         String.format(
             Locale.ROOT, "T2 %.4g ms by %d single echoes", fit.t2().value() * 1e3, t.length);

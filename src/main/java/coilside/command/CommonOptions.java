@@ -1,7 +1,6 @@
 package coilside.command;
 
 import java.nio.file.Path;
-import java.util.Optional;
 import picocli.CommandLine.Option;
 
 /** Options that most commands share. */
@@ -88,8 +87,4 @@ final class CommonOptions {
       paramLabel = "FILE",
       description = "write everything that goes over the wire to this file")
   Path wireLog;
-
-  Optional<String> givenSample() {
-    return Optional.ofNullable(sample);
-  }
 }
